@@ -1,0 +1,110 @@
+//! Leg inverse kinematics for machines whose limbs are moved by position servos.
+//!
+//! A foot position in millimetres goes in; joint angles, servo pulses and timer ticks come out, every frame,
+//! on a chip with or without an FPU. No allocation, no `unsafe`, no panic, and an answer for every input.
+//!
+//! ```
+//! use ik_core::{Bend, Dimensions, Fixed32, Foot, Joints, Leg, Limits, Outcome, RollHip};
+//!
+//! type OrchardLeg = Leg<RollHip, Fixed32>;
+//!
+//! // A leg lives in flash: an impossible one does not compile.
+//! const LEG: OrchardLeg = {
+//!     let Ok(measures) = Dimensions::roll_hip(31.5, 94.0, 107.0, Bend::Forward) else { panic!("measures") };
+//!     let Ok(limits) = Limits::<Fixed32>::degrees([-45.0, 45.0], [-80.0, 80.0], [5.0, 150.0]) else { panic!("limits") };
+//!     let Ok(leg) = OrchardLeg::new(measures) else { panic!("leg") };
+//!     leg.with_limits(limits)
+//! };
+//!
+//! let answer = LEG.solve(Foot::from_mm(40.0, 31.5, -160.0), Joints::ZERO);
+//! assert_eq!(answer.outcome, Outcome::Reached);
+//! assert!((answer.joints.knee.degrees() - 69.894111).abs() < 1e-4);
+//! ```
+//!
+//! # The way of a foot
+//!
+//! | stage | module | what comes out |
+//! | --- | --- | --- |
+//! | mounting | [`mounting`] | the foot in the leg's own frame, right legs mirrored |
+//! | hip, triangle, reach | [`leg`] | joint angles, and whether the foot had to be moved into reach |
+//! | limits | [`limits`] | joint angles within their ranges, and which joint was held |
+//! | servo | [`servo`] | a pulse in microseconds within its range |
+//! | output | [`output`] | timer ticks or expander counts |
+//!
+//! # Frames, units, signs
+//!
+//! Lengths are millimetres, pulses microseconds. The leg's frame has its origin on the first joint's axis,
+//! x forward, **y outboard**, z up; a right leg is a left leg mirrored in y, so one set of angles serves both.
+//! (The body's frame is x forward, y left, z up: REP 103, "Standard Units of Measure and Coordinate
+//! Conventions".)
+//!
+//! | | roll-hip | yaw-hip |
+//! | --- | --- | --- |
+//! | zero pose | hanging straight down | stretched straight outboard |
+//! | hip positive | swings the foot outboard | swings the foot forward |
+//! | thigh (femur) positive | swings the foot forward | raises the knee |
+//! | knee | 0 is a straight leg; positive bends it to the side given by [`Bend`] | the same |
+//!
+//! # Number systems
+//!
+//! The solver is written once, over the trait [`Number`]. A number system is a type parameter, never a switch
+//! that changes what another type means, so firmware carries only what it names:
+//!
+//! | type | feature | stored as | meant for |
+//! | --- | --- | --- | --- |
+//! | `Float32` | `float32` | `f32`, libm's functions | chips with an FPU |
+//! | `Coarse` | `coarse` | `f32`, micromath's functions | a yardstick; where millimetres do not matter |
+//! | `Fixed32` | `fixed32` | `fixed`'s `I16F16` mm and `I0F32` turns | chips without an FPU |
+//!
+//! Same input, same bits, on every machine: no function of the standard library's maths is used.
+//!
+//! # Features
+//!
+//! `float32`, `fixed32` (both on by default), `coarse`; `heapless` for [`Robot`](robot) and the foot queue;
+//! `defmt` for `defmt::Format` on everything that a firmware may want to log. All are additive.
+//!
+//! # Before a machine moves
+//!
+//! Servos pinch, motors stall, legs fall. Lift the machine off the ground for first motion, feed it from a
+//! current-limited supply, and keep a way to cut power within reach. Local rules and the judgement of
+//! qualified people come before anything written here.
+#![no_std]
+#![forbid(unsafe_code)]
+#![deny(missing_docs)]
+#![cfg_attr(docsrs, feature(doc_cfg))]
+
+#[cfg(test)]
+extern crate std;
+
+pub mod angle;
+mod const_math;
+pub mod foot;
+pub mod geometry;
+pub mod leg;
+pub mod limb;
+pub mod limits;
+pub mod mounting;
+pub mod number;
+pub mod output;
+#[cfg(feature = "heapless")]
+pub mod queue;
+#[cfg(feature = "heapless")]
+pub mod robot;
+pub mod servo;
+
+pub use angle::{Angle, Joints};
+pub use foot::Foot;
+pub use geometry::{Bend, Dimensions, GeometryError, RollHip, YawHip};
+pub use leg::{Answer, Held, Hip, Leg, Outcome};
+pub use limb::Limb;
+pub use limits::{End, Limits, LimitsError};
+pub use mounting::{Mounting, Side};
+#[cfg(feature = "coarse")]
+pub use number::Coarse;
+#[cfg(feature = "fixed32")]
+pub use number::Fixed32;
+#[cfg(feature = "float32")]
+pub use number::Float32;
+pub use number::Number;
+pub use output::{Expander, OutputError, Timer};
+pub use servo::{Command, Pulse, Servo, ServoError, ServoSpec, Turns};

@@ -1,0 +1,204 @@
+//! Number systems: what the solver is written over.
+//!
+//! [`Number`] is the seam between the one solver and the ways of doing arithmetic. Its primitives are
+//! geometric, so that each system can do each of them the best way it knows; none of them is a second copy of
+//! the solver. The algebra that they serve stands in [`leg`](crate::leg).
+//!
+//! Anyone can add a number system: the host harness adds `f64` to tell the method's error from rounding.
+
+#[cfg(feature = "fixed32")]
+mod fixed32;
+#[cfg(any(feature = "float32", feature = "coarse"))]
+pub mod float;
+
+#[cfg(feature = "fixed32")]
+pub use fixed32::{Fixed32, FixedScale};
+#[cfg(feature = "coarse")]
+pub use float::Coarse;
+#[cfg(feature = "float32")]
+pub use float::Float32;
+
+use core::fmt::Debug;
+use core::ops::{Add, Neg, Sub};
+
+/// A number system: how lengths, squares, ratios and angles are stored, and the primitives of the solver.
+///
+/// # Quantities
+///
+/// | type | what | unit |
+/// | --- | --- | --- |
+/// | [`Length`](Number::Length) | a length as users give and get it | mm |
+/// | [`Coord`](Number::Coord) | a length within the solver | mm times a power of two fixed per leg |
+/// | [`Square`](Number::Square) | sums and differences of squares of `Coord`s, **exact** or nearly so | `Coord`² |
+/// | [`Ratio`](Number::Ratio) | a pure number in (−8, 8) | 1 |
+/// | [`Product`](Number::Product) | `Coord`·`Coord` or `Coord`·`Ratio`, rounded as the system likes | |
+/// | [`Angle`](Number::Angle) | an angle in (−½, ½] turn | the system's own |
+///
+/// # Contract
+///
+/// Every method is total: no panic and no NaN for any value that the methods before it can produce. `<` on the
+/// associated types is how the solver decides; a system that carries intervals may decide both ways in turn.
+pub trait Number: Copy + Debug + PartialEq + 'static {
+    /// A length in mm, as users give and get it.
+    type Length: Copy + Debug + PartialEq + PartialOrd;
+    /// A length within the solver.
+    type Coord: Copy
+        + Debug
+        + PartialEq
+        + PartialOrd
+        + Add<Output = Self::Coord>
+        + Sub<Output = Self::Coord>
+        + Neg<Output = Self::Coord>;
+    /// A sum or difference of squares of coordinates.
+    type Square: Copy
+        + Debug
+        + PartialEq
+        + PartialOrd
+        + Add<Output = Self::Square>
+        + Sub<Output = Self::Square>;
+    /// A pure number in (−8, 8).
+    type Ratio: Copy + Debug + PartialEq + Sub<Output = Self::Ratio> + Neg<Output = Self::Ratio>;
+    /// A product of two coordinates, or of a coordinate and a ratio.
+    type Product: Copy + Debug + PartialEq + Add<Output = Self::Product> + Sub<Output = Self::Product>;
+    /// An angle in (−½, ½] turn, in the system's own unit.
+    type Angle: Copy + Debug + PartialEq + PartialOrd;
+    /// What turns `Length` into `Coord` and back, fixed per leg.
+    type Scale: Copy + Debug + PartialEq;
+    /// The reciprocal of the length unit 2·√(L1·L2), for [`knee`](Number::knee).
+    type Unit: Copy + Debug + PartialEq;
+    /// A servo's gain: pulse per angle.
+    type Gain: Copy + Debug + PartialEq;
+    /// Its reciprocal: angle per pulse.
+    type Swing: Copy + Debug + PartialEq;
+
+    /// The name that reports and sheets use.
+    const NAME: &'static str;
+    /// No length.
+    const NO_LENGTH: Self::Length;
+    /// The largest length; what a distance saturates at.
+    const FARTHEST: Self::Length;
+    /// No coordinate.
+    const NO_COORD: Self::Coord;
+    /// No square.
+    const NO_SQUARE: Self::Square;
+    /// No angle.
+    const NO_ANGLE: Self::Angle;
+    /// The least angle there is: −½ turn, or just inside.
+    const LEAST_ANGLE: Self::Angle;
+    /// The largest angle there is: ½ turn, or just inside.
+    const MOST_ANGLE: Self::Angle;
+
+    // --- constants, from f64: on a PC, or while compiling through the const twins of these -------------
+
+    /// The scale for a leg that reaches `radius_mm` from its origin; `None` if it is too long or too short.
+    fn scale_for(radius_mm: f64) -> Option<Self::Scale>;
+    /// mm, rounded.
+    fn length_from_mm(mm: f64) -> Self::Length;
+    /// mm, rounded.
+    fn coord_from_mm(mm: f64, scale: Self::Scale) -> Self::Coord;
+    /// mm², rounded.
+    fn square_from_mm2(mm2: f64, scale: Self::Scale) -> Self::Square;
+    /// A pure number in (−8, 8), rounded.
+    fn ratio_from(value: f64) -> Self::Ratio;
+    /// mm, as a product of a coordinate and a ratio.
+    fn product_from_mm(mm: f64, scale: Self::Scale) -> Self::Product;
+    /// The reciprocal of `unit_mm` = 2·√(L1·L2).
+    fn unit_from_mm(unit_mm: f64, scale: Self::Scale) -> Self::Unit;
+    /// Turns, rounded; saturates just inside ±½.
+    fn angle_from_turns(turns: f64) -> Self::Angle;
+    /// µs per turn, rounded.
+    fn gain_from(us_per_turn: f64) -> Self::Gain;
+    /// Turns per µs, rounded.
+    fn swing_from(turns_per_us: f64) -> Self::Swing;
+
+    // --- the way in and out ----------------------------------------------------------------------------
+
+    /// Brings a foot into the leg's working range.
+    fn place(foot: [Self::Length; 3], scale: Self::Scale) -> Placed<Self>;
+    /// A coordinate as a length, rounded; saturates.
+    fn length(coord: Self::Coord, scale: Self::Scale) -> Self::Length;
+    /// A length in mm.
+    fn mm(length: Self::Length) -> f64;
+    /// An angle in turns.
+    fn turns(angle: Self::Angle) -> f64;
+    /// An angle in thousandths of a degree, rounded: for logs on a chip without an FPU.
+    fn millidegrees(angle: Self::Angle) -> i32;
+    /// A length in thousandths of a millimetre, rounded, saturating: for logs on a chip without an FPU.
+    fn micrometres(length: Self::Length) -> i32;
+    /// a − b; saturates.
+    fn length_difference(a: Self::Length, b: Self::Length) -> Self::Length;
+
+    // --- hip and triangle ------------------------------------------------------------------------------
+
+    /// The square of a coordinate.
+    fn square(coord: Self::Coord, scale: Self::Scale) -> Self::Square;
+    /// The root of a square; of a negative one, 0.
+    fn root(square: Self::Square, scale: Self::Scale) -> Self::Coord;
+    /// With R = √`radial_square`: (R − offset, (R − offset)²), the square kept as exact as squares are, or
+    /// the knee of a leg near straight would be limited to the root of the rounding error.
+    fn beyond(
+        radial_square: Self::Square,
+        offset: Self::Coord,
+        scale: Self::Scale,
+    ) -> (Self::Coord, Self::Square);
+    /// a·b.
+    fn area(a: Self::Coord, b: Self::Coord) -> Self::Product;
+    /// coord·ratio.
+    fn stretch(coord: Self::Coord, ratio: Self::Ratio) -> Self::Product;
+    /// coord·1.
+    fn widen(coord: Self::Coord) -> Self::Product;
+    /// The angle of the vector (x, y) whose norm is known, as 2·arctan(y / (norm + |x|)), in (−½, ½] turn;
+    /// 0 for the zero vector.
+    fn angle(y: Self::Product, x: Self::Product, norm: Self::Product) -> Self::Angle;
+    /// Knee flexion of the triangle with n = (L1+L2)² − G² ≥ 0 and m = 4·L1·L2 − n ≥ 0, both of them exact.
+    fn knee(n: Self::Square, m: Self::Square, unit: Self::Unit, scale: Self::Scale) -> Knee<Self>;
+
+    // --- forward ---------------------------------------------------------------------------------------
+
+    /// (sin, cos).
+    fn sin_cos(angle: Self::Angle) -> (Self::Ratio, Self::Ratio);
+    /// a + b, wrapped into (−½, ½] turn.
+    fn angle_sum(a: Self::Angle, b: Self::Angle) -> Self::Angle;
+    /// a − b, wrapped into (−½, ½] turn.
+    fn angle_difference(a: Self::Angle, b: Self::Angle) -> Self::Angle;
+    /// A product of a coordinate and ratios as a coordinate.
+    fn narrow(product: Self::Product) -> Self::Coord;
+
+    // --- out of reach: rare, so these may be slow ------------------------------------------------------
+
+    /// v·to/from, for |v| ≤ from (nearly) and from > 0.
+    fn rescale(v: Self::Coord, to: Self::Coord, from: Self::Coord) -> Self::Coord;
+    /// A coordinate halved so many times.
+    fn halve(coord: Self::Coord, times: u32) -> Self::Coord;
+    /// The distance between two points; saturates at [`FARTHEST`](Number::FARTHEST).
+    fn distance(a: [Self::Length; 3], b: [Self::Length; 3]) -> Self::Length;
+
+    // --- servo -----------------------------------------------------------------------------------------
+
+    /// gain·(angle − from), without wrapping, in 1/65536 µs; saturates.
+    fn travel(angle: Self::Angle, from: Self::Angle, gain: Self::Gain) -> i32;
+    /// from + swing·travel, travel in 1/65536 µs; saturates just inside ±½ turn.
+    fn swing_to(travel: i32, from: Self::Angle, swing: Self::Swing) -> Self::Angle;
+}
+
+/// A foot in the leg's working range.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub enum Placed<N: Number> {
+    /// Within it.
+    Near([N::Coord; 3]),
+    /// Beyond it, and so beyond reach: halved so many times, which keeps its direction.
+    Far([N::Coord; 3], u32),
+    /// A coordinate is NaN or infinite.
+    NotFinite,
+}
+
+/// What the triangle of thigh and shank gives.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Knee<N: Number> {
+    /// Knee flexion, in [0, ½) turn; 0 is straight.
+    pub angle: N::Angle,
+    /// ½·sin of it, in [0, ½].
+    pub half_sine: N::Ratio,
+    /// sin² of half of it, in [0, 1]: how far the leg is folded.
+    pub fold: N::Ratio,
+}

@@ -1,0 +1,76 @@
+//! The legs of a robot, without allocation.
+
+use crate::angle::Joints;
+use crate::foot::Foot;
+use crate::leg::Hip;
+use crate::limb::{Limb, LimbCommand};
+use crate::number::Number;
+use heapless::Vec;
+
+/// Up to `LEGS` limbs of one shape, and the pose that each was last commanded.
+///
+/// ```
+/// use ik_core::robot::Robot;
+/// use ik_core::{Bend, Dimensions, Fixed32, Foot, Leg, Limb, Mounting, Outcome, Servo, ServoSpec, Side};
+///
+/// # fn main() -> Result<(), Box<dyn core::error::Error>> {
+/// let leg = Leg::<_, Fixed32>::new(Dimensions::yaw_hip(42.0, 71.0, 118.0, Bend::Up)?)?;
+/// let servos = [Servo::<Fixed32>::new(ServoSpec::COMMON)?; 3];
+/// let mut robot = Robot::<_, Fixed32, 6>::new();
+/// for side in [Side::Left, Side::Right] {
+///     let y = if side == Side::Left { 60.0 } else { -60.0 };
+///     let mounting = Mounting::new(Foot::from_mm(0.0, y, 0.0), side);
+///     robot.add(Limb { leg, mounting, servos }).map_err(|_| "no room for that leg")?;
+/// }
+/// // Mirrored feet come to the same joint angles.
+/// let feet = [Foot::from_mm(30.0, 190.0, -60.0), Foot::from_mm(30.0, -190.0, -60.0)];
+/// let frame = robot.frame(&feet);
+/// assert_eq!(frame[0].answer.outcome, Outcome::Reached);
+/// assert_eq!(frame[0].answer.joints, frame[1].answer.joints);
+/// # Ok(())
+/// # }
+/// ```
+#[derive(Debug, Clone)]
+pub struct Robot<H: Hip, N: Number, const LEGS: usize> {
+    limbs: Vec<(Limb<H, N>, Joints<N>), LEGS>,
+}
+
+impl<H: Hip, N: Number, const LEGS: usize> Robot<H, N, LEGS> {
+    /// A robot without legs yet.
+    pub const fn new() -> Self {
+        Self { limbs: Vec::new() }
+    }
+
+    /// Adds a limb, whose pose is taken to be the zero pose until it is commanded.
+    ///
+    /// # Errors
+    /// Gives the limb back if there are `LEGS` already.
+    pub fn add(&mut self, limb: Limb<H, N>) -> Result<(), Limb<H, N>> {
+        self.limbs.push((limb, Joints::ZERO)).map_err(|(limb, _)| limb)
+    }
+
+    /// How many legs there are.
+    pub fn legs(&self) -> usize {
+        self.limbs.len()
+    }
+
+    /// One frame: a foot per leg (body frame), in the order in which they were added, to pulses. A leg without a
+    /// foot, or with one that is not finite, keeps its pose; feet without a leg are passed over.
+    pub fn frame(&mut self, feet: &[Foot<N>]) -> Vec<LimbCommand<N>, LEGS> {
+        self.limbs
+            .iter_mut()
+            .zip(feet)
+            .map(|((limb, pose), foot)| {
+                let command = limb.command(*foot, *pose);
+                *pose = command.answer.joints;
+                command
+            })
+            .collect()
+    }
+}
+
+impl<H: Hip, N: Number, const LEGS: usize> Default for Robot<H, N, LEGS> {
+    fn default() -> Self {
+        Self::new()
+    }
+}
