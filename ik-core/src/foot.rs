@@ -19,13 +19,20 @@ impl<N: Number> Foot<N> {
         Self { x, y, z }
     }
 
-    /// A foot from mm as `f64`, rounded and saturated to what the number system holds.
+    /// A foot from mm as `f64`, rounded and saturated to what the number system holds. For constants: fixed
+    /// point has no NaN and takes it for 0, so what was computed or received goes through
+    /// [`try_from_mm`](Foot::try_from_mm).
     ///
     /// On a chip without an FPU this links software floating point unless the arguments are constants;
     /// [`new`](Foot::new) does not.
     #[inline]
     pub fn from_mm(x: f64, y: f64, z: f64) -> Self {
         Self { x: N::length_from_mm(x), y: N::length_from_mm(y), z: N::length_from_mm(z) }
+    }
+
+    /// Like [`from_mm`](Foot::from_mm); `None` if a coordinate is NaN or infinite.
+    pub fn try_from_mm(x: f64, y: f64, z: f64) -> Option<Self> {
+        (x.is_finite() && y.is_finite() && z.is_finite()).then(|| Self::from_mm(x, y, z))
     }
 
     /// x, y, z in mm.

@@ -26,7 +26,7 @@
 //! it should; the survey of the host harness shows by how much.
 
 mod answer;
-mod constants;
+pub(crate) mod constants;
 mod roll_hip;
 mod triangle;
 mod yaw_hip;
@@ -37,12 +37,12 @@ pub use answer::{Answer, Outcome};
 use crate::angle::{Angle, Joints};
 use crate::foot::Foot;
 use crate::geometry::{Dimensions, GeometryError};
-use crate::limits::Limits;
+use crate::limits::{End, Limits, Ranges};
 use crate::number::{Number, Placed};
 use constants::{Constants, constants};
 use core::marker::PhantomData;
 
-use sealed::Plane;
+use sealed::{Beyond, Plane};
 
 mod sealed {
     use super::{Constants, Joints, Number};
@@ -56,18 +56,35 @@ mod sealed {
         pub(crate) across: N::Coord,
         /// D: down from the hip (roll-hip) or outward from the femur joint (yaw-hip).
         pub(crate) along: N::Coord,
-        /// (L1+L2)² − G², exact, within [0, 4·L1·L2].
+        /// (L1+L2)² − G², exact, within [`Constants::straightest`] and [`Constants::most_folded`].
         pub(crate) n: N::Square,
+    }
+
+    /// What a foot out of reach lies beyond. It is decided once, from exact squares: a second look at rounded
+    /// lengths might decide otherwise.
+    #[derive(Debug, Clone, Copy, PartialEq, Eq)]
+    pub enum Beyond {
+        /// The outer end, with the knee at its least.
+        Outer,
+        /// The inner end, with the knee at its most.
+        Inner,
+        /// Roll-hip: the cylinder around the hip's axis.
+        Cylinder,
     }
 
     /// The hip stage.
     pub trait Stage {
-        /// The plane of the leg for a foot within the working range; `None` if it is out of reach.
-        fn plane<N: Number>(leg: &Constants<N>, foot: [N::Coord; 3]) -> Option<Plane<N>>;
-        /// The plane for the reachable point that is closest to a foot out of reach; the foot may have been
-        /// halved so many times.
-        fn closest<N: Number>(leg: &Constants<N>, foot: [N::Coord; 3], halvings: Option<u32>) -> Plane<N>;
-        /// The foot at (across, along) in the plane at the given hip angle.
+        /// The plane of the leg for a foot within the working range, or what it lies beyond.
+        fn plane<N: Number>(leg: &Constants<N>, foot: [N::Coord; 3]) -> Result<Plane<N>, Beyond>;
+        /// The plane for the reachable point that is closest to a foot out of reach, which may have been halved so
+        /// many times; and the end of the knee's range that it comes to, if it does.
+        fn closest<N: Number>(
+            leg: &Constants<N>,
+            foot: [N::Coord; 3],
+            beyond: Beyond,
+            halvings: u32,
+        ) -> (Plane<N>, Option<crate::limits::End>);
+        /// The foot (leg frame).
         fn foot<N: Number>(leg: &Constants<N>, joints: &Joints<N>) -> [N::Coord; 3];
     }
 }
@@ -82,19 +99,18 @@ pub trait Hip: sealed::Stage + Copy + core::fmt::Debug + PartialEq + 'static {
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct Leg<H: Hip, N: Number> {
     constants: Constants<N>,
-    limits: Limits<N>,
     hip: PhantomData<H>,
 }
 
 #[cfg(feature = "fixed32")]
 impl<H: Hip> Leg<H, crate::Fixed32> {
-    /// A leg with free joints.
+    /// A leg; with free joints if the limits are [`Limits::FREE`].
     ///
     /// # Errors
     /// If the leg is too long or too short for the number system.
-    pub const fn new(dimensions: Dimensions<H>) -> Result<Self, GeometryError> {
-        match constants!(crate::Fixed32, dimensions) {
-            Ok(constants) => Ok(Self { constants, limits: Limits::FREE, hip: PhantomData }),
+    pub const fn new(dimensions: Dimensions<H>, limits: Limits) -> Result<Self, GeometryError> {
+        match constants!(crate::Fixed32, dimensions, limits) {
+            Ok(constants) => Ok(Self { constants, hip: PhantomData }),
             Err(error) => Err(error),
         }
     }
@@ -102,13 +118,13 @@ impl<H: Hip> Leg<H, crate::Fixed32> {
 
 #[cfg(any(feature = "float32", feature = "coarse"))]
 impl<H: Hip, M: crate::number::float::FloatMaths> Leg<H, crate::number::float::Float<M>> {
-    /// A leg with free joints.
+    /// A leg; with free joints if the limits are [`Limits::FREE`].
     ///
     /// # Errors
     /// If the leg is too long or too short for the number system.
-    pub const fn new(dimensions: Dimensions<H>) -> Result<Self, GeometryError> {
-        match constants!(crate::number::float::Float<M>, dimensions) {
-            Ok(constants) => Ok(Self { constants, limits: Limits::FREE, hip: PhantomData }),
+    pub const fn new(dimensions: Dimensions<H>, limits: Limits) -> Result<Self, GeometryError> {
+        match constants!(crate::number::float::Float<M>, dimensions, limits) {
+            Ok(constants) => Ok(Self { constants, hip: PhantomData }),
             Err(error) => Err(error),
         }
     }
@@ -119,54 +135,76 @@ impl<H: Hip, N: Number> Leg<H, N> {
     ///
     /// # Errors
     /// If the leg is too long or too short for the number system.
-    pub fn from_dimensions(dimensions: Dimensions<H>) -> Result<Self, GeometryError> {
-        constants!(N, dimensions).map(|constants| Self { constants, limits: Limits::FREE, hip: PhantomData })
+    pub fn from_dimensions(dimensions: Dimensions<H>, limits: Limits) -> Result<Self, GeometryError> {
+        constants!(N, dimensions, limits).map(|constants| Self { constants, hip: PhantomData })
     }
 
-    /// The same leg with joint ranges.
-    #[must_use]
-    pub const fn with_limits(self, limits: Limits<N>) -> Self {
-        Self { constants: self.constants, limits, hip: PhantomData }
-    }
-
-    /// The joint ranges; [`Limits::FREE`] unless they were given.
-    pub const fn limits(&self) -> Limits<N> {
-        self.limits
+    /// The joint ranges, as the number system holds them.
+    pub const fn ranges(&self) -> Ranges<N> {
+        self.constants.ranges
     }
 
     /// The joint angles that put the foot at `foot` (leg frame), or as near as reach and ranges allow.
     ///
-    /// Every input has an answer, and the answer says what was done: a foot out of reach is moved to the closest
-    /// reachable point; then each joint is held within its range; `off_by` is how far the foot is then from
-    /// where it was asked to be, by this number system's own forward kinematics. A foot that is NaN or infinite
-    /// is reported, and the answer is the pose `hold`, within the joint ranges: give it the last pose.
+    /// Every input has an answer, and the answer says what was done:
+    /// - The reach ends where the links end it, or the knee's range if that is narrower. A foot out of reach is
+    ///   moved to the closest reachable point.
+    /// - Then hip and thigh are held within their ranges, each on its own.
+    /// - `off_by` is how far the foot is then from where it was asked to be, by this number system's own forward
+    ///   kinematics.
+    /// - A foot that is NaN or infinite is reported, and the answer is the pose `hold`, within the joint ranges:
+    ///   give it the last pose.
     ///
     /// Where a direction is undefined, one is chosen: with the foot on the hip's own axis the hip is at 0; a
     /// foot on a roll-hip leg's origin without offset hangs straight down; one on a yaw-hip leg's femur joint is
     /// moved outward.
     #[inline]
     pub fn solve(&self, foot: Foot<N>, hold: Joints<N>) -> Answer<N> {
-        let (plane, moved) = match N::place(foot.lengths(), self.constants.scale) {
-            Placed::Near(point) => match H::plane(&self.constants, point) {
-                Some(plane) => (plane, false),
-                None => (H::closest(&self.constants, point, None), true),
+        let leg = &self.constants;
+        let plane = match N::place(foot.lengths(), leg.scale) {
+            Placed::Near(point) => match H::plane(leg, point) {
+                Ok(plane) => plane,
+                Err(beyond) => return self.moved(foot, H::closest(leg, point, beyond, 0)),
             },
-            Placed::Far(point, halvings) => (H::closest(&self.constants, point, Some(halvings)), true),
+            Placed::Far(point, halvings) => {
+                return self.moved(foot, H::closest(leg, point, Beyond::Outer, halvings));
+            }
             Placed::NotFinite => return self.kept(hold),
         };
-        let (thigh, knee) = triangle::angles(&self.constants, &plane);
-        let wanted = Joints { hip: plane.hip, thigh: Angle(thigh), knee: Angle(knee) };
-        let (joints, held) = self.limits.hold(wanted);
-        if !moved && !held.any() {
-            return Answer { joints, outcome: Outcome::Reached, off_by: N::NO_LENGTH };
+        let (joints, mut held) = self.held(&plane);
+        // The knee is within its range but for rounding, or the foot would be out of reach.
+        held.knee = None;
+        if held.any() {
+            return self.explained(foot, joints, held);
         }
-        self.explained(foot, joints, held)
+        Answer { joints, outcome: Outcome::Reached, off_by: N::NO_LENGTH }
     }
 
     /// Where the foot is (leg frame) with the joints at the given angles; total, ranges are not looked at.
     pub fn forward(&self, joints: &Joints<N>) -> Foot<N> {
         let [x, y, z] = H::foot(&self.constants, joints).map(|coord| N::length(coord, self.constants.scale));
         Foot { x, y, z }
+    }
+
+    /// The joint angles for a foot in the plane, within their ranges.
+    #[inline(always)]
+    fn held(&self, plane: &Plane<N>) -> (Joints<N>, Held) {
+        let (thigh, knee) = triangle::angles(&self.constants, plane);
+        self.constants.ranges.hold(Joints { hip: plane.hip, thigh: Angle(thigh), knee: Angle(knee) })
+    }
+
+    /// The answer for a foot that was moved into reach, perhaps to an end of the knee's range.
+    #[cold]
+    fn moved(&self, foot: Foot<N>, (plane, end): (Plane<N>, Option<End>)) -> Answer<N> {
+        let (mut joints, mut held) = self.held(&plane);
+        let ([least_stops, most_stops], knee) = (self.constants.knee_stops, self.constants.ranges.knee);
+        // The knee's end is known exactly, whatever rounding made of it.
+        (joints.knee, held.knee) = match end {
+            Some(End::Least) => (knee.least, least_stops.then_some(End::Least)),
+            Some(End::Most) => (knee.most, most_stops.then_some(End::Most)),
+            None => (joints.knee, None),
+        };
+        self.explained(foot, joints, held)
     }
 
     /// The answer for a foot that is not where it was asked to be.
@@ -180,6 +218,7 @@ impl<H: Hip, N: Number> Leg<H, N> {
     /// The answer for a foot that is nowhere.
     #[cold]
     fn kept(&self, pose: Joints<N>) -> Answer<N> {
-        Answer { joints: self.limits.hold(pose).0, outcome: Outcome::NotFinite, off_by: N::FARTHEST }
+        let (joints, _) = self.constants.ranges.hold(pose);
+        Answer { joints, outcome: Outcome::NotFinite, off_by: N::FARTHEST }
     }
 }

@@ -11,9 +11,9 @@
 //! // A leg lives in flash: an impossible one does not compile.
 //! const LEG: OrchardLeg = {
 //!     let Ok(measures) = Dimensions::roll_hip(31.5, 94.0, 107.0, Bend::Forward) else { panic!("measures") };
-//!     let Ok(limits) = Limits::<Fixed32>::degrees([-45.0, 45.0], [-80.0, 80.0], [5.0, 150.0]) else { panic!("limits") };
-//!     let Ok(leg) = OrchardLeg::new(measures) else { panic!("leg") };
-//!     leg.with_limits(limits)
+//!     let Ok(limits) = Limits::degrees([-45.0, 45.0], [-80.0, 80.0], [5.0, 150.0]) else { panic!("limits") };
+//!     let Ok(leg) = OrchardLeg::new(measures, limits) else { panic!("leg") };
+//!     leg
 //! };
 //!
 //! let answer = LEG.solve(Foot::from_mm(40.0, 31.5, -160.0), Joints::ZERO);

@@ -14,45 +14,12 @@ pub enum End {
     Most,
 }
 
-/// A range of joint angles, its ends included.
+/// The ranges of a leg's three joints, degrees, checked; both ends belong to a range.
 #[derive(Debug, Clone, Copy, PartialEq)]
-pub struct Range<N: Number> {
-    least: Angle<N>,
-    most: Angle<N>,
-}
-
-impl<N: Number> Range<N> {
-    /// The least angle.
-    pub const fn least(&self) -> Angle<N> {
-        self.least
-    }
-
-    /// The most.
-    pub const fn most(&self) -> Angle<N> {
-        self.most
-    }
-
-    /// The angle of the range that is nearest in number, and the end at which it was held.
-    ///
-    /// Nearest in number, not around the circle: a joint does not turn through its stop.
-    #[inline(always)]
-    pub fn hold(&self, angle: Angle<N>) -> (Angle<N>, Option<End>) {
-        if angle.0 < self.least.0 {
-            (self.least, Some(End::Least))
-        } else if angle.0 > self.most.0 {
-            (self.most, Some(End::Most))
-        } else {
-            (angle, None)
-        }
-    }
-}
-
-/// The ranges of a leg's three joints.
-#[derive(Debug, Clone, Copy, PartialEq)]
-pub struct Limits<N: Number> {
-    hip: Range<N>,
-    thigh: Range<N>,
-    knee: Range<N>,
+pub struct Limits {
+    hip_deg: [f64; 2],
+    thigh_deg: [f64; 2],
+    knee_deg: [f64; 2],
 }
 
 /// Why joint ranges cannot be.
@@ -92,10 +59,16 @@ const fn ordered(range: [f64; 2], least: f64) -> bool {
     range[0] >= least && range[1] <= 180.0 && range[0] <= range[1]
 }
 
-/// One text for `const fn` and for generic code; see `geometry::constants`.
-macro_rules! limits {
-    ($number:ty, $hip:expr, $thigh:expr, $knee:expr) => {{
-        let (hip, thigh, knee): ([f64; 2], [f64; 2], [f64; 2]) = ($hip, $thigh, $knee);
+impl Limits {
+    /// Every angle there is: hip and thigh from −180° to 180°, the knee from straight to folded.
+    pub const FREE: Self =
+        Self { hip_deg: [-180.0, 180.0], thigh_deg: [-180.0, 180.0], knee_deg: [0.0, 180.0] };
+
+    /// Ranges [least, most] in degrees: hip and thigh within ±180°, knee within 0° to 180°.
+    ///
+    /// # Errors
+    /// Says which joint's range cannot be.
+    pub const fn degrees(hip: [f64; 2], thigh: [f64; 2], knee: [f64; 2]) -> Result<Self, LimitsError> {
         if !ordered(hip, -180.0) {
             Err(LimitsError::Hip)
         } else if !ordered(thigh, -180.0) {
@@ -103,61 +76,68 @@ macro_rules! limits {
         } else if !ordered(knee, 0.0) {
             Err(LimitsError::Knee)
         } else {
-            Ok(Limits {
-                hip: Range {
-                    least: Angle(<$number>::angle_from_turns(hip[0] / 360.0)),
-                    most: Angle(<$number>::angle_from_turns(hip[1] / 360.0)),
-                },
-                thigh: Range {
-                    least: Angle(<$number>::angle_from_turns(thigh[0] / 360.0)),
-                    most: Angle(<$number>::angle_from_turns(thigh[1] / 360.0)),
-                },
-                knee: Range {
-                    least: Angle(<$number>::angle_from_turns(knee[0] / 360.0)),
-                    most: Angle(<$number>::angle_from_turns(knee[1] / 360.0)),
-                },
-            })
+            Ok(Self { hip_deg: hip, thigh_deg: thigh, knee_deg: knee })
         }
-    }};
-}
+    }
 
-#[cfg(feature = "fixed32")]
-impl Limits<crate::Fixed32> {
-    /// Ranges [least, most] in degrees: hip and thigh within ±180°, knee within 0° to 180°.
-    ///
-    /// # Errors
-    /// Says which joint's range cannot be.
-    pub const fn degrees(hip: [f64; 2], thigh: [f64; 2], knee: [f64; 2]) -> Result<Self, LimitsError> {
-        limits!(crate::Fixed32, hip, thigh, knee)
+    /// The hip's range [least, most], degrees.
+    pub const fn hip_deg(&self) -> [f64; 2] {
+        self.hip_deg
+    }
+
+    /// The thigh's (femur's).
+    pub const fn thigh_deg(&self) -> [f64; 2] {
+        self.thigh_deg
+    }
+
+    /// The knee's.
+    pub const fn knee_deg(&self) -> [f64; 2] {
+        self.knee_deg
     }
 }
 
-#[cfg(any(feature = "float32", feature = "coarse"))]
-impl<M: crate::number::float::FloatMaths> Limits<crate::number::float::Float<M>> {
-    /// Ranges [least, most] in degrees: hip and thigh within ±180°, knee within 0° to 180°.
+/// A range of joint angles in a number system, its ends included.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Range<N: Number> {
+    pub(crate) least: Angle<N>,
+    pub(crate) most: Angle<N>,
+}
+
+impl<N: Number> Range<N> {
+    /// The least angle.
+    pub const fn least(&self) -> Angle<N> {
+        self.least
+    }
+
+    /// The most.
+    pub const fn most(&self) -> Angle<N> {
+        self.most
+    }
+
+    /// The angle of the range that is nearest in number, and the end at which it was held.
     ///
-    /// # Errors
-    /// Says which joint's range cannot be.
-    pub const fn degrees(hip: [f64; 2], thigh: [f64; 2], knee: [f64; 2]) -> Result<Self, LimitsError> {
-        limits!(crate::number::float::Float<M>, hip, thigh, knee)
+    /// Nearest in number, not around the circle: a joint does not turn through its stop.
+    #[inline(always)]
+    pub fn hold(&self, angle: Angle<N>) -> (Angle<N>, Option<End>) {
+        if angle.0 < self.least.0 {
+            (self.least, Some(End::Least))
+        } else if angle.0 > self.most.0 {
+            (self.most, Some(End::Most))
+        } else {
+            (angle, None)
+        }
     }
 }
 
-impl<N: Number> Limits<N> {
-    /// Every angle there is; the knee from straight.
-    pub const FREE: Self = {
-        let turn = Range { least: Angle(N::LEAST_ANGLE), most: Angle(N::MOST_ANGLE) };
-        Self { hip: turn, thigh: turn, knee: Range { least: Angle(N::NO_ANGLE), most: turn.most } }
-    };
+/// The ranges of a leg's three joints in a number system.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Ranges<N: Number> {
+    pub(crate) hip: Range<N>,
+    pub(crate) thigh: Range<N>,
+    pub(crate) knee: Range<N>,
+}
 
-    /// Like `degrees`, for any number system, while running.
-    ///
-    /// # Errors
-    /// Says which joint's range cannot be.
-    pub fn from_degrees(hip: [f64; 2], thigh: [f64; 2], knee: [f64; 2]) -> Result<Self, LimitsError> {
-        limits!(N, hip, thigh, knee)
-    }
-
+impl<N: Number> Ranges<N> {
     /// The hip's range.
     pub const fn hip(&self) -> Range<N> {
         self.hip

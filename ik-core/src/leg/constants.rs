@@ -1,8 +1,12 @@
 //! What the solver needs to know of a leg, worked out once.
 
+use crate::limits::Ranges;
 use crate::number::Number;
 
-/// The constants that the solver needs of a leg, in a number system.
+/// The constants of a leg in a number system.
+///
+/// The knee's range is part of the reach: between its ends n runs from `straightest` to `most_folded`, and what
+/// lies outside is as far out of reach as it would be for a leg with shorter links.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct Constants<N: Number> {
     pub(crate) scale: N::Scale,
@@ -10,18 +14,20 @@ pub struct Constants<N: Number> {
     pub(crate) offset: N::Coord,
     /// Its square.
     pub(crate) offset_square: N::Square,
-    /// L1 + L2.
-    pub(crate) reach: N::Coord,
     /// (L1 + L2)².
     pub(crate) reach_square: N::Square,
     /// 4·L1·L2: what n = (L1+L2)² − G² is when the leg is folded.
     pub(crate) fold_square: N::Square,
-    /// |L1 − L2|: how near the foot gets to the thigh's joint.
+    /// n with the knee at its least and at its most.
+    pub(crate) straightest: N::Square,
+    pub(crate) most_folded: N::Square,
+    /// G with the knee at its least and at its most.
+    pub(crate) outer: N::Coord,
     pub(crate) inner: N::Coord,
-    /// Roll-hip: the spheres on which the reachable set ends, √((L1±L2)² + offset²).
+    /// Roll-hip: the spheres on which the reachable set ends, √(G² + offset²).
     pub(crate) outer_radius: N::Coord,
     pub(crate) inner_radius: N::Coord,
-    /// Yaw-hip: √(max(0, (L1−L2)² − coxa²)), where the inner circle meets the yaw axis.
+    /// Yaw-hip: √(max(0, G² − coxa²)) of the inner G, where the inner circle meets the yaw axis.
     pub(crate) axis_corner: N::Coord,
     pub(crate) thigh: N::Coord,
     pub(crate) shank: N::Coord,
@@ -34,37 +40,46 @@ pub struct Constants<N: Number> {
     /// The reciprocal of 2·√(L1·L2).
     pub(crate) unit: N::Unit,
     pub(crate) bends_back: bool,
+    /// Whether the knee's range ends before straight, and before folded: else it is the links that end the reach.
+    pub(crate) knee_stops: [bool; 2],
+    pub(crate) ranges: Ranges<N>,
 }
 
 /// The constants of a leg as an expression, so that one text serves `const fn` with a number system's own
-/// constant functions and generic code with the trait's. `$number::name` finds whichever is in scope.
+/// constant functions and generic code with the trait's. `<$number>::name` finds whichever is in scope.
 macro_rules! constants {
-    ($number:ty, $dimensions:expr) => {{
-        let dimensions = $dimensions;
+    ($number:ty, $dimensions:expr, $limits:expr) => {{
+        let (dimensions, limits) = ($dimensions, $limits);
         let (offset, thigh, shank) = (dimensions.offset_mm(), dimensions.thigh_mm(), dimensions.shank_mm());
         let radius = dimensions.radius_mm();
         match <$number>::scale_for(radius) {
-            None => Err(if radius < 1.0 { GeometryError::TooShort } else { GeometryError::TooLong }),
+            None => Err(if radius < 1.0 {
+                $crate::geometry::GeometryError::TooShort
+            } else {
+                $crate::geometry::GeometryError::TooLong
+            }),
             Some(scale) => {
                 let reach = thigh + shank;
-                let inner = $crate::const_math::magnitude(thigh - shank);
-                let corner = inner * inner - offset * offset;
                 let product = thigh * shank;
+                let knee = limits.knee_deg();
+                let straightest = 4.0 * product * $crate::const_math::half_sine_square(knee[0]);
+                let most_folded = 4.0 * product * $crate::const_math::half_sine_square(knee[1]);
+                let (outer_square, inner_square) = (reach * reach - straightest, reach * reach - most_folded);
+                let corner = inner_square - offset * offset;
                 let root = $crate::const_math::square_root;
                 Ok($crate::leg::constants::Constants {
                     scale,
                     offset: <$number>::coord_from_mm(offset, scale),
                     offset_square: <$number>::square_from_mm2(offset * offset, scale),
-                    reach: <$number>::coord_from_mm(reach, scale),
                     reach_square: <$number>::square_from_mm2(reach * reach, scale),
                     fold_square: <$number>::square_from_mm2(4.0 * product, scale),
-                    inner: <$number>::coord_from_mm(inner, scale),
-                    outer_radius: <$number>::coord_from_mm(root(reach * reach + offset * offset), scale),
-                    inner_radius: <$number>::coord_from_mm(root(inner * inner + offset * offset), scale),
-                    axis_corner: <$number>::coord_from_mm(
-                        root(if corner > 0.0 { corner } else { 0.0 }),
-                        scale,
-                    ),
+                    straightest: <$number>::square_from_mm2(straightest, scale),
+                    most_folded: <$number>::square_from_mm2(most_folded, scale),
+                    outer: <$number>::coord_from_mm(root(outer_square), scale),
+                    inner: <$number>::coord_from_mm(root(inner_square), scale),
+                    outer_radius: <$number>::coord_from_mm(root(outer_square + offset * offset), scale),
+                    inner_radius: <$number>::coord_from_mm(root(inner_square + offset * offset), scale),
+                    axis_corner: <$number>::coord_from_mm(root(corner), scale),
                     thigh: <$number>::coord_from_mm(thigh, scale),
                     shank: <$number>::coord_from_mm(shank, scale),
                     twice_thigh: <$number>::coord_from_mm(2.0 * thigh, scale),
@@ -72,9 +87,26 @@ macro_rules! constants {
                     norm: <$number>::product_from_mm(reach * reach / (2.0 * shank), scale),
                     unit: <$number>::unit_from_mm(2.0 * root(product), scale),
                     bends_back: dimensions.bends_back(),
+                    knee_stops: [knee[0] > 0.0, knee[1] < 180.0],
+                    ranges: $crate::limits::Ranges {
+                        hip: $crate::leg::constants::range!($number, limits.hip_deg()),
+                        thigh: $crate::leg::constants::range!($number, limits.thigh_deg()),
+                        knee: $crate::leg::constants::range!($number, knee),
+                    },
                 })
             }
         }
     }};
 }
 pub(crate) use constants;
+
+macro_rules! range {
+    ($number:ty, $degrees:expr) => {{
+        let [least, most] = $degrees;
+        $crate::limits::Range {
+            least: $crate::angle::Angle(<$number>::angle_from_turns(least / 360.0)),
+            most: $crate::angle::Angle(<$number>::angle_from_turns(most / 360.0)),
+        }
+    }};
+}
+pub(crate) use range;

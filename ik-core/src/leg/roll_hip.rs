@@ -5,15 +5,17 @@
 //! hip = angle of (y·a − z·D, z·a + y·D)                 norm y² + z²
 //! ```
 //!
-//! The reachable set is (L1−L2)² + a² ≤ x² + y² + z² ≤ (L1+L2)² + a² with y² + z² ≥ a². Its point closest to a
+//! With O and I the lengths of the line from thigh joint to foot with the knee at its least and at its most (L1 + L2
+//! and |L1 − L2| if it is free), the reachable set is I² + a² ≤ x² + y² + z² ≤ O² + a² with y² + z² ≥ a². Its point closest to a
 //! foot outside: the foot scaled onto the nearer sphere, if that keeps y² + z² ≥ a²; else y and z scaled onto
-//! the cylinder y² + z² = a², with |x| held within [|L1−L2|, L1+L2].
+//! the cylinder y² + z² = a², with |x| held within [I, O].
 
 use super::constants::Constants;
-use super::sealed::Stage;
+use super::sealed::{Beyond, Stage};
 use super::{Hip, Plane, triangle};
 use crate::angle::{Angle, Joints};
 use crate::geometry::RollHip;
+use crate::limits::End;
 use crate::number::Number;
 
 impl Hip for RollHip {
@@ -22,19 +24,40 @@ impl Hip for RollHip {
 
 impl Stage for RollHip {
     #[inline(always)]
-    fn plane<N: Number>(leg: &Constants<N>, [x, y, z]: [N::Coord; 3]) -> Option<Plane<N>> {
+    fn plane<N: Number>(leg: &Constants<N>, [x, y, z]: [N::Coord; 3]) -> Result<Plane<N>, Beyond> {
         let depth_square = N::square(y, leg.scale) + N::square(z, leg.scale) - leg.offset_square;
         let n = leg.reach_square - depth_square - N::square(x, leg.scale);
-        if depth_square < N::NO_SQUARE || n < N::NO_SQUARE || n > leg.fold_square {
-            return None;
+        if n < leg.straightest {
+            Err(Beyond::Outer)
+        } else if n > leg.most_folded {
+            Err(Beyond::Inner)
+        } else if depth_square < N::NO_SQUARE {
+            Err(Beyond::Cylinder)
+        } else {
+            Ok(at_depth(leg, [x, y, z], depth_square, n))
         }
-        Some(at_depth(leg, [x, y, z], depth_square, n))
     }
 
     #[cold]
-    fn closest<N: Number>(leg: &Constants<N>, foot: [N::Coord; 3], halvings: Option<u32>) -> Plane<N> {
-        on_a_sphere(leg, foot, halvings.is_some())
-            .unwrap_or_else(|| on_the_cylinder(leg, foot, halvings.is_some()))
+    fn closest<N: Number>(
+        leg: &Constants<N>,
+        foot: [N::Coord; 3],
+        beyond: Beyond,
+        _: u32,
+    ) -> (Plane<N>, Option<End>) {
+        let on_a_sphere = match beyond {
+            Beyond::Outer => {
+                scaled(leg, foot, leg.outer_radius, leg.straightest).map(|plane| (plane, End::Least))
+            }
+            Beyond::Inner => {
+                scaled(leg, foot, leg.inner_radius, leg.most_folded).map(|plane| (plane, End::Most))
+            }
+            Beyond::Cylinder => None,
+        };
+        match on_a_sphere {
+            Some((plane, end)) => (plane, Some(end)),
+            None => on_the_cylinder(leg, foot, beyond),
+        }
     }
 
     fn foot<N: Number>(leg: &Constants<N>, joints: &Joints<N>) -> [N::Coord; 3] {
@@ -65,22 +88,18 @@ fn at_depth<N: Number>(
     Plane { hip: Angle(hip), across: x, along: depth, n }
 }
 
-/// The foot scaled onto the nearer of the two spheres, if it lies beyond the one or within the other and that
-/// keeps it clear of the cylinder.
-fn on_a_sphere<N: Number>(leg: &Constants<N>, [x, y, z]: [N::Coord; 3], far: bool) -> Option<Plane<N>> {
+/// The foot scaled onto a sphere around the origin, if that keeps it clear of the cylinder.
+fn scaled<N: Number>(
+    leg: &Constants<N>,
+    [x, y, z]: [N::Coord; 3],
+    radius: N::Coord,
+    n: N::Square,
+) -> Option<Plane<N>> {
     let square = N::square(x, leg.scale) + N::square(y, leg.scale) + N::square(z, leg.scale);
-    let n = leg.reach_square + leg.offset_square - square;
-    let (radius, n) = if far || n < N::NO_SQUARE {
-        (leg.outer_radius, N::NO_SQUARE)
-    } else if n > leg.fold_square {
-        (leg.inner_radius, leg.fold_square)
-    } else {
-        return None;
-    };
     let norm = N::root(square, leg.scale);
     if !(norm > N::NO_COORD) {
         // At the very origin: without an offset every direction is as near, and down is where feet go.
-        let down = Plane { hip: Angle::ZERO, across: N::NO_COORD, along: leg.inner, n };
+        let down = Plane { hip: Angle::ZERO, across: N::NO_COORD, along: radius, n };
         return if leg.offset_square > N::NO_SQUARE { None } else { Some(down) };
     }
     let [x, y, z] = [x, y, z].map(|v| N::rescale(v, radius, norm));
@@ -92,30 +111,35 @@ fn on_a_sphere<N: Number>(leg: &Constants<N>, [x, y, z]: [N::Coord; 3], far: boo
 }
 
 /// The foot on the cylinder that the thigh joint's plane sweeps around the roll axis.
-fn on_the_cylinder<N: Number>(leg: &Constants<N>, [x, y, z]: [N::Coord; 3], far: bool) -> Plane<N> {
+fn on_the_cylinder<N: Number>(
+    leg: &Constants<N>,
+    [x, y, z]: [N::Coord; 3],
+    beyond: Beyond,
+) -> (Plane<N>, Option<End>) {
     let ahead = if x < N::NO_COORD { -x } else { x };
-    let (ahead, n) = if far || ahead > leg.reach {
-        (leg.reach, N::NO_SQUARE)
+    let (ahead, n, end) = if beyond == Beyond::Outer || ahead > leg.outer {
+        (leg.outer, leg.straightest, Some(End::Least))
     } else if ahead < leg.inner {
-        (leg.inner, leg.fold_square)
+        (leg.inner, leg.most_folded, Some(End::Most))
     } else {
-        (ahead, within(leg, leg.reach_square - N::square(ahead, leg.scale)))
+        (ahead, within(leg, leg.reach_square - N::square(ahead, leg.scale)), None)
     };
     let radial = N::root(N::square(y, leg.scale) + N::square(z, leg.scale), leg.scale);
-    Plane {
+    let plane = Plane {
         hip: Angle(N::angle(N::widen(z), N::widen(y), N::widen(radial))),
         across: if x < N::NO_COORD { -ahead } else { ahead },
         along: N::NO_COORD,
         n,
-    }
+    };
+    (plane, end)
 }
 
-/// `n` within [0, 4·L1·L2], which rounding may leave by a hair.
+/// `n` between the ends of the knee's range, which rounding may leave by a hair.
 fn within<N: Number>(leg: &Constants<N>, n: N::Square) -> N::Square {
-    if n < N::NO_SQUARE {
-        N::NO_SQUARE
-    } else if n > leg.fold_square {
-        leg.fold_square
+    if n < leg.straightest {
+        leg.straightest
+    } else if n > leg.most_folded {
+        leg.most_folded
     } else {
         n
     }

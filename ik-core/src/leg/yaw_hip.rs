@@ -5,14 +5,16 @@
 //! hip = angle of (y, x)                                 norm R
 //! ```
 //!
-//! The reachable set is (L1−L2)² ≤ D² + z² ≤ (L1+L2)² with R ≥ 0. Its point closest to a foot outside: (D, z)
+//! With O and I the lengths of the line from femur joint to foot with the knee at its least and at its most (L1 + L2
+//! and |L1 − L2| if it is free), the reachable set is I² ≤ D² + z² ≤ O² with R ≥ 0. Its point closest to a foot outside: (D, z)
 //! scaled onto the nearer circle; where the inner one would put R below 0, its corner on the yaw axis.
 
 use super::constants::Constants;
-use super::sealed::Stage;
+use super::sealed::{Beyond, Stage};
 use super::{Hip, Plane, triangle};
 use crate::angle::{Angle, Joints};
 use crate::geometry::YawHip;
+use crate::limits::End;
 use crate::number::Number;
 
 impl Hip for YawHip {
@@ -21,27 +23,33 @@ impl Hip for YawHip {
 
 impl Stage for YawHip {
     #[inline(always)]
-    fn plane<N: Number>(leg: &Constants<N>, [x, y, z]: [N::Coord; 3]) -> Option<Plane<N>> {
+    fn plane<N: Number>(leg: &Constants<N>, [x, y, z]: [N::Coord; 3]) -> Result<Plane<N>, Beyond> {
         let radial_square = N::square(x, leg.scale) + N::square(y, leg.scale);
         let (along, along_square) = N::beyond(radial_square, leg.offset, leg.scale);
         let n = leg.reach_square - along_square - N::square(z, leg.scale);
-        if n < N::NO_SQUARE || n > leg.fold_square {
-            return None;
+        if n < leg.straightest {
+            Err(Beyond::Outer)
+        } else if n > leg.most_folded {
+            Err(Beyond::Inner)
+        } else {
+            Ok(Plane { hip: yaw(x, y, along + leg.offset), across: z, along, n })
         }
-        Some(Plane { hip: yaw(x, y, along + leg.offset), across: z, along, n })
     }
 
     #[cold]
-    fn closest<N: Number>(leg: &Constants<N>, [x, y, z]: [N::Coord; 3], halvings: Option<u32>) -> Plane<N> {
-        let coxa = N::halve(leg.offset, halvings.unwrap_or(0));
+    fn closest<N: Number>(
+        leg: &Constants<N>,
+        [x, y, z]: [N::Coord; 3],
+        beyond: Beyond,
+        halvings: u32,
+    ) -> (Plane<N>, Option<End>) {
         let radial = N::root(N::square(x, leg.scale) + N::square(y, leg.scale), leg.scale);
-        let along = radial - coxa;
-        let gap_square = N::square(along, leg.scale) + N::square(z, leg.scale);
-        let gap = N::root(gap_square, leg.scale);
-        let (circle, n) = if halvings.is_some() || gap_square > leg.reach_square {
-            (leg.reach, N::NO_SQUARE)
+        let along = radial - N::halve(leg.offset, halvings);
+        let gap = N::root(N::square(along, leg.scale) + N::square(z, leg.scale), leg.scale);
+        let (circle, n, end) = if beyond == Beyond::Outer {
+            (leg.outer, leg.straightest, End::Least)
         } else {
-            (leg.inner, leg.fold_square)
+            (leg.inner, leg.most_folded, End::Most)
         };
         let (along, across) = if gap > N::NO_COORD {
             (N::rescale(along, circle, gap), N::rescale(z, circle, gap))
@@ -55,7 +63,7 @@ impl Stage for YawHip {
         } else {
             (along, across)
         };
-        Plane { hip: yaw(x, y, radial), across, along, n }
+        (Plane { hip: yaw(x, y, radial), across, along, n }, Some(end))
     }
 
     fn foot<N: Number>(leg: &Constants<N>, joints: &Joints<N>) -> [N::Coord; 3] {

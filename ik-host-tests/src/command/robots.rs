@@ -1,0 +1,56 @@
+//! Which robot a command is about: a sheet's, or a demo's.
+
+use super::ending::Ending;
+use crate::sheet::{self, DEMOS, Robot};
+use std::io::IsTerminal as _;
+use std::path::PathBuf;
+
+/// Where a robot comes from.
+#[derive(Debug, Clone, PartialEq, Eq)]
+pub(super) enum Source {
+    /// A sheet.
+    File(PathBuf),
+    /// A demo that is built in.
+    Demo(&'static str),
+}
+
+impl Source {
+    /// How a call names it.
+    pub(super) fn shown(&self) -> String {
+        match self {
+            Self::File(path) => path.display().to_string(),
+            Self::Demo(name) => format!("demo robot {name}"),
+        }
+    }
+
+    /// The robot.
+    pub(super) fn robot(&self) -> Result<Robot, Ending> {
+        match self {
+            Self::File(path) => sheet::read(path),
+            Self::Demo(name) => sheet::demo(name),
+        }
+        .map_err(|errors| Ending::WrongInput(errors.render(std::io::stderr().is_terminal())))
+    }
+
+    /// A name for files about it: letters, digits and hyphens.
+    pub(super) fn stem(&self) -> String {
+        let stem = match self {
+            Self::File(path) => path.file_stem().map(|stem| stem.to_string_lossy().into_owned()),
+            Self::Demo(name) => Some((*name).to_owned()),
+        };
+        stem.filter(|stem| !stem.is_empty()).unwrap_or_else(|| "robot".to_owned())
+    }
+}
+
+/// The sheet that was named, or every demo robot.
+pub(super) fn named_or_all_demos(sheet: Option<&PathBuf>) -> Vec<Source> {
+    match sheet {
+        Some(path) => vec![Source::File(path.clone())],
+        None => DEMOS.iter().map(|demo| Source::Demo(demo.name)).collect(),
+    }
+}
+
+/// The sheet that was named, or the first demo robot.
+pub(super) fn named_or_first_demo(sheet: Option<&PathBuf>) -> Source {
+    sheet.map_or(Source::Demo(DEMOS[0].name), |path| Source::File(path.clone()))
+}

@@ -1,0 +1,23 @@
+//! The PC's side of Toehold: what checks [`ik_core`] before it is flashed.
+//!
+//! | module | what it is |
+//! | --- | --- |
+//! | [`sheet`] | the robot sheet: read, checked, every complaint at once |
+//! | [`numbers`] | number systems of the PC's own: the same solver in `f64` |
+//! | [`machine`] | a robot of a sheet, in a number system: the very code that will be flashed |
+//! | [`reference`](mod@reference) | legs by other methods, sharing no code with ik-core: what judges |
+//! | [`survey`] | the main job: error bounds over the work volume |
+//! | [`solve`] | one target in every number system |
+//! | [`report`] | text, JSON and an HTML page of a survey |
+//! | [`command`] | the `toehold` program |
+//!
+//! Arrows run one way: command → report → survey → machine, reference → sheet; machine → ik-core.
+
+pub mod command;
+pub mod machine;
+pub mod numbers;
+pub mod reference;
+pub mod report;
+pub mod sheet;
+pub mod solve;
+pub mod survey;

@@ -1,0 +1,67 @@
+//! A survey for people and machines: text, JSON, and a page.
+
+mod number;
+mod page;
+mod picture;
+mod solved;
+mod text;
+
+pub use number::millimetres;
+pub use solved::solved_text;
+pub use text::text;
+
+use crate::survey::Survey;
+use serde::Serialize;
+use std::io::Write as _;
+use std::path::{Path, PathBuf};
+use std::{fmt, fs, io};
+
+/// A report that could not be written: the file or folder, and why.
+#[derive(Debug)]
+pub struct WriteError {
+    path: PathBuf,
+    cause: io::Error,
+}
+
+impl fmt::Display for WriteError {
+    fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
+        write!(f, "cannot write {}: {}", self.path.display(), self.cause)
+    }
+}
+
+impl std::error::Error for WriteError {}
+
+/// Data as JSON for people to read too, ending in a newline.
+pub fn json(data: &impl Serialize) -> String {
+    let mut text = serde_json::to_string_pretty(data).expect("plain data with string keys");
+    text.push('\n');
+    text
+}
+
+/// Writes `STEM.json` and `STEM.html` into a folder, which is made if it is not there. Each is written beside its
+/// place and then moved there, so that an earlier report is replaced by a complete one or not at all.
+///
+/// # Errors
+/// Names the file or folder and the cause.
+pub fn write(folder: &Path, stem: &str, survey: &Survey, repeat: &str) -> Result<[PathBuf; 2], WriteError> {
+    fs::create_dir_all(folder).map_err(|cause| WriteError { path: folder.to_owned(), cause })?;
+    let place = |ending: &str, text: String| {
+        let path = folder.join(format!("{stem}.{ending}"));
+        replace(folder, &path, &text).map_err(|cause| WriteError { path: path.clone(), cause }).map(|()| path)
+    };
+    Ok([place("json", json(survey))?, place("html", page::page(survey, repeat))?])
+}
+
+fn replace(folder: &Path, path: &Path, text: &str) -> io::Result<()> {
+    let mut file = tempfile::Builder::new().prefix(".toehold-").tempfile_in(folder)?;
+    file.write_all(text.as_bytes())?;
+    file.as_file().sync_all()?;
+    // Temporary files are private; a report is not.
+    #[cfg(unix)]
+    {
+        use std::os::unix::fs::PermissionsExt as _;
+        file.as_file().set_permissions(fs::Permissions::from_mode(0o644))?;
+    }
+    file.persist(path)?;
+    Ok(())
+}

@@ -1,0 +1,66 @@
+//! Promise: a joint is never commanded beyond its range, whatever is asked; the answer names the joint and the end
+//! that held it, exactly when one did, and how far the foot is off.
+
+mod common;
+
+use common::checks::limits;
+use common::effort::cases;
+use common::legs::{leg_and_point, leg_and_target};
+use common::solver::{NumberSystem, core};
+use ik_core::{Limits, LimitsError};
+use ik_host_tests::reference::Leg;
+use proptest::prelude::*;
+
+/// Ranges narrow enough to hold joints often, and wide enough to let them go often.
+fn ranges() -> impl Strategy<Value = [[f64; 2]; 3]> {
+    let around = || {
+        (-120.0..120.0, 0.0..120.0)
+            .prop_map(|(middle, half): (f64, f64)| [(middle - half).max(-180.0), (middle + half).min(180.0)])
+    };
+    let knee = (0.0..180.0, 0.0..180.0).prop_map(|(a, b): (f64, f64)| [a.min(b), a.max(b)]);
+    (around(), around(), knee).prop_map(|(hip, thigh, knee)| [hip, thigh, knee])
+}
+
+fn every_number(leg: &Leg, ranges: [[f64; 2]; 3], target: [f64; 3]) -> Result<(), String> {
+    NumberSystem::ALL.into_iter().try_for_each(|number| {
+        let limited = core(number, leg, Some(ranges)).expect("a leg");
+        let free = core(number, leg, None).expect("a leg");
+        limits::check(&*limited, &*free, target)
+    })
+}
+
+proptest! {
+    #![proptest_config(cases(2_000))]
+
+    #[test]
+    fn ranges_hold_for_feet_in_reach((leg, target) in leg_and_target(), ranges in ranges()) {
+        prop_assert_eq!(every_number(&leg, ranges, target), Ok(()));
+    }
+
+    #[test]
+    fn ranges_hold_for_any_foot((leg, target) in leg_and_point(), ranges in ranges()) {
+        prop_assert_eq!(every_number(&leg, ranges, target), Ok(()));
+    }
+}
+
+/// Ranges that cannot be are refused, each joint by its own name.
+#[test]
+fn ranges_that_cannot_be_are_refused() {
+    let good = [-10.0, 10.0];
+    let bad = [
+        [10.0, -10.0],
+        [-181.0, 0.0],
+        [0.0, 180.1],
+        [f64::NAN, 0.0],
+        [0.0, f64::NAN],
+        [f64::NEG_INFINITY, 0.0],
+    ];
+    for bad in bad {
+        assert_eq!(Limits::<ik_core::Fixed32>::degrees(bad, good, [0.0, 90.0]), Err(LimitsError::Hip));
+        assert_eq!(Limits::<ik_core::Float32>::degrees(good, bad, [0.0, 90.0]), Err(LimitsError::Thigh));
+        assert_eq!(Limits::<ik_core::Coarse>::degrees(good, good, bad), Err(LimitsError::Knee));
+    }
+    // A knee does not bend backwards.
+    assert_eq!(Limits::<ik_core::Fixed32>::degrees(good, good, good), Err(LimitsError::Knee));
+    assert!(Limits::<ik_core::Fixed32>::degrees([-180.0, 180.0], [0.0, 0.0], [0.0, 180.0]).is_ok());
+}
