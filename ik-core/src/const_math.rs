@@ -39,6 +39,7 @@ pub(crate) const fn nearest_i32(v: f64) -> i32 {
 }
 
 /// 2^exponent.
+#[cfg(any(feature = "float32", feature = "coarse", feature = "fixed32"))]
 pub(crate) const fn power_of_two(exponent: i32) -> f64 {
     let mut value = 1.0;
     let mut left = exponent;

@@ -60,8 +60,14 @@
 //!
 //! # Features
 //!
-//! `float32`, `fixed32` (both on by default), `coarse`; `heapless` for [`Robot`](robot) and the foot queue;
-//! `defmt` for `defmt::Format` on everything that a firmware may want to log. All are additive.
+//! | feature | what it adds |
+//! | --- | --- |
+//! | `float32`, `fixed32` (on by default), `coarse` | a number system each |
+//! | `heapless` | `robot`: the legs of a robot without allocation |
+//! | `queue` | `queue`: foot targets from the main loop to the frame interrupt; needs atomic loads and stores (on RV32IMC switch on one of heapless's `portable-atomic` features) |
+//! | `defmt` | `defmt::Format` on everything that a firmware may want to log |
+//!
+//! All are additive, and each works alone.
 //!
 //! # Before a machine moves
 //!
@@ -71,6 +77,7 @@
 #![no_std]
 #![forbid(unsafe_code)]
 #![deny(missing_docs)]
+#![allow(clippy::neg_cmp_op_on_partial_ord, reason = "comparisons are written so that NaN fails them")]
 #![cfg_attr(docsrs, feature(doc_cfg))]
 
 #[cfg(test)]
@@ -86,7 +93,7 @@ pub mod limits;
 pub mod mounting;
 pub mod number;
 pub mod output;
-#[cfg(feature = "heapless")]
+#[cfg(feature = "queue")]
 pub mod queue;
 #[cfg(feature = "heapless")]
 pub mod robot;

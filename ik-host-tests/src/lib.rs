@@ -21,3 +21,8 @@ pub mod report;
 pub mod sheet;
 pub mod solve;
 pub mod survey;
+
+/// The firmware in the README compiles and does what it says.
+#[cfg(doctest)]
+#[doc = include_str!("../../README.md")]
+mod readme {}

@@ -5,7 +5,7 @@ mod common;
 
 use common::checks::limits;
 use common::effort::cases;
-use common::legs::{leg_and_point, leg_and_target};
+use common::legs::{ORCHARD, leg_and_point, leg_and_target};
 use common::solver::{NumberSystem, core};
 use ik_core::{Limits, LimitsError};
 use ik_host_tests::reference::Leg;
@@ -40,6 +40,25 @@ proptest! {
     #[test]
     fn ranges_hold_for_any_foot((leg, target) in leg_and_point(), ranges in ranges()) {
         prop_assert_eq!(every_number(&leg, ranges, target), Ok(()));
+    }
+}
+
+/// The whole turn and its ends included, the ranges that were asked for are the ones that hold.
+#[test]
+fn ranges_are_those_that_were_asked_for() {
+    for number in NumberSystem::ALL {
+        for [hip, thigh, knee] in [
+            [[-180.0, 180.0], [-180.0, 180.0], [0.0, 180.0]],
+            [[-180.0, -90.0], [90.0, 180.0], [180.0, 180.0]],
+            [[-45.0, 45.0], [-80.0, 80.0], [5.0, 150.0]],
+        ] {
+            let held = core(number, &ORCHARD, Some([hip, thigh, knee])).expect("a leg").ranges();
+            for (held, asked) in [(held.hip, hip), (held.thigh, thigh), (held.knee, knee)] {
+                let off =
+                    (held.min.to_degrees() - asked[0]).abs().max((held.max.to_degrees() - asked[1]).abs());
+                assert!(off < 1e-5, "{number:?}: {held:?} for {asked:?} degrees");
+            }
+        }
     }
 }
 

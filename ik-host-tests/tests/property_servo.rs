@@ -48,6 +48,7 @@ proptest! {
     #[test]
     fn pulses_are_right_and_within_their_range(spec in any_servo(), angle in -PI..PI) {
         prop_assert_eq!(every_number(spec, |servo| servo::check(servo, angle)), Ok(()));
+        prop_assert_eq!(every_number(spec, |servo| servo::check_back(servo, angle, 0.0)), Ok(()));
     }
 
     #[test]
@@ -71,6 +72,8 @@ proptest! {
         let spec = ServoSpec { us_per_degree: gain, turns, pulse_us: [0.0, 32_767.0], ..ServoSpec::COMMON };
         prop_assert_eq!(every_number(spec, |servo| servo::check(servo, angle)), Ok(()));
         prop_assert_eq!(every_number(spec, |servo| servo::check_monotone(servo, angle, other)), Ok(()));
+        // Over many turns' worth of pulse, the way back is worth less.
+        prop_assert_eq!(every_number(spec, |servo| servo::check_back(servo, angle, 0.01)), Ok(()));
     }
 
     /// The pulse of a pulse's angle, for any pulse there is, also outside the range: an angle, and then a pulse.
@@ -108,7 +111,10 @@ fn the_bounds_of_pulses_hold_over_a_dense_sweep_and_are_no_larger_than_they_need
         let worst = pulse_error.max(back);
         assert!(worst <= bound, "{number:?}: {worst:e} of {bound:e}");
         // `f64` has no error to find beside the step of the pulse.
-        assert!(worst > 0.5 * bound || bound < 1e-14, "{number:?}: {worst:e}: the bound {bound:e} is too wide");
+        assert!(
+            worst > 0.5 * bound || bound < 1e-14,
+            "{number:?}: {worst:e}: the bound {bound:e} is too wide"
+        );
     }
 }
 
@@ -131,7 +137,9 @@ fn a_common_servos_pulses_come_back_to_a_thousandth_of_a_microsecond() {
 #[test]
 fn angles_beyond_the_range_are_held_at_the_right_end() {
     for number in NumberSystem::ALL {
-        for (turns, high, low) in [(Turns::With, End::Most, End::Least), (Turns::Against, End::Least, End::Most)] {
+        for (turns, high, low) in
+            [(Turns::With, End::Most, End::Least), (Turns::Against, End::Least, End::Most)]
+        {
             let servo = core(number, ServoSpec { turns, ..ServoSpec::COMMON }).expect("a servo");
             assert_eq!(servo.command(1.0).1, Some(high), "{number:?} {turns:?}");
             assert_eq!(servo.command(-1.0).1, Some(low), "{number:?} {turns:?}");

@@ -105,7 +105,8 @@ impl<M: FloatMaths> Float<M> {
     }
 
     pub(crate) const fn angle_from_turns(turns: f64) -> f32 {
-        wrapped((turns * core::f64::consts::TAU) as f32)
+        // Not wrapped: −½ turn is an end of the free range.
+        (turns * core::f64::consts::TAU) as f32
     }
 
     pub(crate) const fn gain_from(us_per_turn: f64) -> f32 {
@@ -365,9 +366,15 @@ fn rounded(v: f32) -> i32 {
     (if v < 0.0 { v - 0.5 } else { v + 0.5 }) as i32
 }
 
-#[cfg(test)]
+#[cfg(all(test, feature = "float32"))]
 mod tests {
     use super::*;
+
+    #[test]
+    fn the_ends_of_the_free_range_are_apart() {
+        let ends = [-0.5, 0.5].map(Float::<libm_maths::Libm>::angle_from_turns);
+        assert_eq!(ends, [-PI, PI]);
+    }
 
     #[test]
     fn angles_wrap_into_one_turn() {

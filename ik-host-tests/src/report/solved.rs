@@ -21,10 +21,7 @@ pub fn solved_text(solved: &Solved, source: &str) -> String {
             let reach = if reference.reached {
                 "reached".to_owned()
             } else {
-                format!(
-                    "{} mm off, which no answer can better within reach and ranges as clamped",
-                    millimetres(reference.off_by_mm)
-                )
+                format!("{} mm off, with reach and joint ranges kept", millimetres(reference.off_by_mm))
             };
             let _ = writeln!(out, "reference: {joints} deg; {reach}");
         }

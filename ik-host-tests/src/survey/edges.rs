@@ -14,10 +14,12 @@ const STEPS: [f64; 9] = [0.0, 1e-9, -1e-9, 1e-7, -1e-7, 1e-5, -1e-5, 1e-3, -1e-3
 /// How often to try for a point of an edge that lies in the work volume.
 const TRIES_PER_POINT: usize = 40;
 
+/// Makes a point of an edge, wherever it lies.
+type Maker = fn(&Subject<'_>, &mut dyn Rng) -> [f64; 3];
+
 /// Up to `most` points on edges within the work volume of a kind of leg.
 pub(super) fn of(kind: &LegKind, most: usize, random: &mut impl Rng) -> Vec<[f64; 3]> {
-    let makers: [fn(&Subject<'_>, &mut dyn Rng) -> [f64; 3]; 5] =
-        [straight, folded, on_the_hip_axis, at_a_limit, at_two_limits];
+    let makers: [Maker; 5] = [straight, folded, on_the_hip_axis, at_a_limit, at_two_limits];
     let subject = Subject { kind, leg: judged_leg(kind), ranges: kind.range_deg };
     let each = most / makers.len();
     makers

@@ -42,15 +42,15 @@ impl NumberSystem {
                 folded_below: 0.25,
                 angle: 1.8e-6,
                 distance: 2.4e-7,
-                servo: 5e-7,
+                servo: 8e-7,
             },
             Self::Coarse => Bounds {
                 own_foot: 2.6e-2,
-                foot: 2.4e-2,
+                foot: 3.3e-2,
                 folded_below: 0.0,
                 angle: 2e-2,
                 distance: 4e-3,
-                servo: 5e-7,
+                servo: 8e-7,
             },
             Self::Fixed32 => Bounds {
                 own_foot: 1e-7,
@@ -58,7 +58,7 @@ impl NumberSystem {
                 folded_below: 0.03,
                 angle: 1.2e-7,
                 distance: 1e-7,
-                servo: 1e-8,
+                servo: 6e-8,
             },
             Self::Float64 => Bounds {
                 own_foot: 2e-15,

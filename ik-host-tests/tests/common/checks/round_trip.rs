@@ -34,13 +34,15 @@ pub fn found(solver: &dyn Solver, target: [f64; 3]) -> Result<Option<Found>, Str
         "{:?}: {leg}, {target:?} is within reach and free of ranges, yet {told:?}",
         solver.number()
     );
+    let Pose { hip, thigh, knee } = told.pose;
+    ensure!((hip + thigh + knee).is_finite(), "{:?}: {leg}, {target:?}: {told:?}", solver.number());
     let reach = reach(leg);
     let granted = reach * solver.number().bounds().growth(span(leg, target) / reach);
     let step = solver.number().step();
     let angle = away_from_singular(leg, target, &reference.pose)
         .then(|| told.pose.largest_difference(&reference.pose));
     Ok(Some(Found {
-        own_foot: (distance(solver.forward(&told.pose), target) - step).max(0.0) / granted,
+        own_foot: (distance(solver.forward(&told.pose), target) - step) / granted,
         foot: distance(transforms::foot(leg, &told.pose), target) / granted,
         angle,
     }))

@@ -34,7 +34,7 @@ fn us_per_radian(servo: &dyn ServoModel) -> f64 {
     servo.spec().us_per_degree.to_degrees()
 }
 
-/// Within the range and said to be held exactly if it was; where it should be; and exact on the way back.
+/// Within the range and said to be held exactly if it was; and where it should be.
 pub fn check(servo: &dyn ServoModel, radians: f64) -> Result<(), String> {
     let radians = servo.quantised(radians);
     let (pulse, held) = servo.command(radians);
@@ -59,9 +59,23 @@ pub fn check(servo: &dyn ServoModel, radians: f64) -> Result<(), String> {
     ensure!((held == Some(End::Most)) == (wanted > most) || (wanted - most).abs() <= slack, "{case}: held?");
     let off = (pulse.us() - wanted.clamp(least, most)).abs();
     ensure!(off <= slack, "{case}: {wanted} us wanted, {off:e} us off");
+    Ok(())
+}
+
+/// The pulse for an angle comes back through its angle within the number system's bound, or `slack_us` if that is
+/// more.
+pub fn check_back(servo: &dyn ServoModel, radians: f64, slack_us: f64) -> Result<(), String> {
+    let pulse = servo.command(servo.quantised(radians)).0;
+    let slack = servo.number().bounds().servo * us_per_radian(servo) + 2.0 / 65_536.0;
     if let Some(back) = there_and_back(servo, pulse) {
         let back = back * us_per_radian(servo);
-        ensure!(back <= slack, "{case}: {back} us off after pulse, angle, pulse");
+        ensure!(
+            back <= slack.max(slack_us),
+            "{:?}: {:?}: {} us come back {back} us off",
+            servo.number(),
+            servo.spec(),
+            pulse.us()
+        );
     }
     Ok(())
 }
