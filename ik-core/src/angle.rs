@@ -16,8 +16,7 @@ impl<N: Number> Angle<N> {
     ///
     /// A value outside (−½, ½] turn, or NaN, is refused.
     pub fn from_raw(raw: N::Angle) -> Option<Self> {
-        let turns = N::turns(raw);
-        ((-0.5..=0.5).contains(&turns)).then_some(Self(raw))
+        (N::LEAST_ANGLE..=N::MOST_ANGLE).contains(&raw).then_some(Self(raw))
     }
 
     /// The number system's own representation.

@@ -57,7 +57,12 @@ pub trait Number: Copy + Debug + PartialEq + 'static {
         + Add<Output = Self::Square>
         + Sub<Output = Self::Square>;
     /// A pure number in (−8, 8).
-    type Ratio: Copy + Debug + PartialEq + Sub<Output = Self::Ratio> + Neg<Output = Self::Ratio>;
+    type Ratio: Copy
+        + Debug
+        + PartialEq
+        + Add<Output = Self::Ratio>
+        + Sub<Output = Self::Ratio>
+        + Neg<Output = Self::Ratio>;
     /// A product of two coordinates, or of a coordinate and a ratio.
     type Product: Copy + Debug + PartialEq + Add<Output = Self::Product> + Sub<Output = Self::Product>;
     /// An angle in (−½, ½] turn, in the system's own unit.
@@ -193,12 +198,17 @@ pub enum Placed<N: Number> {
 }
 
 /// What the triangle of thigh and shank gives.
+///
+/// The smaller of n and m tells how far the leg is from its nearer end, straight or folded; what is worked out from
+/// that end loses no digits near it.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct Knee<N: Number> {
     /// Knee flexion, in [0, ½) turn; 0 is straight.
     pub angle: N::Angle,
     /// ½·sin of it, in [0, ½].
     pub half_sine: N::Ratio,
-    /// sin² of half of it, in [0, 1]: how far the leg is folded.
-    pub fold: N::Ratio,
+    /// Whether the leg is nearer to folded than to straight: m < n.
+    pub folded: bool,
+    /// How far it is from that end: the smaller of n and m over 4·L1·L2, in [0, ½].
+    pub from_end: N::Ratio,
 }

@@ -33,16 +33,23 @@ pub struct Constants<N: Number> {
     pub(crate) shank: N::Coord,
     /// 2·L1.
     pub(crate) twice_thigh: N::Coord,
-    /// P/(4·L1·L2) of a straight leg: (L1+L2)/(2·L2).
-    pub(crate) lean: N::Ratio,
-    /// The norm of the thigh's vector of a straight leg: (L1+L2)²/(2·L2).
-    pub(crate) norm: N::Product,
+    /// P/(4·L1·L2) and the norm of the thigh's vector of a straight leg: (L1+L2)/(2·L2), (L1+L2)²/(2·L2).
+    pub(crate) straight: ThighEnd<N>,
+    /// The same of a folded leg: (L1−L2)/(2·L2), (L1−L2)²/(2·L2).
+    pub(crate) folded: ThighEnd<N>,
     /// The reciprocal of 2·√(L1·L2).
     pub(crate) unit: N::Unit,
     pub(crate) bends_back: bool,
     /// Whether the knee's range ends before straight, and before folded: else it is the links that end the reach.
     pub(crate) knee_stops: [bool; 2],
     pub(crate) ranges: Ranges<N>,
+}
+
+/// What the thigh's angle is worked out from, at an end of the reach of free links.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct ThighEnd<N: Number> {
+    pub(crate) lean: N::Ratio,
+    pub(crate) norm: N::Product,
 }
 
 /// The constants of a leg as an expression, so that one text serves `const fn` with a number system's own
@@ -83,8 +90,17 @@ macro_rules! constants {
                     thigh: <$number>::coord_from_mm(thigh, scale),
                     shank: <$number>::coord_from_mm(shank, scale),
                     twice_thigh: <$number>::coord_from_mm(2.0 * thigh, scale),
-                    lean: <$number>::ratio_from(reach / (2.0 * shank)),
-                    norm: <$number>::product_from_mm(reach * reach / (2.0 * shank), scale),
+                    straight: $crate::leg::constants::ThighEnd {
+                        lean: <$number>::ratio_from(reach / (2.0 * shank)),
+                        norm: <$number>::product_from_mm(reach * reach / (2.0 * shank), scale),
+                    },
+                    folded: $crate::leg::constants::ThighEnd {
+                        lean: <$number>::ratio_from((thigh - shank) / (2.0 * shank)),
+                        norm: <$number>::product_from_mm(
+                            (thigh - shank) * (thigh - shank) / (2.0 * shank),
+                            scale,
+                        ),
+                    },
                     unit: <$number>::unit_from_mm(2.0 * root(product), scale),
                     bends_back: dimensions.bends_back(),
                     knee_stops: [knee[0] > 0.0, knee[1] < 180.0],

@@ -9,10 +9,14 @@ use crate::number::Number;
 #[inline(always)]
 pub(super) fn angles<N: Number>(leg: &Constants<N>, plane: &Plane<N>) -> (N::Angle, N::Angle) {
     let knee = N::knee(plane.n, leg.fold_square - plane.n, leg.unit, leg.scale);
-    // In the unit 4·L1·L2: P, q, and the norm 2·L1·G² of the thigh's vector.
-    let p = leg.lean - knee.fold;
+    // In the unit 4·L1·L2: P, q, and the norm 2·L1·G² of the thigh's vector, all from the nearer end of the reach.
+    let swing = N::stretch(leg.twice_thigh, knee.from_end);
+    let (p, norm) = if knee.folded {
+        (leg.folded.lean + knee.from_end, leg.folded.norm + swing)
+    } else {
+        (leg.straight.lean - knee.from_end, leg.straight.norm - swing)
+    };
     let q = if leg.bends_back { -knee.half_sine } else { knee.half_sine };
-    let norm = leg.norm - N::stretch(leg.twice_thigh, knee.fold);
     let thigh = N::angle(
         N::stretch(plane.across, p) + N::stretch(plane.along, q),
         N::stretch(plane.along, p) - N::stretch(plane.across, q),

@@ -266,11 +266,11 @@ impl Number for Fixed32 {
         // 2·arctan(s / (1 + c)) is half the knee; twice that, and from the other end when folded.
         let knee = 2 * arctangent::double_angle(sine, (1 << SINE_BITS) + cosine);
         let knee = if folded { HALF_TURN - knee } else { knee };
-        let fold = rounded_shift(square as i64, 2 * SINE_BITS - RATIO_BITS) as i32;
         Knee {
             angle: I0F32::from_bits(knee.min(HALF_TURN - 1) as i32),
             half_sine: rounded_shift((sine * cosine) as i64, 2 * SINE_BITS - RATIO_BITS) as i32,
-            fold: if folded { (1 << RATIO_BITS) - fold } else { fold },
+            folded,
+            from_end: rounded_shift(square as i64, 2 * SINE_BITS - RATIO_BITS) as i32,
         }
     }
 

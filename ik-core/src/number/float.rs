@@ -208,7 +208,8 @@ impl<M: FloatMaths> Number for Float<M> {
     }
 
     fn turns(angle: f32) -> f64 {
-        f64::from(angle) / core::f64::consts::TAU
+        // The f32 nearest to π lies above it.
+        (f64::from(angle) / core::f64::consts::TAU).clamp(-0.5, 0.5)
     }
 
     fn millidegrees(angle: f32) -> i32 {
@@ -285,7 +286,8 @@ impl<M: FloatMaths> Number for Float<M> {
         Knee {
             angle: if folded { PI - knee } else { knee },
             half_sine: sine * cosine,
-            fold: if folded { 1.0 - square } else { square },
+            folded,
+            from_end: square,
         }
     }
 

@@ -24,6 +24,7 @@ use crate::servo::Pulse;
 pub struct Timer {
     clock: Clock,
     frame_ticks: u32,
+    most_ticks: u32,
 }
 
 impl Timer {
@@ -49,7 +50,11 @@ impl Timer {
         if ticks < 256 || ticks > (1 << counter_bits) || ticks > u32::MAX as i64 {
             return Err(OutputError::Frame);
         }
-        Ok(Self { clock, frame_ticks: ticks as u32 })
+        // A frame of all of the counter's ticks is one more than a compare register holds.
+        let top = ((1u64 << counter_bits) - 1) as u32;
+        let frame_ticks = ticks as u32;
+        let most_ticks = if frame_ticks < top { frame_ticks } else { top };
+        Ok(Self { clock, frame_ticks, most_ticks })
     }
 
     /// The timer with the least divider, and so the finest tick, whose counter holds a frame.
@@ -80,7 +85,7 @@ impl Timer {
 impl Output for Timer {
     #[inline]
     fn counts(&self, pulse: Pulse) -> u32 {
-        self.clock.counts(pulse).min(u64::from(self.frame_ticks)) as u32
+        self.clock.counts(pulse).min(u64::from(self.most_ticks)) as u32
     }
 
     fn pulse(&self, counts: u32) -> Pulse {
@@ -88,7 +93,7 @@ impl Output for Timer {
     }
 
     fn most_counts(&self) -> u32 {
-        self.frame_ticks
+        self.most_ticks
     }
 
     fn count_us(&self) -> f64 {

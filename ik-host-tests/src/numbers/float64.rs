@@ -143,7 +143,8 @@ impl Number for Float64 {
         Knee {
             angle: if folded { PI - knee } else { knee },
             half_sine: sine * (1.0 - square).sqrt(),
-            fold: if folded { 1.0 - square } else { square },
+            folded,
+            from_end: square,
         }
     }
 
