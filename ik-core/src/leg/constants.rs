@@ -47,7 +47,7 @@ pub struct Constants<N: Number> {
 
 /// What the thigh's angle is worked out from, at an end of the reach of free links.
 #[derive(Debug, Clone, Copy, PartialEq)]
-pub struct ThighEnd<N: Number> {
+pub(crate) struct ThighEnd<N: Number> {
     pub(crate) lean: N::Ratio,
     pub(crate) norm: N::Product,
 }

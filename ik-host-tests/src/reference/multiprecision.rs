@@ -12,7 +12,9 @@
 use dashu_float::FBig;
 use dashu_float::round::mode::HalfEven;
 
-use super::leg::{Leg, Pose, Shape, Verdict};
+use super::closed_form::FREE_KNEE;
+use super::leg::{Leg, Pose, Range, Shape, Verdict};
+use std::f64::consts::PI;
 
 /// Bits of every number here.
 pub const BITS: usize = 256;
@@ -123,12 +125,17 @@ struct Lengths {
 }
 
 impl Lengths {
-    fn of(leg: &Leg) -> Option<Self> {
+    fn of(leg: &Leg, knee: Range) -> Option<Self> {
         let (offset, thigh, shank) = (real(leg.offset)?, real(leg.thigh)?, real(leg.shank)?);
         let hair = real(leg.size() * 2f64.powi(-180))?;
+        // Law of cosines: the corner between the links is π less the knee.
+        let bent = |knee: f64| {
+            let twice = Real::from(2u8).with_precision(BITS).value() * &thigh * &shank;
+            Some(root(&(square(&thigh) + square(&shank) + twice * real(knee)?.cos())))
+        };
         Some(Self {
-            longest: &thigh + &shank,
-            shortest: absolute(&(&thigh - &shank)),
+            longest: if knee.min > 0.0 { bent(knee.min)? } else { &thigh + &shank },
+            shortest: if knee.max < PI { bent(knee.max)? } else { absolute(&(&thigh - &shank)) },
             offset,
             thigh,
             shank,
@@ -150,10 +157,16 @@ type HalfPlane = (Real, Real);
 /// not finite or beyond [`FARTHEST`].
 #[must_use]
 pub fn solve(leg: &Leg, target: [f64; 3]) -> Option<RealSolution> {
+    solve_within(leg, FREE_KNEE, target)
+}
+
+/// As [`solve`], for a knee of the given range, which ends the reach where it is narrower than the links do.
+#[must_use]
+pub fn solve_within(leg: &Leg, knee: Range, target: [f64; 3]) -> Option<RealSolution> {
     if target.iter().any(|c| !c.is_finite() || c.abs() > FARTHEST * leg.size()) {
         return None;
     }
-    let lengths = Lengths::of(leg)?;
+    let lengths = Lengths::of(leg, knee)?;
     let [x, y, z] = [real(target[0])?, real(target[1])?, real(target[2])?];
     let asked: HalfPlane = match leg.shape {
         Shape::Roll => (x.clone(), root(&(square(&y) + square(&z)))),
@@ -232,7 +245,7 @@ pub fn solve(leg: &Leg, target: [f64; 3]) -> Option<RealSolution> {
 /// Where the foot is, by the sums of sines and cosines of the leg's drawing.
 #[must_use]
 pub fn foot(leg: &Leg, pose: &RealPose) -> Option<[Real; 3]> {
-    let lengths = Lengths::of(leg)?;
+    let lengths = Lengths::of(leg, FREE_KNEE)?;
     let second = if leg.bend.sign() > 0.0 { &pose.thigh - &pose.knee } else { &pose.thigh + &pose.knee };
     let (sin_hip, cos_hip) = pose.hip.sin_cos();
     let (sin_first, cos_first) = pose.thigh.sin_cos();
