@@ -160,6 +160,26 @@ impl<H: Hip, N: Number> Leg<H, N> {
     /// moved outward.
     #[inline]
     pub fn solve(&self, foot: Foot<N>, hold: Joints<N>) -> Answer<N> {
+        // The way of nearly every foot; whatever is unusual about one sends it another way, which decides anew.
+        let leg = &self.constants;
+        if let Some(point) = N::near(foot.lengths(), leg.scale)
+            && let Ok(plane) = H::plane(leg, point)
+        {
+            let (thigh, knee) = triangle::angles(leg, &plane);
+            let ranges = &leg.ranges;
+            if ranges.hip.contains(plane.hip.0) && ranges.thigh.contains(thigh) && ranges.knee.contains(knee)
+            {
+                let joints = Joints { hip: plane.hip, thigh: Angle(thigh), knee: Angle(knee) };
+                return Answer { joints, outcome: Outcome::Reached, off_by: N::NO_LENGTH };
+            }
+        }
+        self.unusual(foot, hold)
+    }
+
+    /// The answer for a foot that is out of reach, held by a joint range, or nowhere.
+    #[cold]
+    #[inline(never)]
+    fn unusual(&self, foot: Foot<N>, hold: Joints<N>) -> Answer<N> {
         let leg = &self.constants;
         let plane = match N::place(foot.lengths(), leg.scale) {
             Placed::Near(point) => match H::plane(leg, point) {
@@ -187,14 +207,12 @@ impl<H: Hip, N: Number> Leg<H, N> {
     }
 
     /// The joint angles for a foot in the plane, within their ranges.
-    #[inline(always)]
     fn held(&self, plane: &Plane<N>) -> (Joints<N>, Held) {
         let (thigh, knee) = triangle::angles(&self.constants, plane);
         self.constants.ranges.hold(Joints { hip: plane.hip, thigh: Angle(thigh), knee: Angle(knee) })
     }
 
     /// The answer for a foot that was moved into reach, perhaps to an end of the knee's range.
-    #[cold]
     fn moved(&self, foot: Foot<N>, (plane, end): (Plane<N>, Option<End>)) -> Answer<N> {
         let (mut joints, mut held) = self.held(&plane);
         let ([least_stops, most_stops], knee) = (self.constants.knee_stops, self.constants.ranges.knee);
@@ -208,7 +226,6 @@ impl<H: Hip, N: Number> Leg<H, N> {
     }
 
     /// The answer for a foot that is not where it was asked to be.
-    #[cold]
     fn explained(&self, foot: Foot<N>, joints: Joints<N>, held: Held) -> Answer<N> {
         let off_by = N::distance(foot.lengths(), self.forward(&joints).lengths());
         let outcome = if held.any() { Outcome::Held(held) } else { Outcome::Moved };
@@ -216,7 +233,6 @@ impl<H: Hip, N: Number> Leg<H, N> {
     }
 
     /// The answer for a foot that is nowhere.
-    #[cold]
     fn kept(&self, pose: Joints<N>) -> Answer<N> {
         let (joints, _) = self.constants.ranges.hold(pose);
         Answer { joints, outcome: Outcome::NotFinite, off_by: N::FARTHEST }

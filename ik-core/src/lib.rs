@@ -52,7 +52,7 @@
 //!
 //! | type | feature | stored as | meant for |
 //! | --- | --- | --- | --- |
-//! | `Float32` | `float32` | `f32`, libm's functions | chips with an FPU |
+//! | `Float32` | `float32` | `f32`, polynomials made for legs | chips with an FPU |
 //! | `Coarse` | `coarse` | `f32`, micromath's functions | a yardstick; where millimetres do not matter |
 //! | `Fixed32` | `fixed32` | `fixed`'s `I16F16` mm and `I0F32` turns | chips without an FPU |
 //!
@@ -75,7 +75,8 @@
 //! current-limited supply, and keep a way to cut power within reach. Local rules and the judgement of
 //! qualified people come before anything written here.
 #![no_std]
-#![forbid(unsafe_code)]
+// One file is excepted, for the square root instruction of chips with an FPU: number/float/hardware_root.rs.
+#![deny(unsafe_code)]
 #![deny(missing_docs)]
 #![allow(clippy::neg_cmp_op_on_partial_ord, reason = "comparisons are written so that NaN fails them")]
 #![cfg_attr(docsrs, feature(doc_cfg))]

@@ -114,6 +114,12 @@ impl<N: Number> Range<N> {
         self.most
     }
 
+    /// Whether an angle lies within; NaN does not.
+    #[inline(always)]
+    pub(crate) fn contains(&self, angle: N::Angle) -> bool {
+        self.least.0 <= angle && angle <= self.most.0
+    }
+
     /// The angle of the range that is nearest in number, and the end at which it was held.
     ///
     /// Nearest in number, not around the circle: a joint does not turn through its stop.

@@ -118,7 +118,16 @@ pub trait Number: Copy + Debug + PartialEq + 'static {
 
     // --- the way in and out ----------------------------------------------------------------------------
 
-    /// Brings a foot into the leg's working range.
+    /// A foot as coordinates, if it may be within reach: a quick look, which may let a foot pass that is far beyond
+    /// reach or not finite only if [`Number::square`] of it is sure to end outside the reach, or an angle of it in NaN.
+    #[inline(always)]
+    fn near(foot: [Self::Length; 3], scale: Self::Scale) -> Option<[Self::Coord; 3]> {
+        match Self::place(foot, scale) {
+            Placed::Near(point) => Some(point),
+            Placed::Far(..) | Placed::NotFinite => None,
+        }
+    }
+    /// Brings a foot into the leg's working range, whatever it is.
     fn place(foot: [Self::Length; 3], scale: Self::Scale) -> Placed<Self>;
     /// A coordinate as a length, rounded; saturates.
     fn length(coord: Self::Coord, scale: Self::Scale) -> Self::Length;
@@ -137,7 +146,7 @@ pub trait Number: Copy + Debug + PartialEq + 'static {
 
     /// The square of a coordinate.
     fn square(coord: Self::Coord, scale: Self::Scale) -> Self::Square;
-    /// The root of a square; of a negative one, 0.
+    /// The root of a square ≥ 0.
     fn root(square: Self::Square, scale: Self::Scale) -> Self::Coord;
     /// With R = √`radial_square`: (R − offset, (R − offset)²), the square kept as exact as squares are, or
     /// the knee of a leg near straight would be limited to the root of the rounding error.

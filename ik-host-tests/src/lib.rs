@@ -5,6 +5,7 @@
 //! | [`sheet`] | the robot sheet: read, checked, every complaint at once |
 //! | [`numbers`] | number systems of the PC's own: the same solver in `f64` |
 //! | [`machine`] | a robot of a sheet, in a number system: the very code that will be flashed |
+//! | [`minimax`] | the coefficients of ik-core's polynomials, made and compared |
 //! | [`reference`](mod@reference) | legs by other methods, sharing no code with ik-core: what judges |
 //! | [`survey`] | the main job: error bounds over the work volume |
 //! | [`solve`] | one target in every number system |
@@ -15,6 +16,7 @@
 
 pub mod command;
 pub mod machine;
+pub mod minimax;
 pub mod numbers;
 pub mod reference;
 pub mod report;

@@ -71,6 +71,8 @@ macro_rules! constants {
                 let knee = limits.knee_deg();
                 let straightest = 4.0 * product * $crate::const_math::half_sine_square(knee[0]);
                 let most_folded = 4.0 * product * $crate::const_math::half_sine_square(knee[1]);
+                // Not a hair above the fold, where m would be negative.
+                let most_folded = if most_folded < 4.0 * product { most_folded } else { 4.0 * product };
                 let (outer_square, inner_square) = (reach * reach - straightest, reach * reach - most_folded);
                 let corner = inner_square - offset * offset;
                 let root = $crate::const_math::square_root;

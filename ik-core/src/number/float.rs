@@ -5,16 +5,21 @@
 //! nearly straight knee would be lost in an `f32` difference of squares.
 
 #[cfg(feature = "float32")]
-mod libm_maths;
+mod coefficients;
+#[cfg(feature = "float32")]
+mod hardware_root;
 #[cfg(feature = "coarse")]
 mod micromath_maths;
+#[cfg(feature = "float32")]
+mod polynomial_maths;
 
 use super::{Knee, Number, Placed};
 use crate::const_math::{nearest, power_of_two};
 use core::f32::consts::{PI, TAU};
 use core::marker::PhantomData;
+use core::ops::{Add, Sub};
 
-/// Single precision with libm's functions: for chips with an FPU.
+/// Single precision with functions of our own, made for legs: for chips with an FPU.
 ///
 /// | | |
 /// | --- | --- |
@@ -23,7 +28,7 @@ use core::marker::PhantomData;
 /// | largest joint error | see the survey of your own leg; below 1e-6 rad away from the hip axis |
 /// | legs | reach from 1 mm to 16 383 mm |
 #[cfg(feature = "float32")]
-pub type Float32 = Float<libm_maths::Libm>;
+pub type Float32 = Float<polynomial_maths::Polynomials>;
 
 /// Single precision with micromath's functions: a yardstick, and for machines whose millimetres do not matter.
 ///
@@ -37,8 +42,10 @@ pub trait FloatMaths: Copy + core::fmt::Debug + PartialEq + 'static {
     const NAME: &'static str;
     /// √v for v ≥ 0.
     fn root(v: f32) -> f32;
-    /// arctan t for 0 ≤ t ≤ 1.
-    fn arc_tangent(t: f32) -> f32;
+    /// 2·arctan t for |t| ≤ 1.
+    fn double_arc_tangent(t: f32) -> f32;
+    /// 4·arctan t for 0 ≤ t ≤ tan 22.5°.
+    fn quadruple_arc_tangent(t: f32) -> f32;
     /// (sin, cos) for |angle| ≤ 2π.
     fn sin_cos(angle: f32) -> (f32, f32);
 }
@@ -56,8 +63,28 @@ pub struct FloatScale {
     steps_per_mm: f32,
     /// Its reciprocal.
     mm_per_step: f32,
-    /// Coordinates of the working range lie below this, in mm.
-    limit_mm: f32,
+    /// Feet of the working range are nearer than the root of this, mm².
+    limit_square: f32,
+}
+
+/// A sum or difference of squares of steps: exact within the working range, and wrapping far beyond it.
+#[derive(Debug, Clone, Copy, PartialEq, PartialOrd)]
+pub struct Steps2(i64);
+
+impl Add for Steps2 {
+    type Output = Self;
+    #[inline(always)]
+    fn add(self, other: Self) -> Self {
+        Self(self.0.wrapping_add(other.0))
+    }
+}
+
+impl Sub for Steps2 {
+    type Output = Self;
+    #[inline(always)]
+    fn sub(self, other: Self) -> Self {
+        Self(self.0.wrapping_sub(other.0))
+    }
 }
 
 /// Bits of the integers whose squares are exact.
@@ -76,7 +103,7 @@ impl<M: FloatMaths> Float<M> {
         Some(FloatScale {
             steps_per_mm: power_of_two(STEP_BITS - exponent) as f32,
             mm_per_step: power_of_two(exponent - STEP_BITS) as f32,
-            limit_mm: power_of_two(exponent) as f32,
+            limit_square: power_of_two(2 * exponent) as f32,
         })
     }
 
@@ -84,8 +111,8 @@ impl<M: FloatMaths> Float<M> {
         mm as f32
     }
 
-    pub(crate) const fn square_from_mm2(mm2: f64, scale: FloatScale) -> i64 {
-        nearest(mm2 * scale.steps_per_mm as f64 * scale.steps_per_mm as f64)
+    pub(crate) const fn square_from_mm2(mm2: f64, scale: FloatScale) -> Steps2 {
+        Steps2(nearest(mm2 * scale.steps_per_mm as f64 * scale.steps_per_mm as f64))
     }
 
     pub(crate) const fn ratio_from(value: f64) -> f32 {
@@ -131,6 +158,18 @@ const fn wrapped(angle: f32) -> f32 {
     }
 }
 
+/// The angle whose cosine is the negative of another's, on the same side: ±π − angle.
+#[inline(always)]
+fn obtuse(acute: f32) -> f32 {
+    PI.copysign(acute) - acute
+}
+
+/// An integer as a float, within one unit in the last place; without the library call that exact rounding would take.
+#[inline(always)]
+fn nearly(square: Steps2) -> f32 {
+    ((square.0 >> 32) as i32) as f32 * 4_294_967_296.0 + (square.0 as u32) as f32
+}
+
 /// A coordinate as an integer of the exact squares.
 #[inline(always)]
 fn steps(coord: f32, scale: FloatScale) -> i64 {
@@ -140,7 +179,7 @@ fn steps(coord: f32, scale: FloatScale) -> i64 {
 impl<M: FloatMaths> Number for Float<M> {
     type Length = f32;
     type Coord = f32;
-    type Square = i64;
+    type Square = Steps2;
     type Ratio = f32;
     type Product = f32;
     type Angle = f32;
@@ -153,7 +192,7 @@ impl<M: FloatMaths> Number for Float<M> {
     const NO_LENGTH: f32 = 0.0;
     const FARTHEST: f32 = f32::MAX;
     const NO_COORD: f32 = 0.0;
-    const NO_SQUARE: i64 = 0;
+    const NO_SQUARE: Steps2 = Steps2(0);
     const NO_ANGLE: f32 = 0.0;
     const LEAST_ANGLE: f32 = -PI;
     const MOST_ANGLE: f32 = PI;
@@ -167,7 +206,7 @@ impl<M: FloatMaths> Number for Float<M> {
     fn coord_from_mm(mm: f64, scale: FloatScale) -> f32 {
         Self::coord_from_mm(mm, scale)
     }
-    fn square_from_mm2(mm2: f64, scale: FloatScale) -> i64 {
+    fn square_from_mm2(mm2: f64, scale: FloatScale) -> Steps2 {
         Self::square_from_mm2(mm2, scale)
     }
     fn ratio_from(value: f64) -> f32 {
@@ -189,13 +228,17 @@ impl<M: FloatMaths> Number for Float<M> {
         Self::swing_from(turns_per_us)
     }
 
+    /// Every foot passes: steps saturate and NaN gives none, sums of squares wrap, and no sum of three squares below
+    /// 2^62 each that is not a square of the reach looks like one; NaN comes out as an angle.
     #[inline(always)]
+    fn near(foot: [f32; 3], _: FloatScale) -> Option<[f32; 3]> {
+        Some(foot)
+    }
+
     fn place(foot: [f32; 3], scale: FloatScale) -> Placed<Self> {
-        let near = |v: f32| -scale.limit_mm < v && v < scale.limit_mm;
-        if near(foot[0]) && near(foot[1]) && near(foot[2]) {
-            return Placed::Near(foot);
-        }
-        far(foot, scale)
+        // A sphere about the reach: one comparison, which NaN and infinities fail.
+        let [x, y, z] = foot;
+        if x * x + (y * y + z * z) < scale.limit_square { Placed::Near(foot) } else { far(foot, scale) }
     }
 
     #[inline(always)]
@@ -225,25 +268,26 @@ impl<M: FloatMaths> Number for Float<M> {
     }
 
     #[inline(always)]
-    fn square(coord: f32, scale: FloatScale) -> i64 {
+    fn square(coord: f32, scale: FloatScale) -> Steps2 {
         let steps = steps(coord, scale);
-        steps * steps
+        Steps2(steps * steps)
     }
 
     #[inline(always)]
-    fn root(square: i64, scale: FloatScale) -> f32 {
-        M::root(square.max(0) as f32) * scale.mm_per_step
+    fn root(square: Steps2, scale: FloatScale) -> f32 {
+        M::root(nearly(square)) * scale.mm_per_step
     }
 
     #[inline(always)]
-    fn beyond(radial_square: i64, offset: f32, scale: FloatScale) -> (f32, i64) {
-        let radial = M::root(radial_square.max(0) as f32);
+    fn beyond(radial_square: Steps2, offset: f32, scale: FloatScale) -> (f32, Steps2) {
+        let radial = M::root(nearly(radial_square));
         let (whole, inner) = (radial as i64, (offset * scale.steps_per_mm) as i64);
-        let rest = radial_square - whole * whole;
+        let rest = radial_square.0.wrapping_sub(whole.wrapping_mul(whole));
         // R = whole + rest / (2·whole) to second order, so (R − c)² = (whole − c)² + rest − c·rest / whole.
         let correction = if whole > 0 { inner as f32 * rest as f32 / radial } else { 0.0 };
         let along = whole - inner;
-        (radial * scale.mm_per_step - offset, along * along + rest - correction as i64)
+        let square = along.wrapping_mul(along).wrapping_add(rest).wrapping_sub(correction as i64);
+        (radial * scale.mm_per_step - offset, Steps2(square))
     }
 
     #[inline(always)]
@@ -263,26 +307,21 @@ impl<M: FloatMaths> Number for Float<M> {
 
     #[inline(always)]
     fn angle(y: f32, x: f32, norm: f32) -> f32 {
-        let run = norm + x.abs();
-        if run > 0.0 {
-            // Rounding may leave |y| a last bit above the norm.
-            let size = 2.0 * M::arc_tangent((y.abs() / run).min(1.0));
-            let size = if x < 0.0 { PI - size } else { size };
-            if y < 0.0 { -size } else { size }
-        } else {
-            0.0
-        }
+        // A hair, so that the zero vector has an angle: 0. Rounding may leave |y| a last bit above the norm, which costs
+        // no more than that bit.
+        let acute = M::double_arc_tangent(y / (norm + x.abs() + f32::MIN_POSITIVE));
+        if x < 0.0 { obtuse(acute) } else { acute }
     }
 
     #[inline(always)]
-    fn knee(n: i64, m: i64, unit: f32, scale: FloatScale) -> Knee<Self> {
+    fn knee(n: Steps2, m: Steps2, unit: f32, scale: FloatScale) -> Knee<Self> {
         // The smaller of n and m gives a half-angle of 45° at the most, whose sine is well known.
         let folded = m < n;
-        let sine = (Self::root(if folded { m } else { n }, scale) * unit).min(1.0);
+        let sine = Self::root(if folded { m } else { n }, scale) * unit;
         let square = sine * sine;
         let cosine = M::root(1.0 - square);
         // 2·arctan(s / (1 + c)) is half the knee.
-        let knee = 4.0 * M::arc_tangent(sine / (1.0 + cosine));
+        let knee = M::quadruple_arc_tangent(sine / (1.0 + cosine));
         Knee {
             angle: if folded { PI - knee } else { knee },
             half_sine: sine * cosine,
@@ -356,7 +395,8 @@ fn far<M: FloatMaths>(foot: [f32; 3], scale: FloatScale) -> Placed<Float<M>> {
     }
     let mut point = foot;
     let mut times = 0;
-    while point.iter().any(|v| v.abs() >= scale.limit_mm) {
+    // By the longest coordinate: its square might overflow.
+    while point.iter().any(|v| v.abs() * scale.steps_per_mm >= (1 << STEP_BITS) as f32) {
         point = point.map(|v| v * 0.5);
         times += 1;
     }
@@ -374,7 +414,7 @@ mod tests {
 
     #[test]
     fn the_ends_of_the_free_range_are_apart() {
-        let ends = [-0.5, 0.5].map(Float::<libm_maths::Libm>::angle_from_turns);
+        let ends = [-0.5, 0.5].map(Float::<polynomial_maths::Polynomials>::angle_from_turns);
         assert_eq!(ends, [-PI, PI]);
     }
 

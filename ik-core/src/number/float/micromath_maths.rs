@@ -20,8 +20,13 @@ impl FloatMaths for Micromath {
     }
 
     #[inline(always)]
-    fn arc_tangent(t: f32) -> f32 {
-        F32Ext::atan(t)
+    fn double_arc_tangent(t: f32) -> f32 {
+        2.0 * F32Ext::atan(t)
+    }
+
+    #[inline(always)]
+    fn quadruple_arc_tangent(t: f32) -> f32 {
+        4.0 * F32Ext::atan(t)
     }
 
     fn sin_cos(angle: f32) -> (f32, f32) {

@@ -1,0 +1,97 @@
+//! Minimax polynomials, as short as single precision is worth.
+
+use super::FloatMaths;
+use super::coefficients::{ARC_TANGENT, COSINE, KNEE_ARC_TANGENT, SINE};
+use super::hardware_root;
+use core::f32::consts::{FRAC_2_PI, FRAC_PI_2};
+
+/// Functions of our own over minimax polynomials: the same bits on every machine.
+#[derive(Debug, Clone, Copy, PartialEq)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
+pub struct Polynomials;
+
+/// What the `f32` nearest to π/2 leaves of it.
+const FRAC_PI_2_REST: f32 = -4.371_139e-8;
+
+/// Σ c·u^k by Horner's rule.
+#[inline(always)]
+fn polynomial<const N: usize>(coefficients: &[f32; N], u: f32) -> f32 {
+    coefficients.iter().rev().fold(0.0, |sum, c| sum * u + c)
+}
+
+impl FloatMaths for Polynomials {
+    const NAME: &'static str = "float32";
+
+    #[inline(always)]
+    fn root(v: f32) -> f32 {
+        hardware_root::root(v)
+    }
+
+    /// Within 3e-7.
+    #[inline(always)]
+    fn double_arc_tangent(t: f32) -> f32 {
+        t * polynomial(&ARC_TANGENT, t * t)
+    }
+
+    /// Within 2.5e-7.
+    #[inline(always)]
+    fn quadruple_arc_tangent(t: f32) -> f32 {
+        t * polynomial(&KNEE_ARC_TANGENT, t * t)
+    }
+
+    /// Within 1e-7.
+    fn sin_cos(angle: f32) -> (f32, f32) {
+        // The nearest quarter turn, and the rest within ±π/4.
+        let turned = angle * FRAC_2_PI;
+        let quarter = (if turned < 0.0 { turned - 0.5 } else { turned + 0.5 }) as i32;
+        let rest = (angle - quarter as f32 * FRAC_PI_2) - quarter as f32 * FRAC_PI_2_REST;
+        let square = rest * rest;
+        let (sine, cosine) = (rest * polynomial(&SINE, square), polynomial(&COSINE, square));
+        match quarter & 3 {
+            0 => (sine, cosine),
+            1 => (cosine, -sine),
+            2 => (-sine, -cosine),
+            _ => (-cosine, sine),
+        }
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use core::f32::consts::{FRAC_PI_8, PI};
+
+    /// The largest error over every `step`th float of [0, end] and its negative; and that it is no less than half of
+    /// the bound, which would be a bound with too much slack.
+    fn worst(end: f32, step: usize, error: impl Fn(f32) -> f64, bound: f64) {
+        let mut worst = 0.0f64;
+        for bits in (0..=end.to_bits()).step_by(step) {
+            let t = f32::from_bits(bits);
+            worst = worst.max(error(t)).max(error(-t));
+        }
+        assert!(worst <= bound && worst > bound / 2.0, "{worst:e} for {bound:e}");
+    }
+
+    #[test]
+    fn double_arc_tangent_keeps_its_bound() {
+        let error = |t| f64::from(Polynomials::double_arc_tangent(t)) - 2.0 * f64::from(t).atan();
+        worst(1.0, 97, |t| error(t).abs(), 3e-7);
+    }
+
+    #[test]
+    fn quadruple_arc_tangent_keeps_its_bound() {
+        let error =
+            |t: f32| f64::from(Polynomials::quadruple_arc_tangent(t.abs())) - 4.0 * f64::from(t.abs()).atan();
+        worst(FRAC_PI_8.tan(), 97, |t| error(t).abs(), 3e-7);
+    }
+
+    #[test]
+    fn sine_and_cosine_keep_their_bound() {
+        let error = |angle: f32| {
+            let (sine, cosine) = Polynomials::sin_cos(angle);
+            let (want_sine, want_cosine) = f64::from(angle).sin_cos();
+            (f64::from(sine) - want_sine).abs().max((f64::from(cosine) - want_cosine).abs())
+        };
+        worst(PI, 97, error, 1e-7);
+    }
+}
