@@ -166,9 +166,7 @@ impl<H: Hip, N: Number> Leg<H, N> {
             && let Ok(plane) = H::plane(leg, point)
         {
             let (thigh, knee) = triangle::angles(leg, &plane);
-            let ranges = &leg.ranges;
-            if ranges.hip.contains(plane.hip.0) && ranges.thigh.contains(thigh) && ranges.knee.contains(knee)
-            {
+            if leg.ranges.contain(plane.hip.0, thigh, knee) {
                 let joints = Joints { hip: plane.hip, thigh: Angle(thigh), knee: Angle(knee) };
                 return Answer { joints, outcome: Outcome::Reached, off_by: N::NO_LENGTH };
             }

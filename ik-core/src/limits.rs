@@ -80,6 +80,12 @@ impl Limits {
         }
     }
 
+    /// Whether every angle is within.
+    pub(crate) const fn are_free(&self) -> bool {
+        let [[a, b], [c, d], [e, f]] = [self.hip_deg, self.thigh_deg, self.knee_deg];
+        a <= -180.0 && b >= 180.0 && c <= -180.0 && d >= 180.0 && e <= 0.0 && f >= 180.0
+    }
+
     /// The hip's range [least, most], degrees.
     pub const fn hip_deg(&self) -> [f64; 2] {
         self.hip_deg
@@ -138,6 +144,8 @@ impl<N: Number> Range<N> {
 /// The ranges of a leg's three joints in a number system.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct Ranges<N: Number> {
+    /// Whether they are those of [`Limits::FREE`].
+    pub(crate) free: bool,
     pub(crate) hip: Range<N>,
     pub(crate) thigh: Range<N>,
     pub(crate) knee: Range<N>,
@@ -157,6 +165,16 @@ impl<N: Number> Ranges<N> {
     /// The knee's.
     pub const fn knee(&self) -> Range<N> {
         self.knee
+    }
+
+    /// Whether each joint lies within its range; NaN does not.
+    #[inline(always)]
+    pub(crate) fn contain(&self, hip: N::Angle, thigh: N::Angle, knee: N::Angle) -> bool {
+        if self.free {
+            N::are_sound(hip, thigh)
+        } else {
+            self.hip.contains(hip) && self.thigh.contains(thigh) && self.knee.contains(knee)
+        }
     }
 
     /// Each joint at the angle of its range that is nearest in number, and which ones were held where.

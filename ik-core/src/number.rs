@@ -164,8 +164,37 @@ pub trait Number: Copy + Debug + PartialEq + 'static {
     /// The angle of the vector (x, y) whose norm is known, as 2·arctan(y / (norm + |x|)), in (−½, ½] turn;
     /// 0 for the zero vector.
     fn angle(y: Self::Product, x: Self::Product, norm: Self::Product) -> Self::Angle;
+    /// The hip of a roll-hip leg: the angle of (y·offset − z·depth, z·offset + y·depth), whose norm is y² + z².
+    #[inline(always)]
+    fn hip_angle([y, z]: [Self::Coord; 2], offset: Self::Coord, depth: Self::Coord) -> Self::Angle {
+        Self::angle(
+            Self::area(z, offset) + Self::area(y, depth),
+            Self::area(y, offset) - Self::area(z, depth),
+            Self::area(y, y) + Self::area(z, z),
+        )
+    }
+    /// The thigh: the angle of (along·p − across·q, across·p + along·q), whose norm is known.
+    #[inline(always)]
+    fn thigh_angle(
+        along: Self::Coord,
+        across: Self::Coord,
+        [p, q]: [Self::Ratio; 2],
+        norm: Self::Product,
+    ) -> Self::Angle {
+        Self::angle(
+            Self::stretch(across, p) + Self::stretch(along, q),
+            Self::stretch(along, p) - Self::stretch(across, q),
+            norm,
+        )
+    }
     /// Knee flexion of the triangle with n = (L1+L2)² − G² ≥ 0 and m = 4·L1·L2 − n ≥ 0, both of them exact.
     fn knee(n: Self::Square, m: Self::Square, unit: Self::Unit, scale: Self::Scale) -> Knee<Self>;
+
+    /// Whether two angles are none of NaN: what a foot that [`near`](Number::near) let pass would come to.
+    #[inline(always)]
+    fn are_sound(_: Self::Angle, _: Self::Angle) -> bool {
+        true
+    }
 
     // --- forward ---------------------------------------------------------------------------------------
 

@@ -55,8 +55,7 @@ pub fn minimax(function: impl Fn(f64) -> f64, first: i32, count: usize, end: f64
         }
         nodes = next;
     }
-    let error =
-        grid.iter().map(|t| (value(&coefficients, *t) - function(*t)).abs()).fold(0.0, f64::max);
+    let error = grid.iter().map(|t| (value(&coefficients, *t) - function(*t)).abs()).fold(0.0, f64::max);
     Minimax { coefficients, error }
 }
 
@@ -96,8 +95,9 @@ fn solved(mut rows: Vec<Vec<f64>>) -> Vec<f64> {
         rows.swap(column, pivot);
         for row in column + 1..size {
             let factor = rows[row][column] / rows[column][column];
-            for k in column..=size {
-                rows[row][k] -= factor * rows[column][k];
+            let pivot = rows[column].clone();
+            for (value, of_pivot) in rows[row].iter_mut().zip(&pivot).skip(column) {
+                *value -= factor * of_pivot;
             }
         }
     }
@@ -119,11 +119,7 @@ pub fn float_coefficients() -> String {
          //! the polynomials before their coefficients are rounded to `f32`.\n",
     );
     for (name, about, polynomial) in [
-        (
-            "ARC_TANGENT",
-            "2·arctan t ≈ t·Σ c·t^2k on [0, 1]",
-            minimax(|t| 2.0 * t.atan(), 1, 8, 1.0),
-        ),
+        ("ARC_TANGENT", "2·arctan t ≈ t·Σ c·t^2k on [0, 1]", minimax(|t| 2.0 * t.atan(), 1, 8, 1.0)),
         (
             "KNEE_ARC_TANGENT",
             "4·arctan t ≈ t·Σ c·t^2k on [0, tan π/8]",
@@ -132,8 +128,7 @@ pub fn float_coefficients() -> String {
         ("SINE", "sin t ≈ t·Σ c·t^2k on [0, π/4]", minimax(f64::sin, 1, 4, quarter)),
         ("COSINE", "cos t ≈ Σ c·t^2k on [0, π/4]", minimax(f64::cos, 0, 5, quarter)),
     ] {
-        let list: Vec<_> =
-            polynomial.coefficients.iter().map(|c| format!("{:?}", *c as f32)).collect();
+        let list: Vec<_> = polynomial.coefficients.iter().map(|c| format!("{:?}", *c as f32)).collect();
         let _ = write!(
             text,
             "\n/// {about}, within {:.1e}.\n#[rustfmt::skip]\n\

@@ -107,6 +107,7 @@ macro_rules! constants {
                     bends_back: dimensions.bends_back(),
                     knee_stops: [knee[0] > 0.0, knee[1] < 180.0],
                     ranges: $crate::limits::Ranges {
+                        free: limits.are_free(),
                         hip: $crate::leg::constants::range!($number, limits.hip_deg()),
                         thigh: $crate::leg::constants::range!($number, limits.thigh_deg()),
                         knee: $crate::leg::constants::range!($number, knee),

@@ -80,11 +80,7 @@ fn at_depth<N: Number>(
     n: N::Square,
 ) -> Plane<N> {
     let depth = N::root(depth_square, leg.scale);
-    let hip = N::angle(
-        N::area(z, leg.offset) + N::area(y, depth),
-        N::area(y, leg.offset) - N::area(z, depth),
-        N::area(y, y) + N::area(z, z),
-    );
+    let hip = N::hip_angle([y, z], leg.offset, depth);
     Plane { hip: Angle(hip), across: x, along: depth, n }
 }
 

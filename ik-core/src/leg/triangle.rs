@@ -17,11 +17,7 @@ pub(super) fn angles<N: Number>(leg: &Constants<N>, plane: &Plane<N>) -> (N::Ang
         (leg.straight.lean - knee.from_end, leg.straight.norm - swing)
     };
     let q = if leg.bends_back { -knee.half_sine } else { knee.half_sine };
-    let thigh = N::angle(
-        N::stretch(plane.across, p) + N::stretch(plane.along, q),
-        N::stretch(plane.along, p) - N::stretch(plane.across, q),
-        norm,
-    );
+    let thigh = N::thigh_angle(plane.along, plane.across, [p, q], norm);
     (thigh, knee.angle)
 }
 

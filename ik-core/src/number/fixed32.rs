@@ -5,6 +5,9 @@
 //! 30 bits; scaling is a shift, so nothing is lost, and squares and their sums are exact in `i64`.
 
 mod arctangent;
+mod expansion;
+mod knee;
+mod root;
 mod sine;
 
 use super::{Knee, Number, Placed};
@@ -23,11 +26,15 @@ use fixed::types::{I0F32, I16F16};
 #[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct Fixed32;
 
-/// Coordinates are `I16F16` bits shifted left by this.
+/// Coordinates are `I16F16` bits shifted left.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 #[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct FixedScale {
     shift: u32,
+    /// 2^shift.
+    factor: i32,
+    /// `I16F16` bits of the working range lie below this.
+    limit: i32,
 }
 
 impl FixedScale {
@@ -43,12 +50,10 @@ const COORD_LIMIT: i32 = 1 << 30;
 const LENGTH_BITS: i32 = 16;
 /// Fraction bits of a ratio: ±8.
 const RATIO_BITS: u32 = 28;
-/// Fraction bits of a sine or cosine within the knee.
-const SINE_BITS: u32 = 31;
+/// Fraction bits of the sine of half the knee.
+const SINE_BITS: u32 = 27;
 /// Fraction bits of the unit's reciprocal times a coordinate, above [`SINE_BITS`].
-const UNIT_BITS: u32 = 28;
-/// Half a turn; one less is the largest angle there is.
-const HALF_TURN: u32 = 1 << 31;
+const UNIT_BITS: u32 = 32;
 /// Fraction bits of the angle per pulse.
 const SWING_BITS: u32 = 20;
 
@@ -62,7 +67,7 @@ impl Fixed32 {
         while shift < 13 && radius_mm * power_of_two(LENGTH_BITS + shift as i32 + 1) < COORD_LIMIT as f64 {
             shift += 1;
         }
-        Some(FixedScale { shift })
+        Some(FixedScale { shift, factor: 1 << shift, limit: COORD_LIMIT >> shift })
     }
 
     pub(crate) const fn coord_from_mm(mm: f64, scale: FixedScale) -> i32 {
@@ -120,9 +125,60 @@ const fn saturated(value: i64) -> i32 {
     }
 }
 
-/// ⌊√value⌋ for value < 2^63; 0 for a negative one.
-fn floor_root(value: i64) -> u32 {
-    if value <= 0 { 0 } else { value.unsigned_abs().isqrt() as u32 }
+/// The upper half.
+#[inline(always)]
+const fn upper(product: i64) -> i32 {
+    (product >> 32) as i32
+}
+
+/// Norms of which the upper half is worth less than this are looked at whole.
+const LEAST_UPPER: u32 = 1 << 22;
+
+/// The angle from the upper halves of products, 28 bits where the leg reaches far; `None` if the norm is so small that
+/// they are not enough.
+#[inline(always)]
+fn angle_of_upper(y: i32, x: i32, norm: i32) -> Option<I0F32> {
+    let run = norm as u32 + x.unsigned_abs();
+    if run < LEAST_UPPER {
+        return None;
+    }
+    Some(signed(arctangent::double_angle(y.unsigned_abs(), run), y < 0, x < 0))
+}
+
+/// The angle with 2·arctan(|y| / (norm + |x|)) = `half`, in its quadrant.
+#[inline(always)]
+fn signed(half: i32, y_is_negative: bool, x_is_negative: bool) -> I0F32 {
+    let size = if x_is_negative { i32::MAX - half } else { half };
+    I0F32::from_bits(if y_is_negative { -size } else { size })
+}
+
+/// The angle from as many bits as there are.
+#[cold]
+#[inline(never)]
+fn angle_of_all(y: i64, x: i64, norm: i64) -> I0F32 {
+    let run = norm.unsigned_abs() + x.unsigned_abs();
+    if run == 0 {
+        return I0F32::ZERO;
+    }
+    // The run's upper half in [2^29, 2^30); both are shifted by the same.
+    let shift = run.leading_zeros().saturating_sub(2);
+    let rise = y.unsigned_abs().min(run);
+    let half = arctangent::double_angle(((rise << shift) >> 32) as u32, ((run << shift) >> 32) as u32);
+    signed(half, y < 0, x < 0)
+}
+
+#[cold]
+#[inline(never)]
+fn hip_angle_near_the_axis([y, z]: [i32; 2], offset: i32, depth: i32) -> I0F32 {
+    let area = Fixed32::area;
+    angle_of_all(area(z, offset) + area(y, depth), area(y, offset) - area(z, depth), area(y, y) + area(z, z))
+}
+
+#[cold]
+#[inline(never)]
+fn thigh_angle_near_its_joint(along: i32, across: i32, [p, q]: [i32; 2], norm: i64) -> I0F32 {
+    let area = Fixed32::area;
+    angle_of_all(area(across, p) + area(along, q), area(along, p) - area(across, q), norm)
 }
 
 impl Number for Fixed32 {
@@ -178,14 +234,18 @@ impl Number for Fixed32 {
     }
 
     #[inline(always)]
+    fn near(foot: [I16F16; 3], scale: FixedScale) -> Option<[i32; 3]> {
+        let [x, y, z] = foot.map(I16F16::to_bits);
+        // The limit is a power of two: together they lie below it if each does.
+        let outermost = (x ^ (x >> 31)) | (y ^ (y >> 31)) | (z ^ (z >> 31));
+        (outermost < scale.limit).then(|| [x, y, z].map(|v| v * scale.factor))
+    }
+
     fn place(foot: [I16F16; 3], scale: FixedScale) -> Placed<Self> {
-        let bits = foot.map(I16F16::to_bits);
-        let limit = COORD_LIMIT >> scale.shift;
-        let near = |v: i32| -limit < v && v < limit;
-        if near(bits[0]) && near(bits[1]) && near(bits[2]) {
-            return Placed::Near(bits.map(|v| v << scale.shift));
+        match Self::near(foot, scale) {
+            Some(point) => Placed::Near(point),
+            None => far(foot.map(I16F16::to_bits), scale),
         }
-        far(bits, scale)
     }
 
     fn length(coord: i32, scale: FixedScale) -> I16F16 {
@@ -219,17 +279,20 @@ impl Number for Fixed32 {
 
     #[inline(always)]
     fn root(square: i64, _: FixedScale) -> i32 {
-        floor_root(square) as i32
+        root::root(square as u64) as i32
     }
 
     #[inline(always)]
     fn beyond(radial_square: i64, offset: i32, _: FixedScale) -> (i32, i64) {
-        let whole = i64::from(floor_root(radial_square));
-        let rest = radial_square - whole * whole;
-        // R = whole + rest / (2·whole) to second order, so (R − c)² = (whole − c)² + rest − c·rest / whole.
-        let correction = (i64::from(offset) * rest).checked_div(whole).unwrap_or(0);
-        let along = whole - i64::from(offset);
-        (along as i32, along * along + rest - correction)
+        let whole = root::root(radial_square as u64) as i32;
+        // The root is off by a few at most, so the rest lies within ±2^36.
+        let rest = radial_square - i64::from(whole) * i64::from(whole);
+        // R = whole + rest / (2·whole) to second order, so (R − c)² = (whole − c)² + rest − c·rest / whole; the quotient
+        // in 1/1024, which is a hair of a hair.
+        let quotient = ((rest >> 10) as i32).checked_div(whole >> 20).unwrap_or(0);
+        let correction = (i64::from(offset) * i64::from(quotient)) >> 10;
+        let along = whole - offset;
+        (along, i64::from(along) * i64::from(along) + rest - correction)
     }
 
     #[inline(always)]
@@ -244,33 +307,56 @@ impl Number for Fixed32 {
 
     #[inline(always)]
     fn widen(coord: i32) -> i64 {
-        i64::from(coord) << RATIO_BITS
+        // A bit less than there is room for, so that two of them add up.
+        i64::from(coord) << 31
     }
 
     #[inline(always)]
     fn angle(y: i64, x: i64, norm: i64) -> I0F32 {
-        let half = arctangent::double_angle(y.unsigned_abs(), norm.unsigned_abs() + x.unsigned_abs());
-        let size = if x < 0 { HALF_TURN - half } else { half }.min(HALF_TURN - 1) as i32;
-        I0F32::from_bits(if y < 0 { -size } else { size })
+        match angle_of_upper(upper(y), upper(x), upper(norm)) {
+            Some(angle) => angle,
+            None => angle_of_all(y, x, norm),
+        }
+    }
+
+    #[inline(always)]
+    fn hip_angle([y, z]: [i32; 2], offset: i32, depth: i32) -> I0F32 {
+        let area = |a, b| upper(Self::area(a, b));
+        match angle_of_upper(
+            area(z, offset) + area(y, depth),
+            area(y, offset) - area(z, depth),
+            area(y, y) + area(z, z),
+        ) {
+            Some(angle) => angle,
+            None => hip_angle_near_the_axis([y, z], offset, depth),
+        }
+    }
+
+    #[inline(always)]
+    fn thigh_angle(along: i32, across: i32, [p, q]: [i32; 2], norm: i64) -> I0F32 {
+        let area = |a, b| upper(Self::area(a, b));
+        match angle_of_upper(area(across, p) + area(along, q), area(along, p) - area(across, q), upper(norm))
+        {
+            Some(angle) => angle,
+            None => thigh_angle_near_its_joint(along, across, [p, q], norm),
+        }
     }
 
     #[inline(always)]
     fn knee(n: i64, m: i64, unit: u32, _: FixedScale) -> Knee<Self> {
         // The smaller of n and m gives a half-angle of 45° at the most, whose sine is well known.
         let folded = m < n;
-        let least = if folded { m } else { n };
-        let sine = (u64::from(floor_root(least)) * u64::from(unit)) >> UNIT_BITS;
-        let sine = sine.min(1 << SINE_BITS);
-        let square = sine * sine;
-        let cosine = ((1u64 << (2 * SINE_BITS)) - square).isqrt();
-        // 2·arctan(s / (1 + c)) is half the knee; twice that, and from the other end when folded.
-        let knee = 2 * arctangent::double_angle(sine, (1 << SINE_BITS) + cosine);
-        let knee = if folded { HALF_TURN - knee } else { knee };
+        let side = root::root(if folded { m } else { n } as u64);
+        let sine = ((u64::from(side) * u64::from(unit)) >> UNIT_BITS) as u32;
+        let (knee, half_sine) = knee::knee(sine);
+        let knee = if folded { i32::MAX - knee } else { knee };
+        // sine² with 26 fraction bits is the upper half of that of four times the sine.
+        let square = ((u64::from(4 * sine) * u64::from(4 * sine)) >> 32) as i32;
         Knee {
-            angle: I0F32::from_bits(knee.min(HALF_TURN - 1) as i32),
-            half_sine: rounded_shift((sine * cosine) as i64, 2 * SINE_BITS - RATIO_BITS) as i32,
+            angle: I0F32::from_bits(knee),
+            half_sine,
             folded,
-            from_end: rounded_shift(square as i64, 2 * SINE_BITS - RATIO_BITS) as i32,
+            from_end: square << (RATIO_BITS + 32 - 2 * (SINE_BITS + 2)),
         }
     }
 

@@ -158,8 +158,9 @@ const fn wrapped(angle: f32) -> f32 {
     }
 }
 
-/// The angle whose cosine is the negative of another's, on the same side: ±π − angle.
-#[inline(always)]
+/// The angle whose cosine is the negative of another's, on the same side: ±π − angle. Legs seldom reach that way.
+#[cold]
+#[inline(never)]
 fn obtuse(acute: f32) -> f32 {
     PI.copysign(acute) - acute
 }
@@ -328,6 +329,11 @@ impl<M: FloatMaths> Number for Float<M> {
             folded,
             from_end: square,
         }
+    }
+
+    #[inline(always)]
+    fn are_sound(a: f32, b: f32) -> bool {
+        !(a + b).is_nan()
     }
 
     fn sin_cos(angle: f32) -> (f32, f32) {

@@ -76,7 +76,7 @@ impl Call {
         let repeat = format!(
             "toehold survey{} --targets {} --seed {}",
             match source {
-                Source::File(path) => format!(" {}", path.display()),
+                Source::File(path) => format!(" {}", quoted(&path.display().to_string())),
                 Source::Demo(_) => String::new(),
             },
             self.targets,
@@ -90,6 +90,12 @@ impl Call {
         }
         Ok(())
     }
+}
+
+/// A word of a command line: in quotes if it has more than letters, digits and what paths are made of.
+fn quoted(word: &str) -> String {
+    let plain = |c: char| c.is_alphanumeric() || "-_./\\:".contains(c);
+    if word.chars().all(plain) { word.to_owned() } else { format!("\"{}\"", word.replace('"', "\\\"")) }
 }
 
 /// A progress bar on a terminal; nothing elsewhere.

@@ -53,7 +53,7 @@ impl Counter {
             Self::Expander(expander) => ("expander", expander.divider()),
         };
         format!(
-            "{what}: clock divided by {divider}, {:.4} us a {}, frames of {:.3} ms ({:.3} Hz)",
+            "{what}: clock divided by {divider}, {:.4} µs a {}, frames of {:.3} ms ({:.3} Hz)",
             self.count_us(),
             self.unit().trim_end_matches('s'),
             self.frame_us() / 1e3,
