@@ -1,0 +1,5 @@
+//! The textbook form on cordic, roll-hip leg, to joint angles.
+#![no_std]
+#![no_main]
+
+image::measure!(contenders::Textbook<ik_core::RollHip, contenders::OnCordic>);

@@ -1,0 +1,5 @@
+//! The textbook form on cordic, yaw-hip leg, to joint angles.
+#![no_std]
+#![no_main]
+
+image::measure!(contenders::Textbook<ik_core::YawHip, contenders::OnCordic>);

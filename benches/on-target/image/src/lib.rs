@@ -1,0 +1,38 @@
+//! What all images share. Each image, in `bin`, has one contender and nothing of the others, so that its size
+//! tells what the contender takes.
+#![no_std]
+
+mod window;
+
+use contenders::{Contender, Digest, PublishedHip};
+
+#[doc(hidden)]
+pub use {board, contenders};
+
+/// The image of one contender.
+#[macro_export]
+macro_rules! measure {
+    ($contender:ty) => {
+        /// In flash.
+        static LEG: <$contender as $crate::contenders::Contender>::Leg =
+            <$contender as $crate::contenders::Contender>::LEG;
+
+        #[$crate::board::entry]
+        fn main() -> ! {
+            $crate::run::<$contender>(&LEG)
+        }
+    };
+}
+
+/// Solves every target and logs how many there were, and a digest of all answers.
+pub fn run<C: Contender>(leg: &C::Leg) -> ! {
+    let mut digest = Digest::EMPTY;
+    let mut windows = 0u32;
+    for &target in C::Hip::PUBLISHED.targets {
+        let foot = core::hint::black_box(C::foot(target));
+        digest = digest.with(C::bits(&window::solve::<C>(leg, &foot)));
+        windows += 1;
+    }
+    defmt::println!("{=str} {=u32} {=u32}", C::NAME, windows, digest.value());
+    board::end::done()
+}

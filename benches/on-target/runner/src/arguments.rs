@@ -1,0 +1,84 @@
+//! What can be asked on the command line.
+
+use std::time::Duration;
+
+use clap::{Parser, ValueEnum};
+
+use crate::chip::Chip;
+
+/// Count what a leg costs on emulated chips, for every contender.
+///
+/// Instructions, stack and flash are exact; cycles are estimated from published tables, zero wait states, not
+/// measured on silicon. Sets itself up: compiler targets and emulator are installed where that is possible, else
+/// the message says what to install. Exit codes: 0 counted, 1 an answer differs from the PC's or an image went wrong,
+/// 2 wrong call, 3 a tool is missing.
+#[derive(Debug, Parser)]
+#[command(name = "leg-cost", version)]
+pub struct Arguments {
+    /// Chip class to count on; may be given more than once [default: m0, m3, m4f]
+    #[arg(long = "chip", value_enum, value_name = "CLASS")]
+    chips: Vec<Chip>,
+
+    /// Count only contenders whose name contains this; may be given more than once
+    #[arg(long, value_name = "PART OF NAME")]
+    only: Vec<String>,
+
+    /// List the contenders' names and count nothing
+    #[arg(long)]
+    pub list: bool,
+
+    /// Print JSON instead of tables
+    #[arg(long)]
+    pub json: bool,
+
+    /// Count every window a second time, from the emulator's own log of executed instructions; it must be the same
+    /// (slow: choose some by --only)
+    #[arg(long)]
+    pub count_twice: bool,
+
+    /// Where the compiler for the chips comes from
+    #[arg(long, value_enum, value_name = "WAY", default_value_t = Way::Auto)]
+    pub way: Way,
+
+    /// Seconds after which a run that has not ended is stopped, and has failed
+    #[arg(long, value_name = "SECONDS", default_value_t = 120,
+          value_parser = clap::value_parser!(u64).range(1..=3600))]
+    time_limit: u64,
+}
+
+/// Where the compiler for the chips comes from; all but `None` are explained in `.ci/tools.sh`.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, ValueEnum)]
+pub enum Way {
+    /// The compiler in use if it has the targets, else rustup, else Debian's packages
+    Auto,
+    /// Add targets to the toolchain in use with rustup
+    Rustup,
+    /// Debian's compiler, with `core` built once
+    Distro,
+    /// Use what is there and install nothing (needs no bash)
+    None,
+}
+
+/// The name by which the command line knows a value.
+pub fn name_of(value: &impl ValueEnum) -> String {
+    value.to_possible_value().map(|named| named.get_name().to_owned()).unwrap_or_default()
+}
+
+impl Arguments {
+    pub fn chips(&self) -> Vec<Chip> {
+        if self.chips.is_empty() { Chip::USUAL.to_vec() } else { self.chips.clone() }
+    }
+
+    /// Whether a contender of this name is wanted.
+    pub fn wants(&self, name: &str) -> bool {
+        self.only.is_empty() || self.only.iter().any(|part| name.contains(part.as_str()))
+    }
+
+    pub fn only(&self) -> &[String] {
+        &self.only
+    }
+
+    pub fn time_limit(&self) -> Duration {
+        Duration::from_secs(self.time_limit)
+    }
+}

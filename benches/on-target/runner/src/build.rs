@@ -1,0 +1,72 @@
+//! Builds the plugin and the images, and says where they lie.
+
+use std::{
+    collections::BTreeMap,
+    io::BufReader,
+    path::PathBuf,
+    process::{Command, Stdio},
+};
+
+use cargo_metadata::{Artifact, Message};
+
+use crate::{arguments::Way, chip::Chip, tools, trouble::Trouble};
+
+/// The plugin, for this PC.
+pub fn plugin() -> Result<PathBuf, Trouble> {
+    let mut cargo = Command::new("cargo");
+    cargo.args(["build", "--release", "--package", "plugin"]);
+    let artifacts = run(cargo, "the plugin")?;
+    artifacts
+        .into_iter()
+        .filter(|artifact| artifact.target.name == "window_counter")
+        .flat_map(|artifact| artifact.filenames)
+        .find(|path| path.extension() == Some(std::env::consts::DLL_EXTENSION))
+        .map(Into::into)
+        .ok_or_else(|| Trouble::NotNamed("plugin".into()))
+}
+
+/// The images of these contenders, by their names.
+pub fn images(way: Way, chip: Chip, names: &[&str]) -> Result<BTreeMap<String, PathBuf>, Trouble> {
+    let mut cargo = tools::cargo(way, chip);
+    cargo.args(["build", "--profile", "chip", "--package", "image", "--target", chip.target()]);
+    if let Some(processor) = chip.optimised_for() {
+        // A folder of its own, or each of the two would undo the other's work.
+        cargo.args(["--target-dir", "target/tuned"]);
+        cargo.arg("--config").arg(format!("target.{}.rustflags=['-Ctarget-cpu={processor}']", chip.target()));
+    }
+    for name in names {
+        cargo.args(["--bin", name]);
+    }
+    let artifacts = run(cargo, "an image")?;
+    Ok(artifacts
+        .into_iter()
+        .filter_map(|artifact| Some((artifact.target.name, artifact.executable?.into())))
+        .collect())
+}
+
+fn run(mut cargo: Command, what: &'static str) -> Result<Vec<Artifact>, Trouble> {
+    let mut running = cargo
+        .current_dir(tools::workspace())
+        .args(["--quiet", "--locked"])
+        // Messages for people go to standard error, where cargo was built: also on a pipe.
+        .arg("--message-format=json-render-diagnostics")
+        // Flags meant for the PC's build would replace the image's own.
+        .env_remove("RUSTFLAGS")
+        .env_remove("CARGO_ENCODED_RUSTFLAGS")
+        .stdout(Stdio::piped())
+        .spawn()
+        .map_err(Trouble::io("starting cargo"))?;
+    let messages = running.stdout.take().expect("standard output is piped");
+    let mut artifacts = Vec::new();
+    for message in Message::parse_stream(BufReader::new(messages)) {
+        if let Message::CompilerArtifact(artifact) =
+            message.map_err(Trouble::io("reading what cargo says"))?
+        {
+            artifacts.push(artifact);
+        }
+    }
+    if !running.wait().map_err(Trouble::io("waiting for cargo"))?.success() {
+        return Err(Trouble::DidNotBuild { what });
+    }
+    Ok(artifacts)
+}

@@ -1,0 +1,54 @@
+//! Every contender, with what its image has to log: computed here by the same code.
+
+use contenders::{Contender, Digest, PublishedHip, To, Visit};
+use targets::Target;
+
+/// A contender, as far as the PC knows it.
+#[derive(Debug, Clone)]
+pub struct Expected {
+    pub name: &'static str,
+    pub what: &'static str,
+    pub hip: &'static str,
+    pub ours: bool,
+    pub to: To,
+    pub targets: usize,
+    /// The line that the image has to log: the same code, the same bits.
+    pub line: String,
+    /// How far the foot is from where it was asked to be, at most, mm.
+    pub largest_foot_error_mm: f64,
+}
+
+/// All contenders, in the order of the table.
+pub fn all() -> Vec<Expected> {
+    let mut collector = Collector(Vec::new());
+    contenders::visit_all(&mut collector);
+    collector.0
+}
+
+struct Collector(Vec<Expected>);
+
+impl Visit for Collector {
+    fn visit<C: Contender>(&mut self) {
+        let targets: &[Target] = C::Hip::PUBLISHED.targets;
+        let mut digest = Digest::EMPTY;
+        let mut largest_foot_error_mm = 0.0_f64;
+        for &target in targets {
+            let answer = C::solve(&C::LEG, &C::foot(target));
+            digest = digest.with(C::bits(&answer));
+            if C::TO != To::Nothing {
+                largest_foot_error_mm = largest_foot_error_mm
+                    .max(contenders::foot_error_mm::<C::Hip>(C::joints(&answer), target));
+            }
+        }
+        self.0.push(Expected {
+            name: C::NAME,
+            what: C::WHAT,
+            hip: <C::Hip as PublishedHip>::NAME,
+            ours: C::OURS,
+            to: C::TO,
+            targets: targets.len(),
+            line: format!("{} {} {}", C::NAME, targets.len(), digest.value()),
+            largest_foot_error_mm,
+        });
+    }
+}

@@ -1,0 +1,107 @@
+//! Counts what a leg costs on emulated chips, for every contender, and prints one table per chip.
+//!
+//! Exit codes: 0 counted; 1 an answer differs from the PC's, or an image did not build or end in good order; 2 wrong
+//! call; 3 a tool is missing and could not be installed.
+
+mod arguments;
+mod build;
+mod chip;
+mod count;
+mod emulator;
+mod expected;
+mod flash;
+mod report;
+mod second_count;
+mod table;
+mod tools;
+mod trouble;
+
+use std::{path::Path, process::ExitCode};
+
+use arguments::Arguments;
+use chip::Chip;
+use contenders::To;
+use count::Cost;
+use expected::Expected;
+use report::Report;
+use trouble::Trouble;
+
+fn main() -> ExitCode {
+    match run(&<Arguments as clap::Parser>::parse()) {
+        Ok(()) => ExitCode::SUCCESS,
+        Err(trouble) => {
+            eprintln!("error: {trouble}");
+            ExitCode::from(trouble.exit_code())
+        }
+    }
+}
+
+fn run(arguments: &Arguments) -> Result<(), Trouble> {
+    let wanted = wanted(arguments)?;
+    if arguments.list {
+        for expected in wanted.iter().filter(|expected| expected.to != To::Nothing) {
+            println!("{}", expected.name);
+        }
+        return Ok(());
+    }
+    let chips = arguments.chips();
+    tools::set_up(arguments.way, &chips)?;
+    eprintln!("building the plugin");
+    let plugin = build::plugin()?;
+    let mut reports = Vec::new();
+    for &chip in &chips {
+        let report = Report { chip, costs: count_on(arguments, chip, &plugin, &wanted)? };
+        if !arguments.json {
+            println!("{report}");
+        }
+        reports.push(report);
+    }
+    if arguments.json {
+        println!("{}", report::json(&reports));
+    }
+    Ok(())
+}
+
+/// What is asked for, and the call alone, which is always needed.
+fn wanted(arguments: &Arguments) -> Result<Vec<Expected>, Trouble> {
+    let all = expected::all();
+    for only in arguments.only() {
+        if !all.iter().any(|expected| expected.name.contains(only.as_str())) {
+            let names: Vec<_> = all.iter().map(|expected| expected.name).collect();
+            return Err(Trouble::NoSuchContender { only: only.clone(), names: names.join(", ") });
+        }
+    }
+    Ok(all
+        .into_iter()
+        .filter(|expected| expected.to == To::Nothing || arguments.wants(expected.name))
+        .collect())
+}
+
+fn count_on(
+    arguments: &Arguments,
+    chip: Chip,
+    plugin: &Path,
+    wanted: &[Expected],
+) -> Result<Vec<Cost>, Trouble> {
+    eprintln!("{}: building {} images", chip.class(), wanted.len());
+    let names: Vec<&str> = wanted.iter().map(|expected| expected.name).collect();
+    let images = build::images(arguments.way, chip, &names)?;
+    let (mut costs, mut call) = (Vec::new(), None);
+    for expected in wanted {
+        let image = images.get(expected.name).ok_or_else(|| Trouble::NotNamed(expected.name.into()))?;
+        let run = emulator::run(chip, expected.name, image, plugin, arguments.time_limit())?;
+        count::check(expected, &run)?;
+        if arguments.count_twice {
+            let again = second_count::instructions(chip, expected.name, image, arguments.time_limit())?;
+            count::compare(expected, &run.windows, &again)?;
+            eprintln!("{}: {}: counted twice, {} windows alike", chip.class(), expected.name, again.len());
+        }
+        let flash = flash::bytes(image)?;
+        match (expected.to, call) {
+            (To::Nothing, _) => call = Some(count::call_alone(&run.windows, flash)),
+            (_, Some(call)) => costs.push(count::cost(expected, &run.windows, flash, call)),
+            (_, None) => return Err(Trouble::NotNamed("image of the call alone".into())),
+        }
+    }
+    Ok(costs)
+}
