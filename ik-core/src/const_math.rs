@@ -39,7 +39,7 @@ pub(crate) const fn nearest_i32(v: f64) -> i32 {
 }
 
 /// 2^exponent.
-#[cfg(any(feature = "float32", feature = "coarse", feature = "fixed32"))]
+#[cfg(any(feature = "float32", feature = "coarse", feature = "fixed16", feature = "fixed32"))]
 pub(crate) const fn power_of_two(exponent: i32) -> f64 {
     let mut value = 1.0;
     let mut left = exponent;
@@ -55,7 +55,7 @@ pub(crate) const fn power_of_two(exponent: i32) -> f64 {
 }
 
 /// arctan t for 0 ≤ t ≤ 2, by two halvings of the angle and its power series; within 1e-15.
-#[cfg(feature = "fixed32")]
+#[cfg(any(feature = "fixed16", feature = "fixed32"))]
 pub(crate) const fn arc_tangent(t: f64) -> f64 {
     let half = t / (1.0 + square_root(1.0 + t * t));
     let quarter = half / (1.0 + square_root(1.0 + half * half));
@@ -72,6 +72,10 @@ pub(crate) const fn arc_tangent(t: f64) -> f64 {
 
 /// sin² of half an angle given in degrees, 0 ≤ degrees ≤ 180: (1 − cos)/2 without its cancellation; within 1e-15.
 pub(crate) const fn half_sine_square(degrees: f64) -> f64 {
+    // Exactly 1 when folded, and as exact near it as near straight.
+    if degrees > 90.0 {
+        return 1.0 - half_sine_square(180.0 - degrees);
+    }
     // The series of the sine for the half angle, ≤ 90°; from its small end, 14 terms are plenty.
     let angle = degrees * (core::f64::consts::PI / 360.0);
     let square = angle * angle;
@@ -100,7 +104,7 @@ mod tests {
         assert_eq!(square_root(-1.0), 0.0);
     }
 
-    #[cfg(feature = "fixed32")]
+    #[cfg(any(feature = "fixed16", feature = "fixed32"))]
     #[test]
     fn arc_tangent_agrees_with_the_standard_library() {
         for i in 0..=2000 {

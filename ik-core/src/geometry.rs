@@ -49,7 +49,8 @@ pub enum GeometryError {
     BendOfTheOtherHip,
     /// The foot reaches less than 1 mm from the leg's origin.
     TooShort,
-    /// The foot reaches farther from the leg's origin than the number system can hold (16 383 mm).
+    /// The foot reaches farther from the leg's origin than the number system can hold: 16 383 mm, 453 mm in
+    /// [`Fixed16`](crate::number).
     TooLong,
 }
 
@@ -74,7 +75,9 @@ impl GeometryError {
                 "the knee of a roll-hip leg bends forward or backward, of a yaw-hip leg up or down"
             }
             Self::TooShort => "the foot must reach at least 1 mm from the leg's origin",
-            Self::TooLong => "the foot reaches farther than the number system holds, 16383 mm",
+            Self::TooLong => {
+                "the foot reaches farther than the number system holds, 16383 mm (453 mm in fixed16)"
+            }
         }
     }
 }

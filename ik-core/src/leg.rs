@@ -102,32 +102,30 @@ pub struct Leg<H: Hip, N: Number> {
     hip: PhantomData<H>,
 }
 
-#[cfg(feature = "fixed32")]
-impl<H: Hip> Leg<H, crate::Fixed32> {
-    /// A leg; with free joints if the limits are [`Limits::FREE`].
-    ///
-    /// # Errors
-    /// If the leg is too long or too short for the number system.
-    pub const fn new(dimensions: Dimensions<H>, limits: Limits) -> Result<Self, GeometryError> {
-        match constants!(crate::Fixed32, dimensions, limits) {
-            Ok(constants) => Ok(Self { constants, hip: PhantomData }),
-            Err(error) => Err(error),
+/// `new` as a `const fn` for each number system, which a trait cannot give.
+macro_rules! leg_while_compiling {
+    ($(#[$feature:meta] [$($generics:tt)*] $number:ty;)*) => {$(
+        #[$feature]
+        impl<H: Hip, $($generics)*> Leg<H, $number> {
+            /// A leg; with free joints if the limits are [`Limits::FREE`].
+            ///
+            /// # Errors
+            /// If the leg is too long or too short for the number system.
+            pub const fn new(dimensions: Dimensions<H>, limits: Limits) -> Result<Self, GeometryError> {
+                match constants!($number, dimensions, limits) {
+                    Ok(constants) => Ok(Self { constants, hip: PhantomData }),
+                    Err(error) => Err(error),
+                }
+            }
         }
-    }
+    )*};
 }
 
-#[cfg(any(feature = "float32", feature = "coarse"))]
-impl<H: Hip, M: crate::number::float::FloatMaths> Leg<H, crate::number::float::Float<M>> {
-    /// A leg; with free joints if the limits are [`Limits::FREE`].
-    ///
-    /// # Errors
-    /// If the leg is too long or too short for the number system.
-    pub const fn new(dimensions: Dimensions<H>, limits: Limits) -> Result<Self, GeometryError> {
-        match constants!(crate::number::float::Float<M>, dimensions, limits) {
-            Ok(constants) => Ok(Self { constants, hip: PhantomData }),
-            Err(error) => Err(error),
-        }
-    }
+leg_while_compiling! {
+    #[cfg(feature = "fixed16")] [] crate::Fixed16;
+    #[cfg(feature = "fixed32")] [] crate::Fixed32;
+    #[cfg(any(feature = "float32", feature = "coarse"))]
+    [M: crate::number::float::FloatMaths] crate::number::float::Float<M>;
 }
 
 impl<H: Hip, N: Number> Leg<H, N> {

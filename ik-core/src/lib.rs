@@ -55,6 +55,7 @@
 //! | `Float32` | `float32` | `f32`, polynomials made for legs | chips with an FPU |
 //! | `Coarse` | `coarse` | `f32`, micromath's functions | a yardstick; where millimetres do not matter |
 //! | `Fixed32` | `fixed32` | `fixed`'s `I16F16` mm and `I0F32` turns | chips without an FPU |
+//! | `Fixed16` | `fixed16` | `fixed`'s `I10F6` mm and `I0F16` turns | chips without a divider or a long multiplication (Cortex-M0, M0+) |
 //!
 //! Same input, same bits, on every machine: no function of the standard library's maths is used.
 //!
@@ -62,7 +63,7 @@
 //!
 //! | feature | what it adds |
 //! | --- | --- |
-//! | `float32`, `fixed32` (on by default), `coarse` | a number system each |
+//! | `float32`, `fixed32` (on by default), `fixed16`, `coarse` | a number system each |
 //! | `heapless` | `robot`: the legs of a robot without allocation |
 //! | `queue` | `queue`: foot targets from the main loop to the frame interrupt; needs atomic loads and stores (on RV32IMC switch on one of heapless's `portable-atomic` features) |
 //! | `defmt` | `defmt::Format` on everything that a firmware may want to log |
@@ -109,6 +110,8 @@ pub use limits::{End, Limits, LimitsError};
 pub use mounting::{Mounting, Side};
 #[cfg(feature = "coarse")]
 pub use number::Coarse;
+#[cfg(feature = "fixed16")]
+pub use number::Fixed16;
 #[cfg(feature = "fixed32")]
 pub use number::Fixed32;
 #[cfg(feature = "float32")]

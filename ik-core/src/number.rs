@@ -6,11 +6,17 @@
 //!
 //! Anyone can add a number system: the host harness adds `f64` to tell the method's error from rounding.
 
+#[cfg(feature = "fixed16")]
+mod fixed16;
 #[cfg(feature = "fixed32")]
 mod fixed32;
 #[cfg(any(feature = "float32", feature = "coarse"))]
 pub mod float;
+#[cfg(feature = "fixed16")]
+mod narrow;
 
+#[cfg(feature = "fixed16")]
+pub use fixed16::{Fixed16, Fixed16Scale, Fixed16Unit};
 #[cfg(feature = "fixed32")]
 pub use fixed32::{Fixed32, FixedScale};
 #[cfg(feature = "coarse")]
@@ -97,6 +103,11 @@ pub trait Number: Copy + Debug + PartialEq + 'static {
 
     /// The scale for a leg that reaches `radius_mm` from its origin; `None` if it is too long or too short.
     fn scale_for(radius_mm: f64) -> Option<Self::Scale>;
+    /// The scale for a leg that reaches `radius_mm` from its origin and whose thigh's vector has a norm of up to
+    /// `norm_mm`; for number systems that spend the bits which a short norm leaves on ratios.
+    fn scale_for_links(radius_mm: f64, _norm_mm: f64) -> Option<Self::Scale> {
+        Self::scale_for(radius_mm)
+    }
     /// mm, rounded.
     fn length_from_mm(mm: f64) -> Self::Length;
     /// mm, rounded.
@@ -105,6 +116,10 @@ pub trait Number: Copy + Debug + PartialEq + 'static {
     fn square_from_mm2(mm2: f64, scale: Self::Scale) -> Self::Square;
     /// A pure number in (−8, 8), rounded.
     fn ratio_from(value: f64) -> Self::Ratio;
+    /// A ratio that goes with those of [`knee`](Number::knee).
+    fn lean_from(value: f64, _scale: Self::Scale) -> Self::Ratio {
+        Self::ratio_from(value)
+    }
     /// mm, as a product of a coordinate and a ratio.
     fn product_from_mm(mm: f64, scale: Self::Scale) -> Self::Product;
     /// The reciprocal of `unit_mm` = 2·√(L1·L2).
@@ -209,6 +224,10 @@ pub trait Number: Copy + Debug + PartialEq + 'static {
 
     // --- out of reach: rare, so these may be slow ------------------------------------------------------
 
+    /// A vector of the same direction, larger if its own length would be rounded too much.
+    fn enlarged(vector: [Self::Coord; 3]) -> [Self::Coord; 3] {
+        vector
+    }
     /// v·to/from, for |v| ≤ from (nearly) and from > 0.
     fn rescale(v: Self::Coord, to: Self::Coord, from: Self::Coord) -> Self::Coord;
     /// A coordinate halved so many times.

@@ -194,26 +194,27 @@ macro_rules! servo {
     }};
 }
 
-#[cfg(feature = "fixed32")]
-impl Servo<crate::Fixed32> {
-    /// A servo from its measures.
-    ///
-    /// # Errors
-    /// Says which measure cannot be.
-    pub const fn new(spec: ServoSpec) -> Result<Self, ServoError> {
-        servo!(crate::Fixed32, spec)
-    }
+/// `new` as a `const fn` for each number system, which a trait cannot give.
+macro_rules! servo_while_compiling {
+    ($(#[$feature:meta] [$($generics:tt)*] $number:ty;)*) => {$(
+        #[$feature]
+        impl<$($generics)*> Servo<$number> {
+            /// A servo from its measures.
+            ///
+            /// # Errors
+            /// Says which measure cannot be.
+            pub const fn new(spec: ServoSpec) -> Result<Self, ServoError> {
+                servo!($number, spec)
+            }
+        }
+    )*};
 }
 
-#[cfg(any(feature = "float32", feature = "coarse"))]
-impl<M: crate::number::float::FloatMaths> Servo<crate::number::float::Float<M>> {
-    /// A servo from its measures.
-    ///
-    /// # Errors
-    /// Says which measure cannot be.
-    pub const fn new(spec: ServoSpec) -> Result<Self, ServoError> {
-        servo!(crate::number::float::Float<M>, spec)
-    }
+servo_while_compiling! {
+    #[cfg(feature = "fixed16")] [] crate::Fixed16;
+    #[cfg(feature = "fixed32")] [] crate::Fixed32;
+    #[cfg(any(feature = "float32", feature = "coarse"))]
+    [M: crate::number::float::FloatMaths] crate::number::float::Float<M>;
 }
 
 impl<N: Number> Servo<N> {

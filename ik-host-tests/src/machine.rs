@@ -10,8 +10,8 @@ use crate::sheet::{Bend, HipShape, LegKind, NumberSystem, Robot, Servo as ServoS
 use ik_core::limits::End;
 use ik_core::output::Output as _;
 use ik_core::{
-    Coarse, Dimensions, Fixed32, Float32, Foot, Hip, Joints, Leg, Limits, Number, Outcome, RollHip, Servo,
-    ServoSpec, YawHip,
+    Coarse, Dimensions, Fixed16, Fixed32, Float32, Foot, Hip, Joints, Leg, Limits, Number, Outcome, RollHip,
+    Servo, ServoSpec, YawHip,
 };
 use std::fmt;
 
@@ -63,20 +63,35 @@ impl fmt::Display for Refused {
 impl std::error::Error for Refused {}
 
 /// The number systems, in the order of reports: those of firmware, then the yardstick of the method.
-pub const NUMBERS: [&str; 4] =
-    [NumberSystem::Float32.name(), NumberSystem::Coarse.name(), NumberSystem::Fixed32.name(), Float64::NAME];
+pub const NUMBERS: [&str; 5] = [
+    NumberSystem::Float32.name(),
+    NumberSystem::Coarse.name(),
+    NumberSystem::Fixed32.name(),
+    NumberSystem::Fixed16.name(),
+    Float64::NAME,
+];
 
-/// A kind of leg in every number system, in the order of [`NUMBERS`].
+/// A kind of leg in every number system that can hold it, in the order of [`NUMBERS`]. One that cannot is left out,
+/// unless the sheet says that the firmware uses it.
 ///
 /// # Errors
 /// What ik-core refuses, and why.
 pub fn in_every_number(robot: &Robot, kind: usize) -> Result<Vec<Box<dyn Machine>>, Refused> {
-    Ok(vec![
-        of_kind::<Float32>(robot, kind)?,
-        of_kind::<Coarse>(robot, kind)?,
-        of_kind::<Fixed32>(robot, kind)?,
-        of_kind::<Float64>(robot, kind)?,
-    ])
+    let needed = |name: &str| {
+        name == Float64::NAME || robot.firmware.numbers.iter().any(|number| number.name() == name)
+    };
+    let made = [
+        of_kind::<Float32>(robot, kind),
+        of_kind::<Coarse>(robot, kind),
+        of_kind::<Fixed32>(robot, kind),
+        of_kind::<Fixed16>(robot, kind),
+        of_kind::<Float64>(robot, kind),
+    ];
+    made.into_iter()
+        .zip(NUMBERS)
+        .filter(|(made, name)| made.is_ok() || needed(name))
+        .map(|(made, _)| made)
+        .collect()
 }
 
 fn of_kind<N: Number + Send + Sync>(robot: &Robot, kind: usize) -> Result<Box<dyn Machine>, Refused>

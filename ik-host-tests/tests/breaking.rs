@@ -21,6 +21,9 @@ type ChangeAnswer = fn([f64; 3], Told) -> Told;
 type ChangeForward = fn(&Leg, &Pose, [f64; 3]) -> [f64; 3];
 type ChangeMounting = fn(Side, [f64; 3]) -> [f64; 3];
 
+/// What is wrong, and how it is inflicted.
+type Fault = (&'static str, fn(&mut Wrong));
+
 /// A solver with something wrong.
 struct Wrong {
     inner: Box<dyn Solver>,
@@ -52,11 +55,11 @@ impl Solver for Wrong {
     fn forward(&self, pose: &Pose) -> [f64; 3] {
         (self.forward)(&self.claimed, pose, self.inner.forward(pose))
     }
-    fn from_body(&self, at: [f64; 3], side: Side, foot: [f64; 3]) -> [f64; 3] {
-        (self.mounting)(side, self.inner.from_body(at, side, foot))
+    fn seen_from_body(&self, at: [f64; 3], side: Side, foot: [f64; 3]) -> [f64; 3] {
+        (self.mounting)(side, self.inner.seen_from_body(at, side, foot))
     }
-    fn to_body(&self, at: [f64; 3], side: Side, foot: [f64; 3]) -> [f64; 3] {
-        self.inner.to_body(at, side, foot)
+    fn seen_by_body(&self, at: [f64; 3], side: Side, foot: [f64; 3]) -> [f64; 3] {
+        self.inner.seen_by_body(at, side, foot)
     }
 }
 
@@ -75,7 +78,7 @@ fn sound(number: NumberSystem, leg: &Leg, ranges: Option<[[f64; 2]; 3]>) -> Wron
 fn told_apart(
     leg: &Leg,
     ranges: Option<[[f64; 2]; 3]>,
-    faults: &[(&str, fn(&mut Wrong))],
+    faults: &[Fault],
     check: impl Fn(&dyn Solver) -> Result<(), String>,
 ) {
     for number in NumberSystem::ALL {
@@ -93,7 +96,7 @@ const ORCHARD_FOOT: [f64; 3] = [40.0, 60.0, -140.0];
 const CULVERT_FOOT: [f64; 3] = [40.0, 130.0, -70.0];
 const OUT_OF_REACH: [f64; 3] = [120.0, 60.0, -210.0];
 
-const WRONG_ANSWERS: [(&str, fn(&mut Wrong)); 6] = [
+const WRONG_ANSWERS: [Fault; 6] = [
     ("the hip's sign flipped", |wrong| {
         wrong.answer = |_, told| Told { pose: Pose { hip: -told.pose.hip, ..told.pose }, ..told };
     }),
@@ -122,7 +125,7 @@ fn a_wrong_inverse_does_not_come_back() {
     told_apart(&ORCHARD, None, &WRONG_ANSWERS, |solver| round_trip::check(solver, ORCHARD_FOOT));
     told_apart(&CULVERT, None, &WRONG_ANSWERS, |solver| round_trip::check(solver, CULVERT_FOOT));
     // Moved although it is within reach, or held although nothing holds.
-    let outcomes: [(&str, fn(&mut Wrong)); 1] = [("held by nothing", |wrong| {
+    let outcomes: [Fault; 1] = [("held by nothing", |wrong| {
         wrong.answer = |_, told| Told { outcome: Outcome::Held(Held::default()), ..told };
     })];
     told_apart(&ORCHARD, None, &outcomes, |solver| round_trip::check(solver, ORCHARD_FOOT));
@@ -130,7 +133,7 @@ fn a_wrong_inverse_does_not_come_back() {
 
 #[test]
 fn a_wrong_forward_does_not_come_back() {
-    let faults: [(&str, fn(&mut Wrong)); 3] = [
+    let faults: [Fault; 3] = [
         ("sine and cosine of the hip swapped", |wrong| {
             wrong.forward = |leg, pose, _| transforms::foot(leg, &Pose { hip: PI / 2.0 - pose.hip, ..*pose });
         }),
@@ -148,10 +151,8 @@ fn a_wrong_forward_does_not_come_back() {
 fn an_error_of_a_few_bounds_is_noticed() {
     for number in NumberSystem::ALL {
         let check = |leg: &Leg, foot: [f64; 3]| {
-            let mut wrong = sound(number, leg, None);
-            wrong.answer = |_, told| told;
             let bound = number.bounds().angle;
-            let off = Off { inner: wrong, by: 3.0 * bound };
+            let off = Off { inner: sound(number, leg, None), by: 3.0 * bound };
             assert!(round_trip::check(&off, foot).is_err(), "{number:?}: {bound:e} thrice went unnoticed");
         };
         check(&ORCHARD, ORCHARD_FOOT);
@@ -188,17 +189,17 @@ impl Solver for Off {
     fn forward(&self, pose: &Pose) -> [f64; 3] {
         self.inner.forward(pose)
     }
-    fn from_body(&self, at: [f64; 3], side: Side, foot: [f64; 3]) -> [f64; 3] {
-        self.inner.from_body(at, side, foot)
+    fn seen_from_body(&self, at: [f64; 3], side: Side, foot: [f64; 3]) -> [f64; 3] {
+        self.inner.seen_from_body(at, side, foot)
     }
-    fn to_body(&self, at: [f64; 3], side: Side, foot: [f64; 3]) -> [f64; 3] {
-        self.inner.to_body(at, side, foot)
+    fn seen_by_body(&self, at: [f64; 3], side: Side, foot: [f64; 3]) -> [f64; 3] {
+        self.inner.seen_by_body(at, side, foot)
     }
 }
 
 #[test]
 fn a_mounting_that_does_not_mirror_is_noticed() {
-    let faults: [(&str, fn(&mut Wrong)); 2] = [
+    let faults: [Fault; 2] = [
         ("right legs not mirrored", |wrong| {
             wrong.mounting = |side, [x, y, z]| if side == Side::Right { [x, -y, z] } else { [x, y, z] };
         }),
@@ -210,7 +211,7 @@ fn a_mounting_that_does_not_mirror_is_noticed() {
 
 #[test]
 fn a_joint_that_jumps_is_noticed() {
-    let faults: [(&str, fn(&mut Wrong)); 2] = [
+    let faults: [Fault; 2] = [
         ("a jump of the hip half way", |wrong| {
             wrong.answer = |[x, ..], told| {
                 let hip = told.pose.hip + if x > 20.0 { 0.3 } else { 0.0 };
@@ -234,7 +235,7 @@ const HOLD: Pose = Pose { hip: 0.1, thigh: -0.2, knee: 0.5 };
 #[test]
 fn an_answer_that_is_none_is_noticed() {
     let ranges = Some([[-45.0, 45.0], [-80.0, 80.0], [5.0, 150.0]]);
-    let faults: [(&str, fn(&mut Wrong)); 5] = [
+    let faults: [Fault; 5] = [
         ("NaN for an angle", |wrong| {
             wrong.answer = |_, told| Told { pose: Pose { hip: f64::NAN, ..told.pose }, ..told };
         }),
@@ -250,7 +251,7 @@ fn an_answer_that_is_none_is_noticed() {
 
 #[test]
 fn a_foot_that_is_not_finite_must_be_reported_and_the_pose_kept() {
-    let faults: [(&str, fn(&mut Wrong)); 2] = [
+    let faults: [Fault; 2] = [
         ("NaN called reached", |wrong| {
             wrong.answer = |_, told| Told { outcome: Outcome::Reached, ..told };
         }),
@@ -273,7 +274,7 @@ fn a_foot_that_is_not_finite_must_be_reported_and_the_pose_kept() {
 fn a_wrong_word_on_limits_is_noticed() {
     // The knee of this foot bends farther than it may, at its upper end.
     let ranges = Some([[-45.0, 45.0], [-80.0, 80.0], [5.0, 60.0]]);
-    let faults: [(&str, fn(&mut Wrong)); 5] = [
+    let faults: [Fault; 5] = [
         ("an angle beyond its range", |wrong| {
             wrong.answer = |_, told| Told { pose: Pose { knee: told.pose.knee + 0.1, ..told.pose }, ..told };
         }),
@@ -304,10 +305,11 @@ fn a_wrong_word_on_limits_is_noticed() {
         ));
     }
     told_apart(&ORCHARD, ranges, &faults, |solver| {
-        limits::check(solver, &*core(solver.number(), &ORCHARD, None).expect("a leg"), ORCHARD_FOOT)
+        let by_knee = Some([[-180.0, 180.0], [-180.0, 180.0], [5.0, 60.0]]);
+        limits::check(solver, &*core(solver.number(), &ORCHARD, by_knee).expect("a leg"), ORCHARD_FOOT)
     });
     // And held, said of a foot that was not.
-    let faults: [(&str, fn(&mut Wrong)); 1] = [("not held, but said", |wrong| {
+    let faults: [Fault; 1] = [("not held, but said", |wrong| {
         wrong.answer = |_, told| {
             let held = Held { knee: Some(End::Least), ..Held::default() };
             Told { outcome: Outcome::Held(held), ..told }
@@ -320,7 +322,7 @@ fn a_wrong_word_on_limits_is_noticed() {
 
 #[test]
 fn a_point_that_is_not_the_closest_is_noticed() {
-    let faults: [(&str, fn(&mut Wrong)); 4] = [
+    let faults: [Fault; 4] = [
         ("a point beside the closest", |wrong| {
             wrong.answer = |_, told| Told { pose: Pose { hip: told.pose.hip + 0.2, ..told.pose }, ..told };
         }),
@@ -333,7 +335,7 @@ fn a_point_that_is_not_the_closest_is_noticed() {
         ("a wrong distance", |wrong| wrong.answer = |_, told| Told { off_by: 0.5 * told.off_by, ..told }),
     ];
     told_apart(&ORCHARD, None, &faults, |solver| reach::check(solver, OUT_OF_REACH));
-    let faults: [(&str, fn(&mut Wrong)); 1] = [("the inner end instead of the outer", |wrong| {
+    let faults: [Fault; 1] = [("the inner end instead of the outer", |wrong| {
         wrong.answer = |_, told| Told { pose: Pose { knee: PI, ..told.pose }, ..told };
     })];
     told_apart(&CULVERT, None, &faults, |solver| reach::check(solver, [0.0, 300.0, 0.0]));
@@ -343,7 +345,7 @@ fn a_point_that_is_not_the_closest_is_noticed() {
 fn a_published_pose_catches_a_wrong_solver() {
     let (leg, published) = leg_poses().into_iter().find(|(_, p)| p.name == "R04 Forward").expect("row R04");
     told_apart(&leg, None, &WRONG_ANSWERS, |solver| published_pose::check(solver, &published));
-    let forward: [(&str, fn(&mut Wrong)); 1] = [("a forward with the hip's sign flipped", |wrong| {
+    let forward: [Fault; 1] = [("a forward with the hip's sign flipped", |wrong| {
         wrong.forward = |leg, pose, _| transforms::foot(leg, &Pose { hip: -pose.hip, ..*pose });
     })];
     told_apart(&leg, None, &forward, |solver| published_pose::check(solver, &published));
@@ -355,10 +357,13 @@ fn a_published_pose_catches_a_wrong_solver() {
     }
 }
 
+/// An angle, its pulse and whether it was held, to another pulse and word.
+type ChangeCommand = fn(f64, Pulse, Option<End>) -> (Pulse, Option<End>);
+
 /// A servo with something wrong.
 struct WrongServo {
     inner: Box<dyn ServoModel>,
-    change: fn(f64, Pulse, Option<End>) -> (Pulse, Option<End>),
+    change: ChangeCommand,
     back: fn(f64) -> f64,
 }
 
@@ -386,7 +391,6 @@ impl ServoModel for WrongServo {
 
 #[test]
 fn a_wrong_servo_is_noticed() {
-    type Change = fn(f64, Pulse, Option<End>) -> (Pulse, Option<End>);
     let check = |servo: &dyn ServoModel| {
         [-1.0, -0.5, 0.0, 0.3, 0.5, 1.0].into_iter().try_for_each(|angle| {
             servo_checks::check(servo, angle)?;
@@ -394,7 +398,7 @@ fn a_wrong_servo_is_noticed() {
             servo_checks::check_monotone(servo, angle, angle + 0.05)
         })
     };
-    let faults: [(&str, Change); 5] = [
+    let faults: [(&str, ChangeCommand); 5] = [
         ("the gain's sign flipped", |_, pulse, held| (Pulse::from_us(3000.0 - pulse.us()), held)),
         ("a pulse beyond the range", |_, pulse, held| {
             (if held == Some(End::Most) { Pulse::from_us(2100.0) } else { pulse }, held)

@@ -71,7 +71,7 @@ fn every_row_holds_in_single_precision() {
 
 #[test]
 fn every_row_holds_in_fixed_point() {
-    table_holds::<Fixed32>(5e-8, 6e-9);
+    table_holds::<Fixed32>(3e-7, 6e-9);
 }
 
 #[test]

@@ -34,7 +34,7 @@ fn right_legs_of_the_file_are_mounted_right() {
         let [x, y, z] = published.foot;
         for number in NumberSystem::ALL {
             let solver = core(number, leg, None).expect("a leg");
-            let seen = solver.from_body([0.0; 3], Side::Right, [x, -y, z]);
+            let seen = solver.seen_from_body([0.0; 3], Side::Right, [x, -y, z]);
             let told = solver.solve(seen, Pose::default());
             let off = told.pose.largest_difference(&published.pose);
             assert!(off <= number.bounds().angle, "{}: {number:?}: {off:e}", published.name);

@@ -31,7 +31,7 @@ fn check(output: &impl Output, hardware: &Hardware, pulse: Pulse, count: u32) ->
     output::check(output, hardware, pulse)?;
     output::check_back(output, hardware, count)?;
     // Pulses at the border between two counts, where rounding is decided.
-    let border = output.pulse(count).steps() + (32_768.0 * output.count_us()) as u32;
+    let border = output.pulse(count).steps().saturating_add((32_768.0 * output.count_us()) as u32);
     for steps in border.saturating_sub(2)..=border.saturating_add(2) {
         output::check(output, hardware, Pulse::from_steps(steps))?;
     }

@@ -7,8 +7,8 @@ use common::effort::cases;
 use ik_core::queue::FootQueue;
 use ik_core::robot::Robot;
 use ik_core::{
-    Bend, Dimensions, Fixed32, Float32, Foot, Joints, Leg, Limb, Mounting, Number, Outcome, RollHip, Servo,
-    ServoSpec, Side, YawHip,
+    Bend, Dimensions, Fixed32, Float32, Foot, Joints, Leg, Limb, Limits, Mounting, Number, Outcome, RollHip,
+    Servo, ServoSpec, Side, YawHip,
 };
 use proptest::prelude::*;
 use std::collections::VecDeque;
@@ -53,8 +53,8 @@ proptest! {
 
 /// Four yaw-hip limbs around the body.
 fn limbs<N: Number>() -> [Limb<YawHip, N>; 4] {
-    let leg = Leg::from_dimensions(Dimensions::yaw_hip(42.0, 71.0, 118.0, Bend::Up).expect("measures"))
-        .expect("a leg");
+    let dimensions = Dimensions::yaw_hip(42.0, 71.0, 118.0, Bend::Up).expect("measures");
+    let leg = Leg::from_dimensions(dimensions, Limits::FREE).expect("a leg");
     let servos = [Servo::from_spec(ServoSpec::COMMON).expect("a servo"); 3];
     [(80.0, 60.0), (-80.0, 60.0), (80.0, -60.0), (-80.0, -60.0)].map(|(x, y)| {
         let side = if y > 0.0 { Side::Left } else { Side::Right };

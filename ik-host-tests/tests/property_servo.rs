@@ -93,7 +93,7 @@ fn the_bounds_of_pulses_hold_over_a_dense_sweep_and_are_no_larger_than_they_need
         let bound = number.bounds().servo;
         let mut sweep = Sweep::from_seed(9);
         let (mut pulse_error, mut back) = (0.0f64, 0.0f64);
-        for _ in 0..rounds(300) {
+        for _ in 0..rounds(2_000) {
             let spec = spec_of([0; 6].map(|_| sweep.within(0.0, 1.0)), sweep.bits() & 1 == 0);
             let servo = core(number, spec).expect("a servo");
             let steps_of_a_radian = 65_536.0 * spec.us_per_degree.to_degrees();

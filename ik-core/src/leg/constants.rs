@@ -59,7 +59,8 @@ macro_rules! constants {
         let (dimensions, limits) = ($dimensions, $limits);
         let (offset, thigh, shank) = (dimensions.offset_mm(), dimensions.thigh_mm(), dimensions.shank_mm());
         let radius = dimensions.radius_mm();
-        match <$number>::scale_for(radius) {
+        let reach = thigh + shank;
+        match <$number>::scale_for_links(radius, reach * reach / (2.0 * shank)) {
             None => Err(if radius < 1.0 {
                 $crate::geometry::GeometryError::TooShort
             } else {
@@ -93,11 +94,11 @@ macro_rules! constants {
                     shank: <$number>::coord_from_mm(shank, scale),
                     twice_thigh: <$number>::coord_from_mm(2.0 * thigh, scale),
                     straight: $crate::leg::constants::ThighEnd {
-                        lean: <$number>::ratio_from(reach / (2.0 * shank)),
+                        lean: <$number>::lean_from(reach / (2.0 * shank), scale),
                         norm: <$number>::product_from_mm(reach * reach / (2.0 * shank), scale),
                     },
                     folded: $crate::leg::constants::ThighEnd {
-                        lean: <$number>::ratio_from((thigh - shank) / (2.0 * shank)),
+                        lean: <$number>::lean_from((thigh - shank) / (2.0 * shank), scale),
                         norm: <$number>::product_from_mm(
                             (thigh - shank) * (thigh - shank) / (2.0 * shank),
                             scale,

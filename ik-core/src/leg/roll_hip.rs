@@ -87,10 +87,11 @@ fn at_depth<N: Number>(
 /// The foot scaled onto a sphere around the origin, if that keeps it clear of the cylinder.
 fn scaled<N: Number>(
     leg: &Constants<N>,
-    [x, y, z]: [N::Coord; 3],
+    foot: [N::Coord; 3],
     radius: N::Coord,
     n: N::Square,
 ) -> Option<Plane<N>> {
+    let [x, y, z] = N::enlarged(foot);
     let square = N::square(x, leg.scale) + N::square(y, leg.scale) + N::square(z, leg.scale);
     let norm = N::root(square, leg.scale);
     if !(norm > N::NO_COORD) {
@@ -120,6 +121,7 @@ fn on_the_cylinder<N: Number>(
     } else {
         (ahead, within(leg, leg.reach_square - N::square(ahead, leg.scale)), None)
     };
+    let [y, z, _] = N::enlarged([y, z, N::NO_COORD]);
     let radial = N::root(N::square(y, leg.scale) + N::square(z, leg.scale), leg.scale);
     let plane = Plane {
         hip: Angle(N::angle(N::widen(z), N::widen(y), N::widen(radial))),

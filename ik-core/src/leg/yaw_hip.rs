@@ -45,6 +45,7 @@ impl Stage for YawHip {
     ) -> (Plane<N>, Option<End>) {
         let radial = N::root(N::square(x, leg.scale) + N::square(y, leg.scale), leg.scale);
         let along = radial - N::halve(leg.offset, halvings);
+        let [along, z, _] = N::enlarged([along, z, N::NO_COORD]);
         let gap = N::root(N::square(along, leg.scale) + N::square(z, leg.scale), leg.scale);
         let (circle, n, end) = if beyond == Beyond::Outer {
             (leg.outer, leg.straightest, End::Least)

@@ -70,6 +70,10 @@ impl Fixed32 {
         Some(FixedScale { shift, factor: 1 << shift, limit: COORD_LIMIT >> shift })
     }
 
+    pub(crate) const fn scale_for_links(radius_mm: f64, _: f64) -> Option<FixedScale> {
+        Self::scale_for(radius_mm)
+    }
+
     pub(crate) const fn coord_from_mm(mm: f64, scale: FixedScale) -> i32 {
         nearest_i32(mm * scale.units_per_mm())
     }
@@ -80,6 +84,10 @@ impl Fixed32 {
 
     pub(crate) const fn ratio_from(value: f64) -> i32 {
         nearest_i32(value * power_of_two(RATIO_BITS as i32))
+    }
+
+    pub(crate) const fn lean_from(value: f64, _: FixedScale) -> i32 {
+        Self::ratio_from(value)
     }
 
     pub(crate) const fn product_from_mm(mm: f64, scale: FixedScale) -> i64 {

@@ -107,6 +107,10 @@ impl<M: FloatMaths> Float<M> {
         })
     }
 
+    pub(crate) const fn scale_for_links(radius_mm: f64, _: f64) -> Option<FloatScale> {
+        Self::scale_for(radius_mm)
+    }
+
     pub(crate) const fn coord_from_mm(mm: f64, _: FloatScale) -> f32 {
         mm as f32
     }
@@ -117,6 +121,10 @@ impl<M: FloatMaths> Float<M> {
 
     pub(crate) const fn ratio_from(value: f64) -> f32 {
         value as f32
+    }
+
+    pub(crate) const fn lean_from(value: f64, _: FloatScale) -> f32 {
+        Self::ratio_from(value)
     }
 
     pub(crate) const fn product_from_mm(mm: f64, _: FloatScale) -> f32 {
@@ -310,7 +318,7 @@ impl<M: FloatMaths> Number for Float<M> {
     fn angle(y: f32, x: f32, norm: f32) -> f32 {
         // A hair, so that the zero vector has an angle: 0. Rounding may leave |y| a last bit above the norm, which costs
         // no more than that bit.
-        let acute = M::double_arc_tangent(y / (norm + x.abs() + f32::MIN_POSITIVE));
+        let acute = M::double_arc_tangent((y / (norm + x.abs() + f32::MIN_POSITIVE)).clamp(-1.0, 1.0));
         if x < 0.0 { obtuse(acute) } else { acute }
     }
 

@@ -40,11 +40,13 @@ pub enum NumberSystem {
     Coarse,
     /// 32-bit fixed point.
     Fixed32,
+    /// 16-bit fixed point, for legs of up to 453 mm.
+    Fixed16,
 }
 
 impl NumberSystem {
     /// Every number system, in the order in which help lists them.
-    pub const ALL: [Self; 3] = [Self::Float32, Self::Coarse, Self::Fixed32];
+    pub const ALL: [Self; 4] = [Self::Float32, Self::Coarse, Self::Fixed32, Self::Fixed16];
 
     /// Its name in a sheet.
     pub const fn name(self) -> &'static str {
@@ -52,6 +54,7 @@ impl NumberSystem {
             Self::Float32 => "float32",
             Self::Coarse => "coarse",
             Self::Fixed32 => "fixed32",
+            Self::Fixed16 => "fixed16",
         }
     }
 }

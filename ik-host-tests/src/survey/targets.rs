@@ -116,7 +116,8 @@ mod tests {
             assert_eq!(whole.len(), 20_000);
             assert!(whole.iter().enumerate().all(|(i, (index, ..))| i as u64 == *index));
             assert!(whole.iter().all(|(_, target, _)| is_within(&robot.kinds[0].work, *target)));
-            assert!(targets.edges() > 100 && targets.grid() > 1000, "{} {}", targets.edges(), targets.grid());
+            // The orchard walker's work volume keeps clear of nearly every edge.
+            assert!(targets.edges() > 10 && targets.grid() > 1000, "{} {}", targets.edges(), targets.grid());
         }
     }
 }

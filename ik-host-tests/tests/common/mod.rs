@@ -6,6 +6,7 @@
 //! | [`servo`] | the same of a servo |
 //! | [`legs`] | legs and targets, drawn by proptest or from a fixed seed |
 //! | [`bounds`] | what each number system promises, as it was measured |
+//! | [`knee_reach`] | the reachable set of a leg whose knee has a range |
 //! | [`sensitivity`] | how fast joints move with the foot |
 //! | [`checks`] | one checker per promise; `breaking.rs` shows that each catches what it is for |
 //! | [`published`] | the tables in `check-values/`, in our frame and signs |
@@ -15,6 +16,7 @@
 pub mod bounds;
 pub mod checks;
 pub mod effort;
+pub mod knee_reach;
 pub mod legs;
 pub mod published;
 pub mod sensitivity;

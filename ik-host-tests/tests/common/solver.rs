@@ -64,9 +64,9 @@ pub trait Solver {
     fn solve(&self, foot: [f64; 3], hold: Pose) -> Told;
     fn forward(&self, pose: &Pose) -> [f64; 3];
     /// A foot on the body as a leg at `at` on that side sees it.
-    fn from_body(&self, at: [f64; 3], side: Side, foot: [f64; 3]) -> [f64; 3];
+    fn seen_from_body(&self, at: [f64; 3], side: Side, foot: [f64; 3]) -> [f64; 3];
     /// And back.
-    fn to_body(&self, at: [f64; 3], side: Side, foot: [f64; 3]) -> [f64; 3];
+    fn seen_by_body(&self, at: [f64; 3], side: Side, foot: [f64; 3]) -> [f64; 3];
 }
 
 /// ik-core's solver for a leg; joint ranges in degrees, free if there are none.
@@ -123,11 +123,11 @@ impl<H: Hip, N: Number> Core<H, N> {
         dimensions: Dimensions<H>,
         ranges: Option<[[f64; 2]; 3]>,
     ) -> Result<Self, GeometryError> {
-        let mut core = ik_core::Leg::from_dimensions(dimensions)?;
-        if let Some([hip, thigh, knee]) = ranges {
-            core = core.with_limits(Limits::from_degrees(hip, thigh, knee).expect("ranges that can be"));
-        }
-        Ok(Self { number, leg, core })
+        let limits = match ranges {
+            Some([hip, thigh, knee]) => Limits::degrees(hip, thigh, knee).expect("ranges that can be"),
+            None => Limits::FREE,
+        };
+        Ok(Self { number, leg, core: ik_core::Leg::from_dimensions(dimensions, limits)? })
     }
 }
 
@@ -161,8 +161,8 @@ impl<H: Hip, N: Number> Solver for Core<H, N> {
         &self.leg
     }
     fn ranges(&self) -> Ranges {
-        let limits = self.core.limits();
-        let [hip, thigh, knee] = [limits.hip(), limits.thigh(), limits.knee()]
+        let ranges = self.core.ranges();
+        let [hip, thigh, knee] = [ranges.hip(), ranges.thigh(), ranges.knee()]
             .map(|range| Range { min: range.least().radians(), max: range.most().radians() });
         Ranges { hip, thigh, knee }
     }
@@ -179,10 +179,10 @@ impl<H: Hip, N: Number> Solver for Core<H, N> {
     fn forward(&self, pose: &Pose) -> [f64; 3] {
         self.core.forward(&joints(pose)).mm()
     }
-    fn from_body(&self, at: [f64; 3], side: Side, mm: [f64; 3]) -> [f64; 3] {
+    fn seen_from_body(&self, at: [f64; 3], side: Side, mm: [f64; 3]) -> [f64; 3] {
         Mounting::<N>::new(foot(at), side).leg_frame(foot(mm)).mm()
     }
-    fn to_body(&self, at: [f64; 3], side: Side, mm: [f64; 3]) -> [f64; 3] {
+    fn seen_by_body(&self, at: [f64; 3], side: Side, mm: [f64; 3]) -> [f64; 3] {
         Mounting::<N>::new(foot(at), side).body_frame(foot(mm)).mm()
     }
 }

@@ -43,15 +43,16 @@ pub(super) const SCALE: [RGBColor; 8] = [
 ];
 
 /// By number system, in the order of [`crate::machine::NUMBERS`].
-pub(super) const NUMBERS: [RGBColor; 4] = [
+pub(super) const NUMBERS: [RGBColor; 5] = [
     RGBColor(0x00, 0x72, 0xb2),
     RGBColor(0xd5, 0x5e, 0x00),
     RGBColor(0x00, 0x9e, 0x73),
+    RGBColor(0x8a, 0x4f, 0x9e),
     RGBColor(0xb9, 0xbe, 0xc4),
 ];
 
 /// What stands for a colour where the screen is dark.
-const DARK: [(RGBColor, &str); 30] = [
+const DARK: [(RGBColor, &str); 31] = [
     (INK, "#d5dbe1"),
     (AXIS, "#8b949e"),
     (GRID, "#2b3138"),
@@ -81,17 +82,19 @@ const DARK: [(RGBColor, &str); 30] = [
     (NUMBERS[0], "#56b4e9"),
     (NUMBERS[1], "#f08a4b"),
     (NUMBERS[2], "#2fc79b"),
-    (NUMBERS[3], "#5c646d"),
+    (NUMBERS[3], "#c79bd6"),
+    (NUMBERS[4], "#5c646d"),
 ];
 
 /// Lines that are dashed, in drawing units.
-const DASHED: [(RGBColor, &str); 6] = [
+const DASHED: [(RGBColor, &str); 7] = [
     (LINKS_REACH, "28 18"),
     (KNEE_REACH, "6 14"),
     (HIP_AXIS, "44 12 8 12"),
     (ALLOWED, "20 14"),
     (NUMBERS[1], "40 14 8 14"),
     (NUMBERS[0], "22 16"),
+    (NUMBERS[3], "10 10"),
 ];
 
 /// A colour as plotters writes it into a drawing.
@@ -163,7 +166,7 @@ mod tests {
         for (colour, least) in [(INK, 4.5), (LABEL, 4.5), (AXIS, 3.0), (LEG, 3.0), (KNEE_REACH, 3.0)]
             .into_iter()
             .chain([(LINKS_REACH, 3.0), (WORK, 3.0), (WORST, 3.0), (ALLOWED, 3.0), (SERVO_USED, 3.0)])
-            .chain([(NUMBERS[0], 3.0), (NUMBERS[1], 3.0), (NUMBERS[2], 3.0)])
+            .chain([(NUMBERS[0], 3.0), (NUMBERS[1], 3.0), (NUMBERS[2], 3.0), (NUMBERS[3], 3.0)])
         {
             assert!(contrast(&hex(colour), &white) >= least, "{} on light", hex(colour));
             assert!(contrast(dark(colour), black) >= least, "{} on dark", dark(colour));

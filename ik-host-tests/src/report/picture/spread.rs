@@ -4,6 +4,7 @@ use super::axis::Axis;
 use super::canvas::{chart, draw, height_around, line};
 use super::palette::{self, NUMBERS, hex};
 use super::{KeyEntry, Mark, Picture, Subject};
+use crate::machine;
 use crate::report::number::millimetres;
 use crate::survey::{Errors, NumberFindings};
 use plotters::prelude::*;
@@ -14,9 +15,11 @@ const LEAST_EXPONENT: i32 = -12;
 const LEAST_SHARE: f64 = 1.0;
 const PLOT_HEIGHT: u32 = 240;
 /// In this order, so that thin dashes come over broad lines where curves coincide.
-const ORDER: [usize; 4] = [3, 2, 0, 1];
+const ORDER: [usize; 5] = [4, 2, 0, 1, 3];
 /// Nominal pixels, in the order of [`crate::machine::NUMBERS`].
-const LINE_WIDTHS: [u32; 4] = [2, 2, 3, 7];
+const LINE_WIDTHS: [u32; 5] = [2, 2, 3, 2, 7];
+/// The number system that is drawn as a bar.
+const YARDSTICK: usize = 4;
 
 /// One of the arithmetic error, one of the error with the pulse.
 pub(super) fn pictures(subject: &Subject<'_>) -> [Picture; 2] {
@@ -25,6 +28,11 @@ pub(super) fn pictures(subject: &Subject<'_>) -> [Picture; 2] {
         picture(subject, "arithmetic and pulse together", |number| &number.together, allowed.with_pulse_mm),
         picture(subject, "arithmetic alone", |number| &number.arithmetic, allowed.arithmetic_mm),
     ]
+}
+
+/// The place of a number system in [`machine::NUMBERS`], which says how it is drawn: a leg may be too long for some.
+fn place(number: &NumberFindings) -> usize {
+    machine::NUMBERS.iter().position(|name| *name == number.number).unwrap_or(YARDSTICK)
 }
 
 fn picture(
@@ -46,8 +54,9 @@ fn picture(
     let drawing = draw(height_around(PLOT_HEIGHT), |area| {
         let chart = chart(area, &x, &y)?;
         let plot = chart.plotting_area();
-        for index in ORDER.into_iter().filter(|index| *index < curves.len()) {
-            let style = line(NUMBERS[index], LINE_WIDTHS[index]);
+        for style in ORDER {
+            let Some(index) = numbers.iter().position(|number| place(number) == style) else { continue };
+            let style = line(NUMBERS[style], LINE_WIDTHS[style]);
             let within = |exponent: f64| exponent.clamp(x.range[0], x.range[1]);
             let points = curves[index].iter().map(|(exponent, share)| (within(*exponent), *share));
             plot.draw(&PathElement::new(points.collect::<Vec<_>>(), style))?;
@@ -62,10 +71,9 @@ fn picture(
     };
     let mut key: Vec<_> = numbers
         .iter()
-        .zip(NUMBERS)
-        .enumerate()
-        .map(|(index, (number, colour))| {
-            entry(if index == 3 { Mark::Bar } else { Mark::Line }, colour, largest(number))
+        .map(|number| {
+            let style = place(number);
+            entry(if style == YARDSTICK { Mark::Bar } else { Mark::Line }, NUMBERS[style], largest(number))
         })
         .collect();
     key.push(entry(Mark::Line, palette::ALLOWED, format!("the sheet allows {} mm", millimetres(allowed_mm))));

@@ -8,17 +8,26 @@ use ik_core::{End, Outcome};
 use ik_host_tests::reference::leg::distance;
 use ik_host_tests::reference::{Pose, Range, transforms};
 
-/// `limited` is `free` with ranges: the same joints where they lie within, the end of the range where they lie
-/// beyond; `Held` exactly then, with the right joint and end; and the distance that is really left.
-pub fn check(limited: &dyn Solver, free: &dyn Solver, foot: [f64; 3]) -> Result<(), String> {
+/// `limited` is `by_knee` with ranges of hip and thigh besides, and `by_knee` keeps what `reach::check` asks of it:
+/// its knee, and its hip and thigh where they lie within, the end of the range where they lie beyond; `Held` exactly
+/// then, with the right joint and end; and the distance that is really left.
+pub fn check(limited: &dyn Solver, by_knee: &dyn Solver, foot: [f64; 3]) -> Result<(), String> {
+    super::reach::check(by_knee, foot)?;
     let foot = limited.quantised(foot);
-    let (told, wanted) = (limited.solve(foot, Pose::default()), free.solve(foot, Pose::default()));
+    let (told, wanted) = (limited.solve(foot, Pose::default()), by_knee.solve(foot, Pose::default()));
     let case = format!("{:?}: {}, foot {foot:?}, told {told:?}", limited.number(), limited.leg());
     let ranges = limited.ranges();
     let (hip, hip_held) = held(wanted.pose.hip, ranges.hip);
     let (thigh, thigh_held) = held(wanted.pose.thigh, ranges.thigh);
-    let (knee, knee_held) = held(wanted.pose.knee, ranges.knee);
+    // A foot within the knee's reach leaves the knee within its range, to the last bit.
+    let (knee, _) = held(wanted.pose.knee, ranges.knee);
+    let knee_held = if let Outcome::Held(held) = wanted.outcome { held.knee } else { None };
     ensure!(told.pose == (Pose { hip, thigh, knee }), "{case}: from {wanted:?} within {ranges:?}");
+    match knee_held {
+        Some(End::Least) => ensure!(knee == ranges.knee.min, "{case}: the knee is not at its least"),
+        Some(End::Most) => ensure!(knee == ranges.knee.max, "{case}: the knee is not at its most"),
+        None => {}
+    }
     let expected = [hip_held, thigh_held, knee_held];
     match told.outcome {
         Outcome::Held(held) => {

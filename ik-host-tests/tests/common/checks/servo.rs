@@ -3,6 +3,7 @@
 use super::ensure;
 use crate::common::servo::ServoModel;
 use ik_core::{End, Pulse, Turns};
+use std::f64::consts::PI;
 
 /// The exact pulse for an angle, µs, before its range holds it: centre + trim ± gain·(angle − joint at centre).
 fn wanted_us(servo: &dyn ServoModel, radians: f64) -> f64 {
@@ -25,7 +26,8 @@ pub fn pulse_error(servo: &dyn ServoModel, radians: f64) -> f64 {
 pub fn there_and_back(servo: &dyn ServoModel, pulse: Pulse) -> Option<f64> {
     let [shortest, longest] = servo.pulse_range();
     let angle = servo.angle(pulse);
-    let turns_freely = angle.abs() < 3.14159;
+    // Where half a turn ends the way back, it ends it exactly.
+    let turns_freely = angle.abs() < PI - 1e-5;
     ((shortest..=longest).contains(&pulse) && turns_freely)
         .then(|| (servo.command(angle).0.us() - pulse.us()).abs() / us_per_radian(servo))
 }
