@@ -25,6 +25,6 @@ pub mod transforms;
 pub use agreement::{
     ANGLE_TOLERANCE, Agreement, Disagreement, FOOT_TOLERANCE, agreement, agreement_of, spread,
 };
-pub use closed_form::{FREE_KNEE, Solution, closest, solve, solve_within};
+pub use closed_form::{ClosedForm, FREE_KNEE, Solution, closest, solve, solve_within};
 pub use leg::{Bend, Held, Leg, Pose, Range, Ranges, Shape, Verdict, clamp};
 pub use transforms::foot;

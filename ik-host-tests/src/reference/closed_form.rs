@@ -48,32 +48,53 @@ pub fn solve(leg: &Leg, target: [f64; 3]) -> Solution {
 /// As [`solve`], for a knee of the given range, which ends the reach where it is narrower than the links do.
 #[must_use]
 pub fn solve_within(leg: &Leg, knee: Range, target: [f64; 3]) -> Solution {
-    if target.iter().any(|c| c.is_nan()) {
-        let pose = Pose::default();
-        return Solution {
-            pose,
-            reached_foot: super::transforms::foot(leg, &pose),
-            moved_by_mm: f64::NAN,
-            verdict: Verdict::NotANumber,
-        };
+    ClosedForm::within(*leg, knee).solve(target)
+}
+
+/// A leg and the ends of its reach, worked out once for many targets.
+#[derive(Clone, Copy, Debug)]
+pub struct ClosedForm {
+    leg: Leg,
+    spans: Spans,
+}
+
+impl ClosedForm {
+    /// For a knee of the given range, which ends the reach where it is narrower than the links do.
+    #[must_use]
+    pub fn within(leg: Leg, knee: Range) -> Self {
+        Self { leg, spans: Spans::of(&leg, knee) }
     }
-    let near = tame(leg, target);
-    let spans = Spans::of(leg, knee);
-    let placed = match leg.shape {
-        Shape::Roll => place_roll(leg, &spans, near),
-        Shape::Yaw => place_yaw(leg, &spans, near),
-    };
-    let corners = corners(leg.thigh, leg.shank, placed.span);
-    let reached_foot = placed.moved_to.unwrap_or(target);
-    Solution {
-        pose: Pose {
-            hip: around_the_circle(placed.hip),
-            thigh: around_the_circle(placed.direction + leg.bend.sign() * corners.hip),
-            knee: corners.flexion,
-        },
-        reached_foot,
-        moved_by_mm: distance(reached_foot, target),
-        verdict: if placed.moved_to.is_some() { Verdict::Moved } else { Verdict::Reached },
+
+    /// Joint angles for `target` (leg frame, millimetres), within reach or not.
+    #[must_use]
+    pub fn solve(&self, target: [f64; 3]) -> Solution {
+        let leg = &self.leg;
+        if target.iter().any(|c| c.is_nan()) {
+            let pose = Pose::default();
+            return Solution {
+                pose,
+                reached_foot: super::transforms::foot(leg, &pose),
+                moved_by_mm: f64::NAN,
+                verdict: Verdict::NotANumber,
+            };
+        }
+        let near = tame(leg, target);
+        let placed = match leg.shape {
+            Shape::Roll => place_roll(leg, &self.spans, near),
+            Shape::Yaw => place_yaw(leg, &self.spans, near),
+        };
+        let corners = corners(leg.thigh, leg.shank, placed.span);
+        let reached_foot = placed.moved_to.unwrap_or(target);
+        Solution {
+            pose: Pose {
+                hip: around_the_circle(placed.hip),
+                thigh: around_the_circle(placed.direction + leg.bend.sign() * corners.hip),
+                knee: corners.flexion,
+            },
+            reached_foot,
+            moved_by_mm: distance(reached_foot, target),
+            verdict: if placed.moved_to.is_some() { Verdict::Moved } else { Verdict::Reached },
+        }
     }
 }
 
@@ -137,6 +158,7 @@ struct Placed {
 }
 
 /// The ends of the span that two links and the knee's range allow, and their squares.
+#[derive(Clone, Copy, Debug)]
 struct Spans {
     shortest: Doubled,
     longest: Doubled,

@@ -1,7 +1,7 @@
 //! One target in one number system, judged.
 
 use crate::machine::{Answered, Commanded, Refused, judged_leg, judged_ranges};
-use crate::reference::{self, Leg, Pose, Ranges, closed_form, leg::distance};
+use crate::reference::{self, ClosedForm, Leg, Pose, Ranges, leg::distance};
 use crate::sheet::Robot;
 use ik_core::Outcome;
 
@@ -10,6 +10,7 @@ use ik_core::Outcome;
 pub struct Judge {
     leg: Leg,
     ranges: Ranges,
+    inverse: ClosedForm,
     commanded: Commanded,
 }
 
@@ -52,9 +53,11 @@ impl Judge {
     /// What the output refuses.
     pub fn of(robot: &Robot, kind: usize) -> Result<Self, Refused> {
         let sheet = &robot.kinds[kind];
+        let (leg, ranges) = (judged_leg(sheet), judged_ranges(sheet));
         Ok(Self {
-            leg: judged_leg(sheet),
-            ranges: judged_ranges(sheet),
+            leg,
+            ranges,
+            inverse: ClosedForm::within(leg, ranges.knee),
             commanded: Commanded::of(robot, kind)?,
         })
     }
@@ -66,7 +69,7 @@ impl Judge {
 
     /// What the reference says of a foot (leg frame, mm).
     pub fn judge(&self, foot_mm: [f64; 3]) -> Judged {
-        let solution = closed_form::solve_within(&self.leg, self.ranges.knee, foot_mm);
+        let solution = self.inverse.solve(foot_mm);
         let (pose, held) = reference::clamp(&solution.pose, &self.ranges);
         let reached = solution.verdict == reference::Verdict::Reached && !held.any();
         let off_by_mm = if reached {

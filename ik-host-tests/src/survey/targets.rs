@@ -18,15 +18,17 @@ pub struct Targets {
     seed: u64,
 }
 
-/// The share of the targets that go to edges, at most, and to the grid.
+/// The share of the targets that go to edges, at most, and how many at most, because they are found by trying.
 const EDGE_SHARE: u64 = 8;
+const MOST_EDGES: u64 = 150_000;
+/// The share that goes to the grid.
 const GRID_SHARE: u64 = 4;
 
 impl Targets {
     /// For a kind of leg.
     pub fn of(kind: &LegKind, plan: Plan) -> Self {
         let mut random = Xoshiro256PlusPlus::seed_from_u64(plan.seed);
-        let most = usize::try_from(plan.targets / EDGE_SHARE).unwrap_or(usize::MAX);
+        let most = usize::try_from((plan.targets / EDGE_SHARE).min(MOST_EDGES)).unwrap_or(usize::MAX);
         let edges = edges::of(kind, most, &mut random);
         let left = plan.targets.saturating_sub(edges.len() as u64);
         // The largest cube that fits the grid's share.
