@@ -4,6 +4,7 @@
 //! on a chip with or without an FPU. No allocation, no `unsafe`, no panic, and an answer for every input.
 //!
 //! ```
+//! # #[cfg(feature = "fixed32")] {
 //! use ik_core::{Bend, Dimensions, Fixed32, Foot, Joints, Leg, Limits, Outcome, RollHip};
 //!
 //! type OrchardLeg = Leg<RollHip, Fixed32>;
@@ -19,6 +20,7 @@
 //! let answer = LEG.solve(Foot::from_mm(40.0, 31.5, -160.0), Joints::ZERO);
 //! assert_eq!(answer.outcome, Outcome::Reached);
 //! assert!((answer.joints.knee.degrees() - 69.894111).abs() < 1e-4);
+//! # }
 //! ```
 //!
 //! # The way of a foot

@@ -10,6 +10,7 @@ pub type Feet<N, const LEGS: usize> = [Foot<N>; LEGS];
 /// A queue of `SLOTS` − 1 frames' feet between one sender and one receiver.
 ///
 /// ```
+/// # #[cfg(feature = "fixed32")] {
 /// use ik_core::queue::FootQueue;
 /// use ik_core::{Fixed32, Foot};
 ///
@@ -19,6 +20,7 @@ pub type Feet<N, const LEGS: usize> = [Foot<N>; LEGS];
 /// planner.send([Foot::from_mm(0.0, 31.5, -160.0)]).unwrap();
 /// assert!(frame.next().is_some());
 /// assert!(frame.next().is_some()); // the queue is empty: the last feet stand
+/// # }
 /// ```
 #[derive(Debug)]
 pub struct FootQueue<N: Number, const LEGS: usize, const SLOTS: usize>(Queue<Feet<N, LEGS>, SLOTS>);

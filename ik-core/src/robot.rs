@@ -10,10 +10,13 @@ use heapless::Vec;
 /// Up to `LEGS` limbs of one shape, and the pose that each was last commanded.
 ///
 /// ```
+/// # #[cfg(not(feature = "fixed32"))]
+/// # fn main() {}
+/// # #[cfg(feature = "fixed32")]
+/// # fn main() -> Result<(), Box<dyn core::error::Error>> {
 /// use ik_core::robot::Robot;
 /// use ik_core::{Bend, Dimensions, Fixed32, Foot, Leg, Limb, Limits, Mounting, Outcome, Servo, ServoSpec, Side};
 ///
-/// # fn main() -> Result<(), Box<dyn core::error::Error>> {
 /// let leg = Leg::<_, Fixed32>::new(Dimensions::yaw_hip(42.0, 71.0, 118.0, Bend::Up)?, Limits::FREE)?;
 /// let servos = [Servo::<Fixed32>::new(ServoSpec::COMMON)?; 3];
 /// let mut robot = Robot::<_, Fixed32, 6>::new();
