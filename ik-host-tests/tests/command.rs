@@ -45,6 +45,20 @@ fn a_survey_of_the_demo_robots_is_within_and_writes_its_reports() {
 }
 
 #[test]
+fn a_demo_robot_is_known_by_its_name() {
+    let out = toehold(&["solve", "orchard-walker", "--foot", "40,31.5,-160"]);
+    assert_eq!(out.status.code(), Some(0), "{}", text(&out.stderr));
+    assert!(text(&out.stdout).contains("orchard walker, leg"), "{}", text(&out.stdout));
+    let out = toehold(&["solve", "orchad-walker", "--foot", "40,31.5,-160"]);
+    assert_eq!(out.status.code(), Some(2));
+    assert!(
+        text(&out.stderr).contains("the demo robots are: culvert-walker, orchard-walker"),
+        "{}",
+        text(&out.stderr)
+    );
+}
+
+#[test]
 fn fixed_and_float_stay_below_a_hundredth_of_a_millimetre_on_both_demo_robots() {
     let out = toehold(&["survey", "--targets", "50000", "--no-report", "--json"]);
     let json: Value = serde_json::from_slice(&out.stdout).unwrap();

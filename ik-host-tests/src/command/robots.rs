@@ -3,7 +3,7 @@
 use super::ending::Ending;
 use crate::sheet::{self, DEMOS, Robot};
 use std::io::IsTerminal as _;
-use std::path::PathBuf;
+use std::path::{Path, PathBuf};
 
 /// Where a robot comes from.
 #[derive(Debug, Clone, PartialEq, Eq)]
@@ -15,6 +15,15 @@ pub(super) enum Source {
 }
 
 impl Source {
+    /// A file of that name if there is one; else the demo robot of that name.
+    fn named(path: &Path) -> Self {
+        let demo = DEMOS.iter().find(|demo| Path::new(demo.name) == path);
+        match demo {
+            Some(demo) if !path.exists() => Self::Demo(demo.name),
+            _ => Self::File(path.to_owned()),
+        }
+    }
+
     /// How a call names it.
     pub(super) fn shown(&self) -> String {
         match self {
@@ -42,15 +51,15 @@ impl Source {
     }
 }
 
-/// The sheet that was named, or every demo robot.
+/// The sheet or demo robot that was named, or every demo robot.
 pub(super) fn named_or_all_demos(sheet: Option<&PathBuf>) -> Vec<Source> {
     match sheet {
-        Some(path) => vec![Source::File(path.clone())],
+        Some(path) => vec![Source::named(path)],
         None => DEMOS.iter().map(|demo| Source::Demo(demo.name)).collect(),
     }
 }
 
-/// The sheet that was named, or the first demo robot.
+/// The sheet or demo robot that was named, or the first demo robot.
 pub(super) fn named_or_first_demo(sheet: Option<&PathBuf>) -> Source {
-    sheet.map_or(Source::Demo(DEMOS[0].name), |path| Source::File(path.clone()))
+    sheet.map_or(Source::Demo(DEMOS[0].name), |path| Source::named(path))
 }

@@ -10,7 +10,7 @@ use std::path::PathBuf;
 /// Solves one foot position in every number system, side by side.
 #[derive(Debug, clap::Args)]
 pub(super) struct Call {
-    /// The robot sheet; without it, the first demo robot
+    /// The robot sheet, or the name of a demo robot; without it, the first demo robot
     #[arg(value_name = "SHEET")]
     sheet: Option<PathBuf>,
     /// The leg, by its name in the sheet; without it, the first

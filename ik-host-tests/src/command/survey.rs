@@ -11,7 +11,7 @@ use std::path::PathBuf;
 /// Surveys the work volume of a robot's legs in every number system: arithmetic error, pulse error, both.
 #[derive(Debug, clap::Args)]
 pub(super) struct Call {
-    /// The robot sheet; without it, the demo robots are surveyed
+    /// The robot sheet, or the name of a demo robot; without it, every demo robot is surveyed
     #[arg(value_name = "SHEET")]
     sheet: Option<PathBuf>,
     /// Targets per kind of leg

@@ -199,7 +199,10 @@ impl SheetErrors {
         match self {
             Self::Faulty(complaints) => complaints.render(colour),
             Self::Unreadable { path, cause } => {
-                format!("error: cannot read the robot sheet `{path}`: {cause}\n")
+                let demos = super::DEMOS.map(|demo| demo.name).join(", ");
+                format!(
+                    "error: cannot read the robot sheet `{path}`: {cause} (the demo robots are: {demos})\n"
+                )
             }
             Self::NoSuchDemo { name, known } => {
                 let meant = super::nearest::nearest(name, known.iter().map(String::as_str))
