@@ -38,6 +38,19 @@ pub(crate) const fn nearest_i32(v: f64) -> i32 {
     }
 }
 
+/// The least and the largest integer within a range; if it holds none, the nearest to its lower end twice.
+#[cfg(any(feature = "fixed16", feature = "fixed32"))]
+pub(crate) const fn inward(least: f64, most: f64) -> [i32; 2] {
+    let (mut low, mut high) = (nearest_i32(least), nearest_i32(most));
+    if (low as f64) < least {
+        low = low.saturating_add(1);
+    }
+    if high as f64 > most {
+        high = high.saturating_sub(1);
+    }
+    if low <= high { [low, high] } else { [nearest_i32(least); 2] }
+}
+
 /// 2^exponent.
 #[cfg(any(feature = "float32", feature = "coarse", feature = "fixed16", feature = "fixed32"))]
 pub(crate) const fn power_of_two(exponent: i32) -> f64 {
@@ -121,6 +134,16 @@ mod tests {
             assert!((half_sine_square(degrees) - want).abs() < 1e-15, "{degrees}");
         }
         assert_eq!(half_sine_square(0.0), 0.0);
+    }
+
+    #[cfg(any(feature = "fixed16", feature = "fixed32"))]
+    #[test]
+    fn ends_of_a_range_are_rounded_inward() {
+        assert_eq!(inward(-2.6, 2.6), [-2, 2]);
+        assert_eq!(inward(-2.4, 2.4), [-2, 2]);
+        assert_eq!(inward(-2.0, 2.0), [-2, 2]);
+        assert_eq!(inward(2.3, 2.4), [2, 2]);
+        assert_eq!(inward(-1e12, 1e12), [i32::MIN, i32::MAX]);
     }
 
     #[test]

@@ -126,6 +126,11 @@ pub trait Number: Copy + Debug + PartialEq + 'static {
     fn unit_from_mm(unit_mm: f64, scale: Self::Scale) -> Self::Unit;
     /// Turns, rounded; saturates just inside ±½.
     fn angle_from_turns(turns: f64) -> Self::Angle;
+    /// The ends of a range of turns, rounded inward, so that no joint goes a hair farther than was allowed; ±½ turn is
+    /// the largest angle there is. A range too narrow for that is the angle nearest to it.
+    fn range_from_turns(range: [f64; 2]) -> [Self::Angle; 2] {
+        range.map(Self::angle_from_turns)
+    }
     /// µs per turn, rounded.
     fn gain_from(us_per_turn: f64) -> Self::Gain;
     /// Turns per µs, rounded.

@@ -43,6 +43,21 @@ proptest! {
     fn ranges_hold_for_any_foot((leg, target) in leg_and_point(), ranges in ranges()) {
         prop_assert_eq!(every_number(&leg, ranges, target), Ok(()));
     }
+
+    /// Not a hair farther than was asked for: what the number system cannot hold exactly is rounded inward.
+    #[test]
+    fn ends_of_ranges_are_rounded_inward(ranges in ranges()) {
+        for number in NumberSystem::ALL {
+            let held = core(number, &ORCHARD, Some(ranges)).expect("a leg").ranges();
+            for (held, [least, most]) in [held.hip, held.thigh, held.knee].into_iter().zip(ranges) {
+                let (min, max) = (held.min.to_degrees(), held.max.to_degrees());
+                // A few last bits of f64 are lost on the way through radians; a range may be too narrow for any angle.
+                let hair = 1e-12;
+                prop_assert!(least - hair <= min && min <= max, "{:?}: {} for {}", number, min, least);
+                prop_assert!(max <= most + hair || min == max, "{:?}: {} for {}", number, max, most);
+            }
+        }
+    }
 }
 
 /// The whole turn and its ends included, the ranges that were asked for are the ones that hold.

@@ -123,10 +123,8 @@ pub(crate) use constants;
 macro_rules! range {
     ($number:ty, $degrees:expr) => {{
         let [least, most] = $degrees;
-        $crate::limits::Range {
-            least: $crate::angle::Angle(<$number>::angle_from_turns(least / 360.0)),
-            most: $crate::angle::Angle(<$number>::angle_from_turns(most / 360.0)),
-        }
+        let [least, most] = <$number>::range_from_turns([least / 360.0, most / 360.0]);
+        $crate::limits::Range { least: $crate::angle::Angle(least), most: $crate::angle::Angle(most) }
     }};
 }
 pub(crate) use range;

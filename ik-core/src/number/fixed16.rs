@@ -16,7 +16,7 @@ mod root;
 mod sine;
 
 use super::{Knee, Number, Placed};
-use crate::const_math::{nearest_i32, power_of_two};
+use crate::const_math::{inward, nearest_i32, power_of_two};
 use fixed::types::{I0F16, I10F6};
 
 /// 16-bit fixed point.
@@ -142,6 +142,11 @@ impl Fixed16 {
         I0F16::from_bits(nearest_i16(turns * power_of_two(16)))
     }
 
+    pub(crate) const fn range_from_turns([least, most]: [f64; 2]) -> [I0F16; 2] {
+        let [low, high] = inward(least * power_of_two(16), most * power_of_two(16));
+        [I0F16::from_bits(nearest_i16(low as f64)), I0F16::from_bits(nearest_i16(high as f64))]
+    }
+
     pub(crate) const fn gain_from(us_per_turn: f64) -> i32 {
         nearest_i32(us_per_turn * power_of_two(GAIN_BITS as i32))
     }
@@ -217,6 +222,9 @@ impl Number for Fixed16 {
     }
     fn angle_from_turns(turns: f64) -> I0F16 {
         Fixed16::angle_from_turns(turns)
+    }
+    fn range_from_turns(range: [f64; 2]) -> [I0F16; 2] {
+        Fixed16::range_from_turns(range)
     }
     fn gain_from(us_per_turn: f64) -> i32 {
         Fixed16::gain_from(us_per_turn)

@@ -11,7 +11,7 @@ mod root;
 mod sine;
 
 use super::{Knee, Number, Placed};
-use crate::const_math::{nearest, nearest_i32, power_of_two};
+use crate::const_math::{inward, nearest, nearest_i32, power_of_two};
 use fixed::types::{I0F32, I16F16};
 
 /// 32-bit fixed point.
@@ -105,6 +105,11 @@ impl Fixed32 {
 
     pub(crate) const fn angle_from_turns(turns: f64) -> I0F32 {
         I0F32::from_bits(nearest_i32(turns * power_of_two(32)))
+    }
+
+    pub(crate) const fn range_from_turns([least, most]: [f64; 2]) -> [I0F32; 2] {
+        let [low, high] = inward(least * power_of_two(32), most * power_of_two(32));
+        [I0F32::from_bits(low), I0F32::from_bits(high)]
     }
 
     pub(crate) const fn gain_from(us_per_turn: f64) -> i32 {
@@ -233,6 +238,9 @@ impl Number for Fixed32 {
     }
     fn angle_from_turns(turns: f64) -> I0F32 {
         Fixed32::angle_from_turns(turns)
+    }
+    fn range_from_turns(range: [f64; 2]) -> [I0F32; 2] {
+        Fixed32::range_from_turns(range)
     }
     fn gain_from(us_per_turn: f64) -> i32 {
         Fixed32::gain_from(us_per_turn)

@@ -144,6 +144,19 @@ impl<M: FloatMaths> Float<M> {
         (turns * core::f64::consts::TAU) as f32
     }
 
+    pub(crate) const fn range_from_turns([least, most]: [f64; 2]) -> [f32; 2] {
+        let tau = core::f64::consts::TAU;
+        let (mut low, mut high) = (Self::angle_from_turns(least), Self::angle_from_turns(most));
+        // The f32 nearest to π lies above it, and stands for it.
+        if least > -0.5 && (low as f64) < least * tau {
+            low = low.next_up();
+        }
+        if most < 0.5 && high as f64 > most * tau {
+            high = high.next_down();
+        }
+        if low <= high { [low, high] } else { [Self::angle_from_turns(least); 2] }
+    }
+
     pub(crate) const fn gain_from(us_per_turn: f64) -> f32 {
         (us_per_turn / core::f64::consts::TAU) as f32
     }
@@ -229,6 +242,9 @@ impl<M: FloatMaths> Number for Float<M> {
     }
     fn angle_from_turns(turns: f64) -> f32 {
         Self::angle_from_turns(turns)
+    }
+    fn range_from_turns(range: [f64; 2]) -> [f32; 2] {
+        Self::range_from_turns(range)
     }
     fn gain_from(us_per_turn: f64) -> f32 {
         Self::gain_from(us_per_turn)
