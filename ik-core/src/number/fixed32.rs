@@ -458,7 +458,7 @@ mod tests {
             // (R − c)² = R² + c² − 2·c·R, the root with 32 fraction bits.
             let root = ((radial_square as u128) << 64).isqrt();
             let twice = (2 * offset as u128 * root) >> 32;
-            let exact = radial_square as i128 + i128::from(offset) * i128::from(offset) - twice as i128;
+            let exact = i128::from(radial_square) + i128::from(offset) * i128::from(offset) - twice as i128;
             worst = worst.max((i128::from(square) - exact).unsigned_abs());
         }
         // Of up to 2^60: for a leg of a metre 4e-6 mm², which a straight knee feels as 4 µrad.
