@@ -27,12 +27,14 @@
 
 mod answer;
 pub(crate) mod constants;
+pub mod drive;
 mod roll_hip;
 mod triangle;
 mod yaw_hip;
 
 pub use crate::limits::Held;
 pub use answer::{Answer, Outcome};
+pub use drive::KneeDrive;
 
 use crate::angle::{Angle, Joints};
 use crate::foot::Foot;
@@ -99,6 +101,7 @@ pub trait Hip: sealed::Stage + Copy + core::fmt::Debug + PartialEq + 'static {
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct Leg<H: Hip, N: Number> {
     constants: Constants<N>,
+    knee_drive: KneeDrive,
     hip: PhantomData<H>,
 }
 
@@ -113,7 +116,7 @@ macro_rules! leg_while_compiling {
             /// If the leg is too long or too short for the number system.
             pub const fn new(dimensions: Dimensions<H>, limits: Limits) -> Result<Self, GeometryError> {
                 match constants!($number, dimensions, limits) {
-                    Ok(constants) => Ok(Self { constants, hip: PhantomData }),
+                    Ok(constants) => Ok(Self { constants, knee_drive: KneeDrive::Direct, hip: PhantomData }),
                     Err(error) => Err(error),
                 }
             }
@@ -134,7 +137,32 @@ impl<H: Hip, N: Number> Leg<H, N> {
     /// # Errors
     /// If the leg is too long or too short for the number system.
     pub fn from_dimensions(dimensions: Dimensions<H>, limits: Limits) -> Result<Self, GeometryError> {
-        constants!(N, dimensions, limits).map(|constants| Self { constants, hip: PhantomData })
+        constants!(N, dimensions, limits).map(|constants| Self {
+            constants,
+            knee_drive: KneeDrive::Direct,
+            hip: PhantomData,
+        })
+    }
+
+    /// The same leg with its knee driven so; a leg is made with [`KneeDrive::Direct`]. Make the leg of a parallelogram
+    /// with [`Limits::through_parallelogram`].
+    pub const fn driven_by(self, knee_drive: KneeDrive) -> Self {
+        Self { knee_drive, ..self }
+    }
+
+    /// What the servo of the knee turns.
+    pub const fn knee_drive(&self) -> KneeDrive {
+        self.knee_drive
+    }
+
+    /// The angles of the three servos: hip, thigh, and knee or shank.
+    #[inline(always)]
+    pub fn servo_angles(&self, joints: &Joints<N>) -> [Angle<N>; 3] {
+        let knee = match self.knee_drive {
+            KneeDrive::Direct => joints.knee,
+            KneeDrive::Parallelogram => drive::shank(joints, self.constants.bends_back),
+        };
+        [joints.hip, joints.thigh, knee]
     }
 
     /// The joint ranges, as the number system holds them.

@@ -88,6 +88,7 @@
 extern crate std;
 
 pub mod angle;
+pub mod channel;
 mod const_math;
 pub mod foot;
 pub mod geometry;
@@ -104,9 +105,10 @@ pub mod robot;
 pub mod servo;
 
 pub use angle::{Angle, Joints};
+pub use channel::{Channel, Counts};
 pub use foot::Foot;
 pub use geometry::{Bend, Dimensions, GeometryError, RollHip, YawHip};
-pub use leg::{Answer, Held, Hip, Leg, Outcome};
+pub use leg::{Answer, Held, Hip, KneeDrive, Leg, Outcome};
 pub use limb::Limb;
 pub use limits::{End, Limits, LimitsError};
 pub use mounting::{Mounting, Side};
@@ -119,5 +121,5 @@ pub use number::Fixed32;
 #[cfg(feature = "float32")]
 pub use number::Float32;
 pub use number::Number;
-pub use output::{Expander, OutputError, Timer};
-pub use servo::{Command, Pulse, Servo, ServoError, ServoSpec, Turns};
+pub use output::{Counting, Expander, OutputError, Timer};
+pub use servo::{Command, Curve, MeasuredServo, Pulse, Servo, ServoError, ServoSpec, Turns};

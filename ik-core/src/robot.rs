@@ -3,8 +3,9 @@
 use crate::angle::Joints;
 use crate::foot::Foot;
 use crate::leg::Hip;
-use crate::limb::{Limb, LimbCommand};
+use crate::limb::{Actuator, Limb, LimbCommand};
 use crate::number::Number;
+use crate::servo::Servo;
 use heapless::Vec;
 
 /// Up to `LEGS` limbs of one shape, and the pose that each was last commanded.
@@ -34,11 +35,11 @@ use heapless::Vec;
 /// # }
 /// ```
 #[derive(Debug, Clone)]
-pub struct Robot<H: Hip, N: Number, const LEGS: usize> {
-    limbs: Vec<(Limb<H, N>, Joints<N>), LEGS>,
+pub struct Robot<H: Hip, N: Number, const LEGS: usize, A: Actuator<N> = Servo<N>> {
+    limbs: Vec<(Limb<H, N, A>, Joints<N>), LEGS>,
 }
 
-impl<H: Hip, N: Number, const LEGS: usize> Robot<H, N, LEGS> {
+impl<H: Hip, N: Number, const LEGS: usize, A: Actuator<N>> Robot<H, N, LEGS, A> {
     /// A robot without legs yet.
     pub const fn new() -> Self {
         Self { limbs: Vec::new() }
@@ -48,7 +49,7 @@ impl<H: Hip, N: Number, const LEGS: usize> Robot<H, N, LEGS> {
     ///
     /// # Errors
     /// Gives the limb back if there are `LEGS` already.
-    pub fn add(&mut self, limb: Limb<H, N>) -> Result<(), Limb<H, N>> {
+    pub fn add(&mut self, limb: Limb<H, N, A>) -> Result<(), Limb<H, N, A>> {
         self.limbs.push((limb, Joints::ZERO)).map_err(|(limb, _)| limb)
     }
 
@@ -59,7 +60,7 @@ impl<H: Hip, N: Number, const LEGS: usize> Robot<H, N, LEGS> {
 
     /// One frame: a foot per leg (body frame), in the order in which they were added, to pulses. A leg without a
     /// foot, or with one that is not finite, keeps its pose; feet without a leg are passed over.
-    pub fn frame(&mut self, feet: &[Foot<N>]) -> Vec<LimbCommand<N>, LEGS> {
+    pub fn frame(&mut self, feet: &[Foot<N>]) -> Vec<LimbCommand<N, A::Command>, LEGS> {
         self.limbs
             .iter_mut()
             .zip(feet)
@@ -72,7 +73,7 @@ impl<H: Hip, N: Number, const LEGS: usize> Robot<H, N, LEGS> {
     }
 }
 
-impl<H: Hip, N: Number, const LEGS: usize> Default for Robot<H, N, LEGS> {
+impl<H: Hip, N: Number, const LEGS: usize, A: Actuator<N>> Default for Robot<H, N, LEGS, A> {
     fn default() -> Self {
         Self::new()
     }

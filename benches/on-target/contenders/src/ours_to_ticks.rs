@@ -2,14 +2,14 @@
 
 use core::marker::PhantomData;
 
-use ik_core::{Answer, Foot, Hip, Joints, Limb, Number};
+use ik_core::{Answer, Channel, Foot, Hip, Joints, Limb, Number};
 use targets::Target;
 
 use crate::contender::{Contender, Named, PublishedHip, To};
-use crate::in_flash::{InFlash, TIMER};
+use crate::in_flash::InFlash;
 use crate::ours::unreached;
 
-/// [`Limb::command`] and the timer's counts.
+/// [`Limb::command`] with its servos on a timer.
 pub struct OursToTicks<H, N>(PhantomData<(H, N)>);
 
 impl<H: Hip + PublishedHip, N: InFlash<H>> Contender for OursToTicks<H, N>
@@ -17,7 +17,7 @@ where
     Self: Named,
 {
     type Hip = H;
-    type Leg = Limb<H, N>;
+    type Leg = Limb<H, N, Channel<N>>;
     type Foot = Foot<N>;
     /// The pose is kept as well: a firmware gives it back with the next foot.
     type Answer = (Answer<N>, [u32; 3]);
@@ -25,7 +25,7 @@ where
     const WHAT: &'static str = <N as Number>::NAME;
     const OURS: bool = true;
     const TO: To = To::Ticks;
-    const LEG: Limb<H, N> = N::LIMB;
+    const LEG: Limb<H, N, Channel<N>> = N::LIMB;
 
     fn foot(target: Target) -> Foot<N> {
         let [x, y, z] = target.map(N::in_steps);
@@ -33,9 +33,9 @@ where
     }
 
     #[inline]
-    fn solve(limb: &Limb<H, N>, foot: &Foot<N>) -> Self::Answer {
+    fn solve(limb: &Limb<H, N, Channel<N>>, foot: &Foot<N>) -> Self::Answer {
         let command = limb.command(*foot, Joints::ZERO);
-        (command.answer, command.counts(&TIMER))
+        (command.answer, command.counts())
     }
 
     fn bits((answer, [hip, thigh, knee]): &Self::Answer) -> [u32; 4] {
