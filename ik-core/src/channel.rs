@@ -21,7 +21,7 @@
 //! point. An angle of `Fixed16` is itself a whole number of 1/65536 turns, of which such a servo has five in a count.
 
 use crate::angle::Angle;
-use crate::limits::End;
+use crate::limits::{End, Held};
 use crate::number::Number;
 use crate::output::Counting;
 use crate::servo::{Curve, ServoError, ServoSpec, Stretch};
@@ -70,14 +70,34 @@ struct Piece<N: Number> {
     until: N::Angle,
 }
 
+impl<N: Number> Piece<N> {
+    /// The counts for an angle, if they lie within.
+    #[inline(always)]
+    fn counts(&self, angle: Angle<N>) -> Option<u32> {
+        let wanted = N::on_line(self.line, angle.0) as u32;
+        // Below the least, this wraps far above.
+        (wanted.wrapping_sub(self.least) <= self.span).then_some(wanted)
+    }
+}
+
 /// What a channel is commanded.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 #[cfg_attr(feature = "defmt", derive(defmt::Format))]
-pub struct Counts {
+pub struct Count {
     /// Ticks of a timer or counts of an expander, always within the channel's range.
     pub counts: u32,
     /// The end of the range at which they were held, if they were.
     pub held: Option<End>,
+}
+
+/// What the three channels of a leg are commanded.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
+pub struct Counts {
+    /// Hip, thigh (femur), knee: ticks of a timer or counts of an expander, always within their ranges.
+    pub counts: [u32; 3],
+    /// Which were held by their ranges, and at which end.
+    pub held: Held,
 }
 
 /// One text for `const fn` and for generic code; see `geometry::constants`.
@@ -176,28 +196,33 @@ impl<N: Number, const BENDS: usize> Channel<N, BENDS> {
     }
 
     /// The counts that put the joint at `angle`, held within the range; monotone in the angle.
+    #[inline]
+    pub fn command(&self, angle: Angle<N>) -> Count {
+        let piece = self.piece(angle);
+        match piece.counts(angle) {
+            Some(counts) => Count { counts, held: None },
+            None => self.held(angle),
+        }
+    }
+
+    /// The piece for an angle.
     #[inline(always)]
-    pub fn command(&self, angle: Angle<N>) -> Counts {
+    fn piece(&self, angle: Angle<N>) -> &Piece<N> {
         let mut piece = &self.last;
         for earlier in self.before.iter().rev() {
             if angle.0 <= earlier.until {
                 piece = earlier;
             }
         }
-        let wanted = N::on_line(piece.line, angle.0);
-        // Below the least, this wraps far above.
-        if (wanted as u32).wrapping_sub(piece.least) <= piece.span {
-            return Counts { counts: wanted as u32, held: None };
-        }
-        self.held(piece, wanted)
+        piece
     }
 
     /// Counts that leave their piece: by rounding where two meet, or by leaving the range.
     #[cold]
     #[inline(never)]
-    fn held(&self, piece: &Piece<N>, wanted: i32) -> Counts {
-        // The range is one of positive `i32`s, but the compiler does not know.
-        let wanted = i64::from(wanted);
+    fn held(&self, angle: Angle<N>) -> Count {
+        let piece = self.piece(angle);
+        let wanted = i64::from(N::on_line(piece.line, angle.0));
         let (least, most) = (i64::from(piece.least), i64::from(piece.least) + i64::from(piece.span));
         let held = if wanted < i64::from(self.least) {
             Some(End::Least)
@@ -206,11 +231,40 @@ impl<N: Number, const BENDS: usize> Channel<N, BENDS> {
         } else {
             None
         };
-        Counts { counts: wanted.max(least).min(most) as u32, held }
+        Count { counts: wanted.max(least).min(most) as u32, held }
     }
 
     /// The least and the most counts that are ever commanded.
     pub const fn range(&self) -> [u32; 2] {
         [self.least, self.most]
+    }
+}
+
+/// The counts of three channels: in one go if none of them leaves its piece.
+#[inline(always)]
+pub(crate) fn three<N: Number, const BENDS: usize>(
+    [hip, thigh, knee]: &[Channel<N, BENDS>; 3],
+    angles: [Angle<N>; 3],
+) -> Counts {
+    let [hip_angle, thigh_angle, knee_angle] = angles;
+    if let Some(hip) = hip.piece(hip_angle).counts(hip_angle)
+        && let Some(thigh) = thigh.piece(thigh_angle).counts(thigh_angle)
+        && let Some(knee) = knee.piece(knee_angle).counts(knee_angle)
+    {
+        return Counts { counts: [hip, thigh, knee], held: Held::NONE };
+    }
+    one_by_one([hip, thigh, knee], angles)
+}
+
+#[cold]
+#[inline(never)]
+fn one_by_one<N: Number, const BENDS: usize>(
+    [hip, thigh, knee]: [&Channel<N, BENDS>; 3],
+    [hip_angle, thigh_angle, knee_angle]: [Angle<N>; 3],
+) -> Counts {
+    let (hip, thigh, knee) = (hip.command(hip_angle), thigh.command(thigh_angle), knee.command(knee_angle));
+    Counts {
+        counts: [hip.counts, thigh.counts, knee.counts],
+        held: Held { hip: hip.held, thigh: thigh.held, knee: knee.held },
     }
 }

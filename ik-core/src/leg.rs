@@ -27,14 +27,12 @@
 
 mod answer;
 pub(crate) mod constants;
-pub mod drive;
 mod roll_hip;
 mod triangle;
 mod yaw_hip;
 
 pub use crate::limits::Held;
 pub use answer::{Answer, Outcome};
-pub use drive::KneeDrive;
 
 use crate::angle::{Angle, Joints};
 use crate::foot::Foot;
@@ -101,7 +99,6 @@ pub trait Hip: sealed::Stage + Copy + core::fmt::Debug + PartialEq + 'static {
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct Leg<H: Hip, N: Number> {
     constants: Constants<N>,
-    knee_drive: KneeDrive,
     hip: PhantomData<H>,
 }
 
@@ -116,7 +113,7 @@ macro_rules! leg_while_compiling {
             /// If the leg is too long or too short for the number system.
             pub const fn new(dimensions: Dimensions<H>, limits: Limits) -> Result<Self, GeometryError> {
                 match constants!($number, dimensions, limits) {
-                    Ok(constants) => Ok(Self { constants, knee_drive: KneeDrive::Direct, hip: PhantomData }),
+                    Ok(constants) => Ok(Self { constants, hip: PhantomData }),
                     Err(error) => Err(error),
                 }
             }
@@ -137,32 +134,13 @@ impl<H: Hip, N: Number> Leg<H, N> {
     /// # Errors
     /// If the leg is too long or too short for the number system.
     pub fn from_dimensions(dimensions: Dimensions<H>, limits: Limits) -> Result<Self, GeometryError> {
-        constants!(N, dimensions, limits).map(|constants| Self {
-            constants,
-            knee_drive: KneeDrive::Direct,
-            hip: PhantomData,
-        })
+        constants!(N, dimensions, limits).map(|constants| Self { constants, hip: PhantomData })
     }
 
-    /// The same leg with its knee driven so; a leg is made with [`KneeDrive::Direct`]. Make the leg of a parallelogram
-    /// with [`Limits::through_parallelogram`].
-    pub const fn driven_by(self, knee_drive: KneeDrive) -> Self {
-        Self { knee_drive, ..self }
-    }
-
-    /// What the servo of the knee turns.
-    pub const fn knee_drive(&self) -> KneeDrive {
-        self.knee_drive
-    }
-
-    /// The angles of the three servos: hip, thigh, and knee or shank.
-    #[inline(always)]
-    pub fn servo_angles(&self, joints: &Joints<N>) -> [Angle<N>; 3] {
-        let knee = match self.knee_drive {
-            KneeDrive::Direct => joints.knee,
-            KneeDrive::Parallelogram => drive::shank(joints, self.constants.bends_back),
-        };
-        [joints.hip, joints.thigh, knee]
+    /// Whether the knee bends backward or down: the shank then swings as thigh and knee together, else as their
+    /// difference.
+    pub(crate) const fn bends_back(&self) -> bool {
+        self.constants.bends_back
     }
 
     /// The joint ranges, as the number system holds them.
@@ -186,24 +164,31 @@ impl<H: Hip, N: Number> Leg<H, N> {
     /// moved outward.
     #[inline]
     pub fn solve(&self, foot: Foot<N>, hold: Joints<N>) -> Answer<N> {
-        // The way of nearly every foot; whatever is unusual about one sends it another way, which decides anew.
-        let leg = &self.constants;
-        if let Some(point) = N::near(foot.lengths(), leg.scale)
-            && let Ok(plane) = H::plane(leg, point)
-        {
-            let (thigh, knee) = triangle::angles(leg, &plane);
-            if leg.ranges.contain(plane.hip.0, thigh, knee) {
-                let joints = Joints { hip: plane.hip, thigh: Angle(thigh), knee: Angle(knee) };
-                return Answer { joints, outcome: Outcome::Reached, off_by: N::NO_LENGTH };
-            }
+        match self.usual(foot) {
+            Some(joints) => Answer::reached(joints),
+            None => self.unusual(foot, hold),
         }
-        self.unusual(foot, hold)
+    }
+
+    /// The way of nearly every foot, which is within reach and asks for nothing beyond the joint ranges; whatever is
+    /// unusual about one sends it to [`unusual`](Leg::unusual), which decides anew.
+    #[inline(always)]
+    pub(crate) fn usual(&self, foot: Foot<N>) -> Option<Joints<N>> {
+        let leg = &self.constants;
+        let point = N::near(foot.lengths(), leg.scale)?;
+        let plane = H::plane(leg, point).ok()?;
+        let (thigh, knee) = triangle::angles(leg, &plane);
+        leg.ranges.contain(plane.hip.0, thigh, knee).then_some(Joints {
+            hip: plane.hip,
+            thigh: Angle(thigh),
+            knee: Angle(knee),
+        })
     }
 
     /// The answer for a foot that is out of reach, held by a joint range, or nowhere.
     #[cold]
     #[inline(never)]
-    fn unusual(&self, foot: Foot<N>, hold: Joints<N>) -> Answer<N> {
+    pub(crate) fn unusual(&self, foot: Foot<N>, hold: Joints<N>) -> Answer<N> {
         let leg = &self.constants;
         let plane = match N::place(foot.lengths(), leg.scale) {
             Placed::Near(point) => match H::plane(leg, point) {
@@ -221,7 +206,7 @@ impl<H: Hip, N: Number> Leg<H, N> {
         if held.any() {
             return self.explained(foot, joints, held);
         }
-        Answer { joints, outcome: Outcome::Reached, off_by: N::NO_LENGTH }
+        Answer::reached(joints)
     }
 
     /// Where the foot is (leg frame) with the joints at the given angles; total, ranges are not looked at.

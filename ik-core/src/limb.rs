@@ -1,96 +1,67 @@
 //! A leg with its servos at its place on the body: a foot on the body's frame to three pulses, or to three counts.
 
-use crate::angle::{Angle, Joints};
-use crate::channel::{Channel, Counts};
+use crate::angle::Joints;
+use crate::channel::Counts;
+use crate::drive::{Drive, Sent};
 use crate::foot::Foot;
 use crate::leg::{Answer, Hip, Leg};
-use crate::limits::End;
 use crate::mounting::Mounting;
 use crate::number::Number;
 use crate::output::Output;
 use crate::servo::{Command, Servo};
 
-/// What a joint's angle is handed to: a [`Servo`], which makes a pulse of it, or a [`Channel`], which makes whole counts
-/// of it at once.
-pub trait Actuator<N: Number>: Copy {
-    /// What it is commanded.
-    type Command: Sent;
-    /// The command that puts the joint at `angle`, or as near as the pulse range allows.
-    fn command(&self, angle: Angle<N>) -> Self::Command;
-}
-
-/// What an actuator is commanded.
-pub trait Sent: Copy {
-    /// The end of the pulse range at which it was held, if it was.
-    fn held(&self) -> Option<End>;
-}
-
-impl<N: Number, const BENDS: usize> Actuator<N> for Servo<N, BENDS> {
-    type Command = Command;
-    #[inline(always)]
-    fn command(&self, angle: Angle<N>) -> Command {
-        Servo::command(self, angle)
-    }
-}
-
-impl<N: Number, const BENDS: usize> Actuator<N> for Channel<N, BENDS> {
-    type Command = Counts;
-    #[inline(always)]
-    fn command(&self, angle: Angle<N>) -> Counts {
-        Channel::command(self, angle)
-    }
-}
-
-impl Sent for Command {
-    #[inline(always)]
-    fn held(&self) -> Option<End> {
-        self.held
-    }
-}
-
-impl Sent for Counts {
-    #[inline(always)]
-    fn held(&self) -> Option<End> {
-        self.held
-    }
-}
-
-/// A leg, its place on the body, and its three servos (hip, thigh, knee): bare ones, or ones on an output
-/// (`Limb<RollHip, Fixed32, Channel<Fixed32>>`), which is the short way to counts. A `const` one lives in flash.
+/// A leg, its place on the body, and what drives it. A `const` one lives in flash.
+///
+/// | `servos` | what comes out |
+/// | --- | --- |
+/// | `[Servo<N>; 3]` | pulses |
+/// | `[Channel<N>; 3]` | counts of a timer or an expander: the short way |
+/// | [`Parallelogram`](crate::drive::Parallelogram) of either | the same, with the knee's servo on the body |
+///
+/// Servos that were measured need room for the bends of their curves: `[Channel<N, 4>; 3]`.
 #[derive(Debug, Clone, Copy, PartialEq)]
-pub struct Limb<H: Hip, N: Number, A: Actuator<N> = Servo<N>> {
+pub struct Limb<H: Hip, N: Number, D: Drive<N> = [Servo<N>; 3]> {
     /// The leg.
     pub leg: Leg<H, N>,
     /// Its place on the body.
     pub mounting: Mounting<N>,
-    /// Hip, thigh (femur), knee; the last one turns the shank if the leg's [`KneeDrive`](crate::KneeDrive) says so.
-    pub servos: [A; 3],
+    /// Hip, thigh (femur), knee.
+    pub servos: D,
 }
 
 /// What a limb is commanded.
 #[derive(Debug, Clone, Copy, PartialEq)]
-pub struct LimbCommand<N: Number, C: Sent = Command> {
+pub struct LimbCommand<N: Number, S: Sent = [Command; 3]> {
     /// Joint angles, and what was done with the foot.
     pub answer: Answer<N>,
     /// Hip, thigh (femur), knee: pulses or counts, and whether one was held by its range.
-    pub commands: [C; 3],
+    pub commands: S,
 }
 
-impl<H: Hip, N: Number, A: Actuator<N>> Limb<H, N, A> {
+impl<H: Hip, N: Number, D: Drive<N>> Limb<H, N, D> {
     /// The commands that put the foot at `foot` (body frame), or as near as reach, joint ranges and pulse ranges
     /// allow; see [`Leg::solve`] for `hold`.
     #[inline]
-    pub fn command(&self, foot: Foot<N>, hold: Joints<N>) -> LimbCommand<N, A::Command> {
-        let answer = self.leg.solve(self.mounting.leg_frame(foot), hold);
+    pub fn command(&self, foot: Foot<N>, hold: Joints<N>) -> LimbCommand<N, D::Sent> {
+        match self.leg.usual(self.mounting.leg_frame(foot)) {
+            Some(joints) => LimbCommand { answer: Answer::reached(joints), commands: self.commands(&joints) },
+            None => self.unusual(&foot, hold),
+        }
+    }
+
+    /// A foot that is unusual, from the start: what the usual way had worked out is not handed over, so that the usual way
+    /// need not keep it.
+    #[cold]
+    #[inline(never)]
+    fn unusual(&self, foot: &Foot<N>, hold: Joints<N>) -> LimbCommand<N, D::Sent> {
+        let answer = self.leg.unusual(self.mounting.leg_frame(*foot), hold);
         LimbCommand { answer, commands: self.commands(&answer.joints) }
     }
 
     /// The commands for joint angles.
-    #[inline]
-    pub fn commands(&self, joints: &Joints<N>) -> [A::Command; 3] {
-        let [hip, thigh, knee] = &self.servos;
-        let [hip_angle, thigh_angle, knee_angle] = self.leg.servo_angles(joints);
-        [hip.command(hip_angle), thigh.command(thigh_angle), knee.command(knee_angle)]
+    #[inline(always)]
+    pub fn commands(&self, joints: &Joints<N>) -> D::Sent {
+        self.servos.send(joints, self.leg.bends_back())
     }
 }
 
@@ -105,20 +76,20 @@ impl<N: Number> LimbCommand<N> {
 impl<N: Number> LimbCommand<N, Counts> {
     /// Hip, thigh (femur), knee: the counts.
     #[inline(always)]
-    pub fn counts(&self) -> [u32; 3] {
-        self.commands.map(|command| command.counts)
+    pub const fn counts(&self) -> [u32; 3] {
+        self.commands.counts
     }
 }
 
-impl<N: Number, C: Sent> LimbCommand<N, C> {
+impl<N: Number, S: Sent> LimbCommand<N, S> {
     /// Whether a pulse was held by its servo's range.
     pub fn pulse_held(&self) -> bool {
-        self.commands.iter().any(|command| command.held().is_some())
+        self.commands.is_held()
     }
 }
 
 #[cfg(feature = "defmt")]
-impl<N: Number, C: Sent + defmt::Format> defmt::Format for LimbCommand<N, C> {
+impl<N: Number, S: Sent + defmt::Format> defmt::Format for LimbCommand<N, S> {
     fn format(&self, f: defmt::Formatter<'_>) {
         defmt::write!(f, "{}; {}", self.answer, self.commands);
     }

@@ -91,7 +91,7 @@ impl Limits {
         }
     }
 
-    /// The ranges of a leg whose knee is driven through a parallelogram ([`KneeDrive`](crate::KneeDrive)), so that its
+    /// The ranges of a leg whose knee is driven through a parallelogram ([`Parallelogram`](crate::drive::Parallelogram)), so that its
     /// knee stays within its range whatever the servos are held at: the thigh's range without the angles that its own
     /// servo cannot take, and without those at which no angle of the knee's range suits the shank's servo. The servos'
     /// ranges are [`Curve::joint_deg`](crate::Curve::joint_deg), in degrees; the shank's is that of the knee's servo.
@@ -243,6 +243,9 @@ pub struct Held {
 }
 
 impl Held {
+    /// No joint.
+    pub const NONE: Self = Self { hip: None, thigh: None, knee: None };
+
     /// Whether any joint was held.
     #[inline(always)]
     pub const fn any(&self) -> bool {

@@ -1,9 +1,10 @@
 //! The legs of a robot, without allocation.
 
 use crate::angle::Joints;
+use crate::drive::Drive;
 use crate::foot::Foot;
 use crate::leg::Hip;
-use crate::limb::{Actuator, Limb, LimbCommand};
+use crate::limb::{Limb, LimbCommand};
 use crate::number::Number;
 use crate::servo::Servo;
 use heapless::Vec;
@@ -35,11 +36,11 @@ use heapless::Vec;
 /// # }
 /// ```
 #[derive(Debug, Clone)]
-pub struct Robot<H: Hip, N: Number, const LEGS: usize, A: Actuator<N> = Servo<N>> {
-    limbs: Vec<(Limb<H, N, A>, Joints<N>), LEGS>,
+pub struct Robot<H: Hip, N: Number, const LEGS: usize, D: Drive<N> = [Servo<N>; 3]> {
+    limbs: Vec<(Limb<H, N, D>, Joints<N>), LEGS>,
 }
 
-impl<H: Hip, N: Number, const LEGS: usize, A: Actuator<N>> Robot<H, N, LEGS, A> {
+impl<H: Hip, N: Number, const LEGS: usize, D: Drive<N>> Robot<H, N, LEGS, D> {
     /// A robot without legs yet.
     pub const fn new() -> Self {
         Self { limbs: Vec::new() }
@@ -49,7 +50,7 @@ impl<H: Hip, N: Number, const LEGS: usize, A: Actuator<N>> Robot<H, N, LEGS, A> 
     ///
     /// # Errors
     /// Gives the limb back if there are `LEGS` already.
-    pub fn add(&mut self, limb: Limb<H, N, A>) -> Result<(), Limb<H, N, A>> {
+    pub fn add(&mut self, limb: Limb<H, N, D>) -> Result<(), Limb<H, N, D>> {
         self.limbs.push((limb, Joints::ZERO)).map_err(|(limb, _)| limb)
     }
 
@@ -60,7 +61,7 @@ impl<H: Hip, N: Number, const LEGS: usize, A: Actuator<N>> Robot<H, N, LEGS, A> 
 
     /// One frame: a foot per leg (body frame), in the order in which they were added, to pulses. A leg without a
     /// foot, or with one that is not finite, keeps its pose; feet without a leg are passed over.
-    pub fn frame(&mut self, feet: &[Foot<N>]) -> Vec<LimbCommand<N, A::Command>, LEGS> {
+    pub fn frame(&mut self, feet: &[Foot<N>]) -> Vec<LimbCommand<N, D::Sent>, LEGS> {
         self.limbs
             .iter_mut()
             .zip(feet)
@@ -73,7 +74,7 @@ impl<H: Hip, N: Number, const LEGS: usize, A: Actuator<N>> Robot<H, N, LEGS, A> 
     }
 }
 
-impl<H: Hip, N: Number, const LEGS: usize, A: Actuator<N>> Default for Robot<H, N, LEGS, A> {
+impl<H: Hip, N: Number, const LEGS: usize, D: Drive<N>> Default for Robot<H, N, LEGS, D> {
     fn default() -> Self {
         Self::new()
     }

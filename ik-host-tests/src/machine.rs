@@ -10,12 +10,13 @@ pub use output::Counter;
 use crate::numbers::Float64;
 use crate::reference::leg::{self as judged, Pose, Range, Ranges};
 use crate::sheet::{Bend, HipShape, KneeDrive, LegKind, NumberSystem, Robot};
+use ik_core::drive::Drive as _;
 use ik_core::limits::End;
 use ik_core::output::Output as _;
 use ik_core::servo::MOST_POINTS;
 use ik_core::{
-    Channel, Coarse, Curve, Dimensions, Fixed16, Fixed32, Float32, Foot, Hip, Joints, Leg, Limits, Number,
-    Outcome, RollHip, YawHip,
+    Channel, Coarse, Counts, Curve, Dimensions, Fixed16, Fixed32, Float32, Foot, Hip, Joints, Leg, Limits,
+    Number, Outcome, Parallelogram, RollHip, YawHip,
 };
 use std::fmt;
 
@@ -125,10 +126,17 @@ where
 /// Bends of a servo with as many points as one may have.
 const BENDS: usize = MOST_POINTS - 2;
 
+/// What drives a leg's joints, with room for any servo.
+enum AnyDrive<N: Number> {
+    Direct([Channel<N, BENDS>; 3]),
+    Parallelogram(Parallelogram<Channel<N, BENDS>>),
+}
+
 struct KindInNumber<H: Hip, N: Number> {
     leg: Leg<H, N>,
-    /// By leg of this kind: hip, thigh, knee.
-    channels: Vec<[Channel<N, BENDS>; 3]>,
+    bends_back: bool,
+    /// By leg of this kind.
+    drives: Vec<AnyDrive<N>>,
     counter: Counter,
 }
 
@@ -149,25 +157,26 @@ impl<H: Hip, N: Number> KindInNumber<H, N> {
                 Ok([curve(0)?, curve(1)?, curve(2)?])
             })
             .collect::<Result<Vec<_>, _>>()?;
-        let channels = curves
+        let drives = curves
             .iter()
             .map(|curves| {
                 let channel = |joint: usize| {
                     Channel::from_curve(&curves[joint], counter.counting())
                         .map_err(|error| of_servo(joint, error))
                 };
-                Ok([channel(0)?, channel(1)?, channel(2)?])
+                let channels = [channel(0)?, channel(1)?, channel(2)?];
+                Ok(match sheet.knee_drive {
+                    KneeDrive::Direct => AnyDrive::Direct(channels),
+                    KneeDrive::Parallelogram => AnyDrive::Parallelogram(Parallelogram(channels)),
+                })
             })
             .collect::<Result<_, _>>()?;
         let limits = limits(sheet, dimensions.bend(), &curves)
             .map_err(|error| refused("range_deg".into(), error.to_string()))?;
+        let bends_back = matches!(sheet.bend, Bend::Backward | Bend::Down);
         let leg = Leg::from_dimensions(dimensions, limits)
-            .map_err(|error| refused("measures".into(), error.to_string()))?
-            .driven_by(match sheet.knee_drive {
-                KneeDrive::Direct => ik_core::KneeDrive::Direct,
-                KneeDrive::Parallelogram => ik_core::KneeDrive::Parallelogram,
-            });
-        Ok(Self { leg, channels, counter })
+            .map_err(|error| refused("measures".into(), error.to_string()))?;
+        Ok(Self { leg, bends_back, drives, counter })
     }
 }
 
@@ -199,17 +208,18 @@ where
         let foot = Foot::<N>::try_from_mm(x, y, z)?;
         let answer = self.leg.solve(foot, Joints::ZERO);
         let joints = answer.joints.as_array();
-        let angles = self.leg.servo_angles(&answer.joints);
-        let channels = &self.channels[leg % self.channels.len()];
-        let commands = [0, 1, 2].map(|joint| channels[joint].command(angles[joint]));
+        let Counts { counts, held } = match &self.drives[leg % self.drives.len()] {
+            AnyDrive::Direct(channels) => channels.send(&answer.joints, self.bends_back),
+            AnyDrive::Parallelogram(channels) => channels.send(&answer.joints, self.bends_back),
+        };
         Some(Answered {
             foot_mm: foot.mm(),
             pose: Pose { hip: joints[0].radians(), thigh: joints[1].radians(), knee: joints[2].radians() },
             outcome: answer.outcome,
             off_by_mm: N::mm(answer.off_by),
-            counts: commands.map(|command| command.counts),
-            pulses_held: commands.map(|command| command.held),
-            pulses_us: commands.map(|command| f64::from(command.counts) * self.counter.count_us()),
+            counts,
+            pulses_held: held.as_array(),
+            pulses_us: counts.map(|counts| f64::from(counts) * self.counter.count_us()),
         })
     }
 }

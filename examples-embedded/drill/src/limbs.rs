@@ -25,11 +25,11 @@ const TIMER: Timer = possible!(Timer::finest(48_000_000, 16, 50.0));
 /// The two legs as constants of a number system; nothing is computed at start-up.
 pub(crate) trait InFlash: Number {
     /// Right front leg of the orchard walker.
-    const ORCHARD: Limb<RollHip, Self, Channel<Self>>;
+    const ORCHARD: Limb<RollHip, Self, [Channel<Self>; 3]>;
     /// The same leg with free joints.
     const ORCHARD_FREE: Leg<RollHip, Self>;
     /// Left front leg of the culvert walker.
-    const CULVERT: Limb<YawHip, Self, Channel<Self>>;
+    const CULVERT: Limb<YawHip, Self, [Channel<Self>; 3]>;
     /// The same leg with free joints.
     const CULVERT_FREE: Leg<YawHip, Self>;
 }
@@ -62,7 +62,7 @@ const CULVERT_SERVOS: [ServoSpec; 3] = [
 macro_rules! in_flash {
     ($numbers:ty, $mm:expr) => {
         impl InFlash for $numbers {
-            const ORCHARD: Limb<RollHip, Self, Channel<Self>> = Limb {
+            const ORCHARD: Limb<RollHip, Self, [Channel<Self>; 3]> = Limb {
                 leg: possible!(Leg::<RollHip, Self>::new(ORCHARD_DIMENSIONS, ORCHARD_LIMITS)),
                 mounting: Mounting::new(Foot::new($mm(120), $mm(-52), $mm(0)), Side::Right),
                 servos: [
@@ -73,7 +73,7 @@ macro_rules! in_flash {
             };
             const ORCHARD_FREE: Leg<RollHip, Self> =
                 possible!(Leg::<RollHip, Self>::new(ORCHARD_DIMENSIONS, Limits::FREE));
-            const CULVERT: Limb<YawHip, Self, Channel<Self>> = Limb {
+            const CULVERT: Limb<YawHip, Self, [Channel<Self>; 3]> = Limb {
                 leg: possible!(Leg::<YawHip, Self>::new(CULVERT_DIMENSIONS, CULVERT_LIMITS)),
                 mounting: Mounting::new(Foot::new($mm(95), $mm(58), $mm(0)), Side::Left),
                 servos: [

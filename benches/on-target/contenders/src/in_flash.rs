@@ -24,7 +24,7 @@ pub trait InFlash<H: Hip>: Number {
     /// The published leg without joint ranges.
     const FREE_LEG: Leg<H, Self>;
     /// The published leg with joint ranges and servos on a timer, on a body.
-    const LIMB: Limb<H, Self, Channel<Self>>;
+    const LIMB: Limb<H, Self, [Channel<Self>; 3]>;
 
     /// A length of so many steps of 1/64 mm, exact.
     fn in_steps(steps: i32) -> Self::Length;
@@ -64,7 +64,7 @@ macro_rules! one_hip {
     ($numbers:ty, $hip:ty, $dimensions:expr, $published:expr, $side:expr, $length:expr, $bits:expr) => {
         impl InFlash<$hip> for $numbers {
             const FREE_LEG: Leg<$hip, Self> = possible!(Leg::<$hip, Self>::new($dimensions, Limits::FREE));
-            const LIMB: Limb<$hip, Self, Channel<Self>> = Limb {
+            const LIMB: Limb<$hip, Self, [Channel<Self>; 3]> = Limb {
                 leg: possible!(Leg::<$hip, Self>::new($dimensions, limits($published))),
                 mounting: Mounting::new(
                     Foot::new(
