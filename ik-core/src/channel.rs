@@ -21,7 +21,7 @@
 //! point. An angle of `Fixed16` is itself a whole number of 1/65536 turns, of which such a servo has five in a count.
 
 use crate::angle::Angle;
-use crate::limits::{End, Held};
+use crate::limits::End;
 use crate::number::Number;
 use crate::output::Counting;
 use crate::servo::{Curve, ServoError, ServoSpec, Stretch};
@@ -97,7 +97,49 @@ pub struct Counts {
     /// Hip, thigh (femur), knee: ticks of a timer or counts of an expander, always within their ranges.
     pub counts: [u32; 3],
     /// Which were held by their ranges, and at which end.
-    pub held: Held,
+    pub held: PulsesHeld,
+}
+
+/// Which pulses of a leg were held by their ranges, and at which end: a byte, for it is stored with every answer.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Default)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
+pub struct PulsesHeld(u8);
+
+impl PulsesHeld {
+    /// No pulse.
+    pub const NONE: Self = Self(0);
+
+    /// Hip, thigh (femur), knee.
+    pub const fn of(ends: [Option<End>; 3]) -> Self {
+        let [hip, thigh, knee] = ends;
+        Self(Self::bits(hip) | (Self::bits(thigh) << 2) | (Self::bits(knee) << 4))
+    }
+
+    const fn bits(end: Option<End>) -> u8 {
+        match end {
+            None => 0,
+            Some(End::Least) => 1,
+            Some(End::Most) => 2,
+        }
+    }
+
+    /// Whether any pulse was held.
+    pub const fn any(self) -> bool {
+        self.0 != 0
+    }
+
+    /// Hip, thigh (femur), knee.
+    pub const fn as_array(self) -> [Option<End>; 3] {
+        [Self::end(self.0), Self::end(self.0 >> 2), Self::end(self.0 >> 4)]
+    }
+
+    const fn end(bits: u8) -> Option<End> {
+        match bits & 3 {
+            1 => Some(End::Least),
+            2 => Some(End::Most),
+            _ => None,
+        }
+    }
 }
 
 /// One text for `const fn` and for generic code; see `geometry::constants`.
@@ -240,31 +282,26 @@ impl<N: Number, const BENDS: usize> Channel<N, BENDS> {
     }
 }
 
-/// The counts of three channels: in one go if none of them leaves its piece.
+/// The counts of three channels, if none of them leaves its piece.
 #[inline(always)]
-pub(crate) fn three<N: Number, const BENDS: usize>(
+pub(crate) fn three_within<N: Number, const BENDS: usize>(
     [hip, thigh, knee]: &[Channel<N, BENDS>; 3],
-    angles: [Angle<N>; 3],
-) -> Counts {
-    let [hip_angle, thigh_angle, knee_angle] = angles;
-    if let Some(hip) = hip.piece(hip_angle).counts(hip_angle)
-        && let Some(thigh) = thigh.piece(thigh_angle).counts(thigh_angle)
-        && let Some(knee) = knee.piece(knee_angle).counts(knee_angle)
-    {
-        return Counts { counts: [hip, thigh, knee], held: Held::NONE };
-    }
-    one_by_one([hip, thigh, knee], angles)
+    [hip_angle, thigh_angle, knee_angle]: [Angle<N>; 3],
+) -> Option<Counts> {
+    let hip = hip.piece(hip_angle).counts(hip_angle)?;
+    let thigh = thigh.piece(thigh_angle).counts(thigh_angle)?;
+    let knee = knee.piece(knee_angle).counts(knee_angle)?;
+    Some(Counts { counts: [hip, thigh, knee], held: PulsesHeld::NONE })
 }
 
-#[cold]
-#[inline(never)]
-fn one_by_one<N: Number, const BENDS: usize>(
-    [hip, thigh, knee]: [&Channel<N, BENDS>; 3],
+/// The counts of three channels.
+pub(crate) fn three<N: Number, const BENDS: usize>(
+    [hip, thigh, knee]: &[Channel<N, BENDS>; 3],
     [hip_angle, thigh_angle, knee_angle]: [Angle<N>; 3],
 ) -> Counts {
     let (hip, thigh, knee) = (hip.command(hip_angle), thigh.command(thigh_angle), knee.command(knee_angle));
     Counts {
         counts: [hip.counts, thigh.counts, knee.counts],
-        held: Held { hip: hip.held, thigh: thigh.held, knee: knee.held },
+        held: PulsesHeld::of([hip.held, thigh.held, knee.held]),
     }
 }

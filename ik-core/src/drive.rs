@@ -18,7 +18,7 @@
 //! keeps limits in both spaces: joint ranges for what the links stand, pulse ranges for what the servos stand.
 
 use crate::angle::{Angle, Joints};
-use crate::channel::{Channel, Counts, three};
+use crate::channel::{Channel, Counts, three, three_within};
 use crate::number::Number;
 use crate::servo::{Command, Servo};
 
@@ -30,6 +30,11 @@ pub trait Drive<N: Number>: Copy {
     /// What puts the joints at these angles, or as near as the pulse ranges allow. `bends_back` says to which side the
     /// leg's knee bends: backward or down, or else forward or up.
     fn send(&self, joints: &Joints<N>, bends_back: bool) -> Self::Sent;
+    /// The same where it is quick and no pulse is held; `None` sends the caller to [`send`](Drive::send).
+    #[inline(always)]
+    fn send_quickly(&self, joints: &Joints<N>, bends_back: bool) -> Option<Self::Sent> {
+        Some(self.send(joints, bends_back))
+    }
 }
 
 /// What is sent to the servos of a leg.
@@ -56,6 +61,11 @@ pub trait Servos<N: Number>: Copy {
     type Sent: Sent;
     /// What puts the servos at these angles, or as near as their pulse ranges allow.
     fn turn(&self, angles: [Angle<N>; 3]) -> Self::Sent;
+    /// The same where it is quick and no pulse is held; `None` sends the caller to [`turn`](Servos::turn).
+    #[inline(always)]
+    fn turn_quickly(&self, angles: [Angle<N>; 3]) -> Option<Self::Sent> {
+        Some(self.turn(angles))
+    }
 }
 
 impl<N: Number, const BENDS: usize> Servos<N> for [Servo<N, BENDS>; 3] {
@@ -69,9 +79,12 @@ impl<N: Number, const BENDS: usize> Servos<N> for [Servo<N, BENDS>; 3] {
 
 impl<N: Number, const BENDS: usize> Servos<N> for [Channel<N, BENDS>; 3] {
     type Sent = Counts;
-    #[inline(always)]
     fn turn(&self, angles: [Angle<N>; 3]) -> Counts {
         three(self, angles)
+    }
+    #[inline(always)]
+    fn turn_quickly(&self, angles: [Angle<N>; 3]) -> Option<Counts> {
+        three_within(self, angles)
     }
 }
 
@@ -83,6 +96,10 @@ where
     #[inline(always)]
     fn send(&self, joints: &Joints<N>, _: bool) -> Self::Sent {
         self.turn(joints.as_array())
+    }
+    #[inline(always)]
+    fn send_quickly(&self, joints: &Joints<N>, _: bool) -> Option<Self::Sent> {
+        self.turn_quickly(joints.as_array())
     }
 }
 
@@ -149,5 +166,9 @@ where
     #[inline(always)]
     fn send(&self, joints: &Joints<N>, bends_back: bool) -> Self::Sent {
         self.0.turn([joints.hip, joints.thigh, Self::shank(joints, bends_back)])
+    }
+    #[inline(always)]
+    fn send_quickly(&self, joints: &Joints<N>, bends_back: bool) -> Option<Self::Sent> {
+        self.0.turn_quickly([joints.hip, joints.thigh, Self::shank(joints, bends_back)])
     }
 }

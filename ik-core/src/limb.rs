@@ -43,14 +43,16 @@ impl<H: Hip, N: Number, D: Drive<N>> Limb<H, N, D> {
     /// allow; see [`Leg::solve`] for `hold`.
     #[inline]
     pub fn command(&self, foot: Foot<N>, hold: Joints<N>) -> LimbCommand<N, D::Sent> {
-        match self.leg.usual(self.mounting.leg_frame(foot)) {
-            Some(joints) => LimbCommand { answer: Answer::reached(joints), commands: self.commands(&joints) },
-            None => self.unusual(&foot, hold),
+        if let Some(joints) = self.leg.usual(self.mounting.leg_frame(foot))
+            && let Some(commands) = self.servos.send_quickly(&joints, self.leg.bends_back())
+        {
+            return LimbCommand { answer: Answer::reached(joints), commands };
         }
+        self.unusual(&foot, hold)
     }
 
-    /// A foot that is unusual, from the start: what the usual way had worked out is not handed over, so that the usual way
-    /// need not keep it.
+    /// A foot that is unusual, or a pulse: from the start, for what the usual way had worked out is not handed over, so that
+    /// the usual way need not keep it.
     #[cold]
     #[inline(never)]
     fn unusual(&self, foot: &Foot<N>, hold: Joints<N>) -> LimbCommand<N, D::Sent> {
@@ -59,7 +61,7 @@ impl<H: Hip, N: Number, D: Drive<N>> Limb<H, N, D> {
     }
 
     /// The commands for joint angles.
-    #[inline(always)]
+    #[inline]
     pub fn commands(&self, joints: &Joints<N>) -> D::Sent {
         self.servos.send(joints, self.leg.bends_back())
     }

@@ -243,9 +243,6 @@ pub struct Held {
 }
 
 impl Held {
-    /// No joint.
-    pub const NONE: Self = Self { hip: None, thigh: None, knee: None };
-
     /// Whether any joint was held.
     #[inline(always)]
     pub const fn any(&self) -> bool {

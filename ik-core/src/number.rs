@@ -165,6 +165,11 @@ pub trait Number: Copy + Debug + PartialEq + 'static {
     fn micrometres(length: Self::Length) -> i32;
     /// a − b; saturates.
     fn length_difference(a: Self::Length, b: Self::Length) -> Self::Length;
+    /// a − b, or b − a if it is to be mirrored.
+    #[inline(always)]
+    fn length_difference_or_mirrored(a: Self::Length, b: Self::Length, mirrored: bool) -> Self::Length {
+        if mirrored { Self::length_difference(b, a) } else { Self::length_difference(a, b) }
+    }
 
     // --- hip and triangle ------------------------------------------------------------------------------
 

@@ -295,6 +295,12 @@ impl<M: FloatMaths> Number for Float<M> {
     }
 
     #[inline(always)]
+    fn length_difference_or_mirrored(a: f32, b: f32, mirrored: bool) -> f32 {
+        let difference = a - b;
+        if mirrored { -difference } else { difference }
+    }
+
+    #[inline(always)]
     fn square(coord: f32, scale: FloatScale) -> Steps2 {
         let steps = steps(coord, scale);
         Steps2(steps * steps)
