@@ -137,6 +137,12 @@ impl<H: Hip, N: Number> Leg<H, N> {
         constants!(N, dimensions, limits).map(|constants| Self { constants, hip: PhantomData })
     }
 
+    /// Whether the knee bends backward or down: the shank then swings as thigh and knee together, else as their
+    /// difference.
+    pub(crate) const fn bends_back(&self) -> bool {
+        self.constants.bends_back
+    }
+
     /// The joint ranges, as the number system holds them.
     pub const fn ranges(&self) -> Ranges<N> {
         self.constants.ranges
@@ -158,24 +164,31 @@ impl<H: Hip, N: Number> Leg<H, N> {
     /// moved outward.
     #[inline]
     pub fn solve(&self, foot: Foot<N>, hold: Joints<N>) -> Answer<N> {
-        // The way of nearly every foot; whatever is unusual about one sends it another way, which decides anew.
-        let leg = &self.constants;
-        if let Some(point) = N::near(foot.lengths(), leg.scale)
-            && let Ok(plane) = H::plane(leg, point)
-        {
-            let (thigh, knee) = triangle::angles(leg, &plane);
-            if leg.ranges.contain(plane.hip.0, thigh, knee) {
-                let joints = Joints { hip: plane.hip, thigh: Angle(thigh), knee: Angle(knee) };
-                return Answer { joints, outcome: Outcome::Reached, off_by: N::NO_LENGTH };
-            }
+        match self.usual(foot) {
+            Some(joints) => Answer::reached(joints),
+            None => self.unusual(foot, hold),
         }
-        self.unusual(foot, hold)
+    }
+
+    /// The way of nearly every foot, which is within reach and asks for nothing beyond the joint ranges; whatever is
+    /// unusual about one sends it to [`unusual`](Leg::unusual), which decides anew.
+    #[inline(always)]
+    pub(crate) fn usual(&self, foot: Foot<N>) -> Option<Joints<N>> {
+        let leg = &self.constants;
+        let point = N::near(foot.lengths(), leg.scale)?;
+        let plane = H::plane(leg, point).ok()?;
+        let (thigh, knee) = triangle::angles(leg, &plane);
+        leg.ranges.contain(plane.hip.0, thigh, knee).then_some(Joints {
+            hip: plane.hip,
+            thigh: Angle(thigh),
+            knee: Angle(knee),
+        })
     }
 
     /// The answer for a foot that is out of reach, held by a joint range, or nowhere.
     #[cold]
     #[inline(never)]
-    fn unusual(&self, foot: Foot<N>, hold: Joints<N>) -> Answer<N> {
+    pub(crate) fn unusual(&self, foot: Foot<N>, hold: Joints<N>) -> Answer<N> {
         let leg = &self.constants;
         let plane = match N::place(foot.lengths(), leg.scale) {
             Placed::Near(point) => match H::plane(leg, point) {
@@ -193,7 +206,7 @@ impl<H: Hip, N: Number> Leg<H, N> {
         if held.any() {
             return self.explained(foot, joints, held);
         }
-        Answer { joints, outcome: Outcome::Reached, off_by: N::NO_LENGTH }
+        Answer::reached(joints)
     }
 
     /// Where the foot is (leg frame) with the joints at the given angles; total, ranges are not looked at.

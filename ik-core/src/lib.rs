@@ -88,7 +88,9 @@
 extern crate std;
 
 pub mod angle;
+pub mod channel;
 mod const_math;
+pub mod drive;
 pub mod foot;
 pub mod geometry;
 pub mod leg;
@@ -104,6 +106,8 @@ pub mod robot;
 pub mod servo;
 
 pub use angle::{Angle, Joints};
+pub use channel::{Channel, Counts};
+pub use drive::Parallelogram;
 pub use foot::Foot;
 pub use geometry::{Bend, Dimensions, GeometryError, RollHip, YawHip};
 pub use leg::{Answer, Held, Hip, Leg, Outcome};
@@ -119,5 +123,5 @@ pub use number::Fixed32;
 #[cfg(feature = "float32")]
 pub use number::Float32;
 pub use number::Number;
-pub use output::{Expander, OutputError, Timer};
-pub use servo::{Command, Pulse, Servo, ServoError, ServoSpec, Turns};
+pub use output::{Counting, Expander, OutputError, Timer};
+pub use servo::{Command, Curve, MeasuredServo, Pulse, Servo, ServoError, ServoSpec, Turns};

@@ -1,6 +1,7 @@
 //! Joint ranges: what a leg must never be commanded beyond.
 
 use crate::angle::{Angle, Joints};
+use crate::geometry::Bend;
 use crate::number::Number;
 use core::fmt;
 
@@ -33,6 +34,8 @@ pub enum LimitsError {
     Thigh,
     /// An end of the knee's range is NaN or outside 0° to 180°, or its least lies above its most.
     Knee,
+    /// No angle of the thigh suits its own range, its servo's and that of the shank's.
+    Shank,
 }
 
 impl LimitsError {
@@ -42,6 +45,9 @@ impl LimitsError {
             Self::Hip => "the hip's range must be [least, most] within -180 to 180 degrees",
             Self::Thigh => "the thigh's (femur's) range must be [least, most] within -180 to 180 degrees",
             Self::Knee => "the knee's range must be [least, most] within 0 to 180 degrees",
+            Self::Shank => {
+                "no angle of the thigh suits its range, its servo's, and what the shank's servo leaves of the knee's"
+            }
         }
     }
 }
@@ -57,6 +63,11 @@ impl core::error::Error for LimitsError {}
 const fn ordered(range: [f64; 2], least: f64) -> bool {
     // NaN fails every comparison.
     range[0] >= least && range[1] <= 180.0 && range[0] <= range[1]
+}
+
+/// What two ranges have in common; NaN if it is part of either.
+const fn common(a: [f64; 2], b: [f64; 2]) -> [f64; 2] {
+    [if a[0] < b[0] { b[0] } else { a[0] }, if a[1] > b[1] { b[1] } else { a[1] }]
 }
 
 impl Limits {
@@ -77,6 +88,38 @@ impl Limits {
             Err(LimitsError::Knee)
         } else {
             Ok(Self { hip_deg: hip, thigh_deg: thigh, knee_deg: knee })
+        }
+    }
+
+    /// The ranges of a leg whose knee is driven through a parallelogram ([`Parallelogram`](crate::drive::Parallelogram)), so that its
+    /// knee stays within its range whatever the servos are held at: the thigh's range without the angles that its own
+    /// servo cannot take, and without those at which no angle of the knee's range suits the shank's servo. The servos'
+    /// ranges are [`Curve::joint_deg`](crate::Curve::joint_deg), in degrees; the shank's is that of the knee's servo.
+    ///
+    /// What is left is enough: with the thigh within, the shank held within its servo's range holds the knee within its
+    /// own.
+    ///
+    /// # Errors
+    /// If no angle of the thigh is left.
+    pub const fn through_parallelogram(
+        self,
+        bend: Bend,
+        thigh_servo_deg: [f64; 2],
+        shank_servo_deg: [f64; 2],
+    ) -> Result<Self, LimitsError> {
+        let [knee_least, knee_most] = self.knee_deg;
+        // A shank's angle is held at half a turn.
+        let [shank_least, shank_most] = common(shank_servo_deg, [-180.0, 180.0]);
+        let left = match bend {
+            // thigh = shank − knee, or knee − shank.
+            Bend::Backward | Bend::Down => [shank_least - knee_most, shank_most - knee_least],
+            Bend::Forward | Bend::Up => [knee_least - shank_most, knee_most - shank_least],
+        };
+        let thigh_deg = common(common(self.thigh_deg, thigh_servo_deg), left);
+        if shank_least <= shank_most && ordered(thigh_deg, -180.0) {
+            Ok(Self { thigh_deg, ..self })
+        } else {
+            Err(LimitsError::Shank)
         }
     }
 

@@ -37,10 +37,7 @@ impl<N: Number> Mounting<N> {
         let apart = N::length_difference;
         Foot {
             x: apart(foot.x, self.at.x),
-            y: match self.side {
-                Side::Left => apart(foot.y, self.at.y),
-                Side::Right => apart(self.at.y, foot.y),
-            },
+            y: N::length_difference_or_mirrored(foot.y, self.at.y, matches!(self.side, Side::Right)),
             z: apart(foot.z, self.at.z),
         }
     }

@@ -12,6 +12,8 @@ mod fixed16;
 mod fixed32;
 #[cfg(any(feature = "float32", feature = "coarse"))]
 pub mod float;
+#[cfg(any(feature = "fixed16", feature = "fixed32"))]
+mod line;
 #[cfg(feature = "fixed16")]
 mod narrow;
 
@@ -23,6 +25,8 @@ pub use fixed32::{Fixed32, FixedScale};
 pub use float::Coarse;
 #[cfg(feature = "float32")]
 pub use float::Float32;
+#[cfg(any(feature = "fixed16", feature = "fixed32"))]
+pub use line::FixedLine;
 
 use core::fmt::Debug;
 use core::ops::{Add, Neg, Sub};
@@ -82,6 +86,9 @@ pub trait Number: Copy + Debug + PartialEq + 'static {
     /// Its reciprocal: angle per pulse.
     type Swing: Copy + Debug + PartialEq;
 
+    /// A straight line from an angle to a whole number.
+    type Line: Copy + Debug + PartialEq;
+
     /// The name that reports and sheets use.
     const NAME: &'static str;
     /// No length.
@@ -135,6 +142,8 @@ pub trait Number: Copy + Debug + PartialEq + 'static {
     fn gain_from(us_per_turn: f64) -> Self::Gain;
     /// Turns per µs, rounded.
     fn swing_from(turns_per_us: f64) -> Self::Swing;
+    /// The line `per_turn`·angle + `at_zero`; both below 2^26 in size.
+    fn line_from(per_turn: f64, at_zero: f64) -> Self::Line;
 
     // --- the way in and out ----------------------------------------------------------------------------
 
@@ -161,6 +170,11 @@ pub trait Number: Copy + Debug + PartialEq + 'static {
     fn micrometres(length: Self::Length) -> i32;
     /// a − b; saturates.
     fn length_difference(a: Self::Length, b: Self::Length) -> Self::Length;
+    /// a − b, or b − a if it is to be mirrored.
+    #[inline(always)]
+    fn length_difference_or_mirrored(a: Self::Length, b: Self::Length, mirrored: bool) -> Self::Length {
+        if mirrored { Self::length_difference(b, a) } else { Self::length_difference(a, b) }
+    }
 
     // --- hip and triangle ------------------------------------------------------------------------------
 
@@ -246,6 +260,8 @@ pub trait Number: Copy + Debug + PartialEq + 'static {
     fn travel(angle: Self::Angle, from: Self::Angle, gain: Self::Gain) -> i32;
     /// from + swing·travel, travel in 1/65536 µs; saturates just inside ±½ turn.
     fn swing_to(travel: i32, from: Self::Angle, swing: Self::Swing) -> Self::Angle;
+    /// The whole number nearest to the line at an angle; any below 1 where the line is below ½.
+    fn on_line(line: Self::Line, angle: Self::Angle) -> i32;
 }
 
 /// A foot in the leg's working range.

@@ -3,9 +3,11 @@
 //! Prescalers divide by whole numbers, so the true period of a tick is rarely the nominal one; everything here
 //! works with the true one. Rounding is to the nearest tick, exactly: the quotient is formed in 64-bit integers.
 
+mod counting;
 mod expander;
 mod timer;
 
+pub use counting::Counting;
 pub use expander::Expander;
 pub use timer::Timer;
 

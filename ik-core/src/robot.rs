@@ -1,10 +1,12 @@
 //! The legs of a robot, without allocation.
 
 use crate::angle::Joints;
+use crate::drive::Drive;
 use crate::foot::Foot;
 use crate::leg::Hip;
 use crate::limb::{Limb, LimbCommand};
 use crate::number::Number;
+use crate::servo::Servo;
 use heapless::Vec;
 
 /// Up to `LEGS` limbs of one shape, and the pose that each was last commanded.
@@ -34,11 +36,11 @@ use heapless::Vec;
 /// # }
 /// ```
 #[derive(Debug, Clone)]
-pub struct Robot<H: Hip, N: Number, const LEGS: usize> {
-    limbs: Vec<(Limb<H, N>, Joints<N>), LEGS>,
+pub struct Robot<H: Hip, N: Number, const LEGS: usize, D: Drive<N> = [Servo<N>; 3]> {
+    limbs: Vec<(Limb<H, N, D>, Joints<N>), LEGS>,
 }
 
-impl<H: Hip, N: Number, const LEGS: usize> Robot<H, N, LEGS> {
+impl<H: Hip, N: Number, const LEGS: usize, D: Drive<N>> Robot<H, N, LEGS, D> {
     /// A robot without legs yet.
     pub const fn new() -> Self {
         Self { limbs: Vec::new() }
@@ -48,7 +50,7 @@ impl<H: Hip, N: Number, const LEGS: usize> Robot<H, N, LEGS> {
     ///
     /// # Errors
     /// Gives the limb back if there are `LEGS` already.
-    pub fn add(&mut self, limb: Limb<H, N>) -> Result<(), Limb<H, N>> {
+    pub fn add(&mut self, limb: Limb<H, N, D>) -> Result<(), Limb<H, N, D>> {
         self.limbs.push((limb, Joints::ZERO)).map_err(|(limb, _)| limb)
     }
 
@@ -59,7 +61,7 @@ impl<H: Hip, N: Number, const LEGS: usize> Robot<H, N, LEGS> {
 
     /// One frame: a foot per leg (body frame), in the order in which they were added, to pulses. A leg without a
     /// foot, or with one that is not finite, keeps its pose; feet without a leg are passed over.
-    pub fn frame(&mut self, feet: &[Foot<N>]) -> Vec<LimbCommand<N>, LEGS> {
+    pub fn frame(&mut self, feet: &[Foot<N>]) -> Vec<LimbCommand<N, D::Sent>, LEGS> {
         self.limbs
             .iter_mut()
             .zip(feet)
@@ -72,7 +74,7 @@ impl<H: Hip, N: Number, const LEGS: usize> Robot<H, N, LEGS> {
     }
 }
 
-impl<H: Hip, N: Number, const LEGS: usize> Default for Robot<H, N, LEGS> {
+impl<H: Hip, N: Number, const LEGS: usize, D: Drive<N>> Default for Robot<H, N, LEGS, D> {
     fn default() -> Self {
         Self::new()
     }

@@ -4,11 +4,17 @@
 //! pulse = centre + trim ± us_per_degree · (angle − joint at centre)
 //! ```
 //!
-//! held within the pulse range, which is what the servo's mechanics stand. A pulse is the same type in every
-//! number system: microseconds in steps of 1/65536, so that nothing is lost on the way to a timer.
+//! held within the pulse range, which is what the servo's mechanics stand; or straight from point to point, for a servo
+//! that was measured ([`MeasuredServo`]). A pulse is the same type in every number system: microseconds in steps of
+//! 1/65536. Firmware that only wants counts of its timer goes there at once, by a [`Channel`](crate::Channel).
+
+mod curve;
+
+pub(crate) use curve::Stretch;
+pub use curve::{Curve, MOST_POINTS, MeasuredServo};
 
 use crate::angle::Angle;
-use crate::const_math::{magnitude, nearest_i32};
+use crate::const_math::nearest_i32;
 use crate::limits::End;
 use crate::number::Number;
 use core::fmt;
@@ -114,12 +120,19 @@ impl ServoSpec {
 pub enum ServoError {
     /// The pulse range is not [shortest, longest] within 0 µs to 32 767 µs.
     PulseRange,
-    /// Centre and trim together lie outside the pulse range, or are NaN.
+    /// Centre and trim together, or all measured pulses, lie outside the pulse range, or are NaN.
     Centre,
     /// The gain is not within 0.1 µs to 90 µs per degree.
     Gain,
-    /// The joint's angle at the centre is not within ±180°.
+    /// The joint's angle at the centre, or at a measured point, is not within ±180°.
     JointAtCentre,
+    /// The measured points are not 2 to 16 with rising pulses and with angles that all rise or all fall, 0.1 µs to 90 µs
+    /// per degree.
+    Points,
+    /// The curve has more bends than there is room for.
+    Bends,
+    /// No whole count of the output lies within the pulse range.
+    Counts,
 }
 
 impl ServoError {
@@ -127,9 +140,19 @@ impl ServoError {
     pub const fn message(&self) -> &'static str {
         match self {
             Self::PulseRange => "the pulse range must be [shortest, longest] within 0 to 32767 us",
-            Self::Centre => "centre and trim together must lie within the pulse range",
+            Self::Centre => {
+                "centre and trim together, or some of the measured pulses, must lie within the pulse range"
+            }
             Self::Gain => "the gain must lie within 0.1 to 90 us per degree",
-            Self::JointAtCentre => "the joint's angle at the centre must lie within -180 to 180 degrees",
+            Self::JointAtCentre => {
+                "the joint's angle at the centre or a measured point must lie within -180 to 180 degrees"
+            }
+            Self::Points => {
+                "there must be 2 to 16 measured points, their pulses rising, their angles all rising or all falling, \
+                 0.1 to 90 us per degree"
+            }
+            Self::Bends => "the curve has more bends than there is room for: a curve of n points has n - 2",
+            Self::Counts => "no whole count of the output lies within the pulse range",
         }
     }
 }
@@ -142,12 +165,29 @@ impl fmt::Display for ServoError {
 
 impl core::error::Error for ServoError {}
 
-/// A servo in a number system.
+/// A servo in a number system, with room for so many bends between the ends of its curve: none if it is straight,
+/// n − 2 for n measured points.
 #[derive(Debug, Clone, Copy, PartialEq)]
-pub struct Servo<N: Number> {
-    at_centre: Angle<N>,
-    /// With trim, in steps of 1/65536 µs; below 2^31.
+pub struct Servo<N: Number, const BENDS: usize = 0> {
+    /// By rising angle; places that are not needed hold the last piece.
+    before: [Piece<N>; BENDS],
+    last: Piece<N>,
+    /// Whether a longer pulse makes the angle smaller.
+    falls: bool,
+    shortest: i32,
+    longest: i32,
+}
+
+/// A straight piece of a servo's curve.
+#[derive(Debug, Clone, Copy, PartialEq)]
+struct Piece<N: Number> {
+    /// The angle at which the next one begins.
+    until: N::Angle,
+    /// A point on it.
+    at: N::Angle,
+    /// The pulse there, with trim, in steps of 1/65536 µs; below 2^31.
     centre: i32,
+    /// Its pulses.
     shortest: i32,
     longest: i32,
     gain: N::Gain,
@@ -165,46 +205,70 @@ pub struct Command {
 }
 
 /// One text for `const fn` and for generic code; see `geometry::constants`.
+macro_rules! piece {
+    ($number:ty, $stretch:expr) => {{
+        let stretch: Stretch = $stretch;
+        Piece {
+            until: <$number>::angle_from_turns(stretch.until_turns),
+            at: <$number>::angle_from_turns(stretch.turns),
+            centre: nearest_i32(stretch.us * STEPS_PER_US),
+            shortest: nearest_i32(stretch.pulse_us[0] * STEPS_PER_US),
+            longest: nearest_i32(stretch.pulse_us[1] * STEPS_PER_US),
+            gain: <$number>::gain_from(stretch.us_per_turn),
+            swing: <$number>::swing_from(1.0 / stretch.us_per_turn),
+        }
+    }};
+}
+
 macro_rules! servo {
-    ($number:ty, $spec:expr) => {{
-        let spec: ServoSpec = $spec;
-        let [shortest, longest] = spec.pulse_us;
-        let centre = spec.centre_us + spec.trim_us;
-        let per_turn =
-            360.0 * if let Turns::With = spec.turns { spec.us_per_degree } else { -spec.us_per_degree };
-        // Each comparison is written so that NaN fails it.
-        if !(shortest >= 0.0 && longest <= LONGEST_PULSE_US && shortest <= longest) {
-            Err(ServoError::PulseRange)
-        } else if !(centre >= shortest && centre <= longest) {
-            Err(ServoError::Centre)
-        } else if !(spec.us_per_degree >= LEAST_US_PER_DEGREE && spec.us_per_degree <= MOST_US_PER_DEGREE) {
-            Err(ServoError::Gain)
-        } else if !(magnitude(spec.joint_at_centre_deg) <= 180.0) {
-            Err(ServoError::JointAtCentre)
+    ($number:ty, $bends:ident, $curve:expr) => {{
+        let curve: &Curve = $curve;
+        if curve.bends() > $bends {
+            Err(ServoError::Bends)
         } else {
+            let mut before = [piece!($number, curve.stretch(curve.bends())); $bends];
+            let mut number = 0;
+            while number < $bends && number < curve.bends() {
+                before[number] = piece!($number, curve.stretch(number));
+                number += 1;
+            }
+            let [shortest, longest] = curve.pulse_us();
             Ok(Servo {
-                at_centre: Angle(<$number>::angle_from_turns(spec.joint_at_centre_deg / 360.0)),
-                centre: nearest_i32(centre * STEPS_PER_US),
+                before,
+                last: piece!($number, curve.stretch(curve.bends())),
+                falls: curve.falls(),
                 shortest: nearest_i32(shortest * STEPS_PER_US),
                 longest: nearest_i32(longest * STEPS_PER_US),
-                gain: <$number>::gain_from(per_turn),
-                swing: <$number>::swing_from(1.0 / per_turn),
             })
         }
     }};
 }
 
-/// `new` as a `const fn` for each number system, which a trait cannot give.
+/// `new` and `of` as `const fn` for each number system, which a trait cannot give.
 macro_rules! servo_while_compiling {
     ($(#[$feature:meta] [$($generics:tt)*] $number:ty;)*) => {$(
         #[$feature]
         impl<$($generics)*> Servo<$number> {
-            /// A servo from its measures.
+            /// A straight servo from its measures.
             ///
             /// # Errors
             /// Says which measure cannot be.
             pub const fn new(spec: ServoSpec) -> Result<Self, ServoError> {
-                servo!($number, spec)
+                match spec.curve() {
+                    Ok(curve) => Self::of(&curve),
+                    Err(error) => Err(error),
+                }
+            }
+        }
+
+        #[$feature]
+        impl<$($generics)* const BENDS: usize> Servo<$number, BENDS> {
+            /// A servo from its curve.
+            ///
+            /// # Errors
+            /// If there is no room for its bends.
+            pub const fn of(curve: &Curve) -> Result<Self, ServoError> {
+                servo!($number, BENDS, curve)
             }
         }
     )*};
@@ -214,7 +278,7 @@ servo_while_compiling! {
     #[cfg(feature = "fixed16")] [] crate::Fixed16;
     #[cfg(feature = "fixed32")] [] crate::Fixed32;
     #[cfg(any(feature = "float32", feature = "coarse"))]
-    [M: crate::number::float::FloatMaths] crate::number::float::Float<M>;
+    [M: crate::number::float::FloatMaths,] crate::number::float::Float<M>;
 }
 
 impl<N: Number> Servo<N> {
@@ -223,28 +287,51 @@ impl<N: Number> Servo<N> {
     /// # Errors
     /// Says which measure cannot be.
     pub fn from_spec(spec: ServoSpec) -> Result<Self, ServoError> {
-        servo!(N, spec)
+        spec.curve().and_then(|curve| Self::from_curve(&curve))
+    }
+}
+
+impl<N: Number, const BENDS: usize> Servo<N, BENDS> {
+    /// Like `of`, for any number system, while running.
+    ///
+    /// # Errors
+    /// If there is no room for its bends.
+    pub fn from_curve(curve: &Curve) -> Result<Self, ServoError> {
+        servo!(N, BENDS, curve)
     }
 
     /// The pulse that puts the joint at `angle`, held within the pulse range; monotone in the angle.
     #[inline]
     pub fn command(&self, angle: Angle<N>) -> Command {
-        let travel = N::travel(angle.0, self.at_centre.0, self.gain);
-        let steps = self.centre.saturating_add(travel);
-        let (steps, held) = if steps < self.shortest {
-            (self.shortest, Some(End::Least))
-        } else if steps > self.longest {
-            (self.longest, Some(End::Most))
+        let mut piece = &self.last;
+        for earlier in self.before.iter().rev() {
+            if angle.0 <= earlier.until {
+                piece = earlier;
+            }
+        }
+        let wanted = piece.centre.saturating_add(N::travel(angle.0, piece.at, piece.gain));
+        let held = if wanted < self.shortest {
+            Some(End::Least)
+        } else if wanted > self.longest {
+            Some(End::Most)
         } else {
-            (steps, None)
+            None
         };
+        // Within the piece: rounding must not make the pulse step back where two meet.
+        let steps = wanted.max(piece.shortest).min(piece.longest);
         Command { pulse: Pulse::from_steps(steps.max(0) as u32), held }
     }
 
     /// The joint's angle at `pulse`, which is taken as it is; saturates at half a turn.
     pub fn angle(&self, pulse: Pulse) -> Angle<N> {
         let steps = pulse.steps().min(i32::MAX as u32) as i32;
-        Angle(N::swing_to(steps.saturating_sub(self.centre), self.at_centre.0, self.swing))
+        let mut piece = &self.last;
+        for earlier in self.before.iter().rev() {
+            if if self.falls { steps >= earlier.shortest } else { steps <= earlier.longest } {
+                piece = earlier;
+            }
+        }
+        Angle(N::swing_to(steps.saturating_sub(piece.centre), piece.at, piece.swing))
     }
 
     /// The shortest and the longest pulse.

@@ -1,17 +1,22 @@
 //! A robot of a sheet in a number system: the very code that will be flashed, behind one face.
 
+mod commanded;
 mod output;
+mod servo;
 
+pub use commanded::Commanded;
 pub use output::Counter;
 
 use crate::numbers::Float64;
 use crate::reference::leg::{self as judged, Pose, Range, Ranges};
-use crate::sheet::{Bend, HipShape, LegKind, NumberSystem, Robot, Servo as ServoSheet, Turns};
+use crate::sheet::{Bend, HipShape, KneeDrive, LegKind, NumberSystem, Robot};
+use ik_core::drive::Drive as _;
 use ik_core::limits::End;
 use ik_core::output::Output as _;
+use ik_core::servo::MOST_POINTS;
 use ik_core::{
-    Coarse, Dimensions, Fixed16, Fixed32, Float32, Foot, Hip, Joints, Leg, Limits, Number, Outcome, RollHip,
-    Servo, ServoSpec, YawHip,
+    Channel, Coarse, Counts, Curve, Dimensions, Fixed16, Fixed32, Float32, Foot, Hip, Joints, Leg, Limits,
+    Number, Outcome, Parallelogram, RollHip, YawHip,
 };
 use std::fmt;
 
@@ -26,12 +31,12 @@ pub struct Answered {
     pub outcome: Outcome,
     /// How far off the answer says the foot is, mm.
     pub off_by_mm: f64,
-    /// The pulses, µs.
-    pub pulses_us: [f64; 3],
+    /// What the output is commanded.
+    pub counts: [u32; 3],
     /// The ends of the pulse ranges at which they were held.
     pub pulses_held: [Option<End>; 3],
-    /// The counts that the output makes of them.
-    pub counts: [u32; 3],
+    /// The pulses that come of the counts, µs.
+    pub pulses_us: [f64; 3],
 }
 
 /// A kind of leg in one number system, with the servos of every leg of that kind.
@@ -118,10 +123,20 @@ where
     })
 }
 
+/// Bends of a servo with as many points as one may have.
+const BENDS: usize = MOST_POINTS - 2;
+
+/// What drives a leg's joints, with room for any servo.
+enum AnyDrive<N: Number> {
+    Direct([Channel<N, BENDS>; 3]),
+    Parallelogram(Parallelogram<Channel<N, BENDS>>),
+}
+
 struct KindInNumber<H: Hip, N: Number> {
     leg: Leg<H, N>,
-    /// By leg of this kind: hip, thigh, knee.
-    servos: Vec<[Servo<N>; 3]>,
+    bends_back: bool,
+    /// By leg of this kind.
+    drives: Vec<AnyDrive<N>>,
     counter: Counter,
 }
 
@@ -129,26 +144,55 @@ impl<H: Hip, N: Number> KindInNumber<H, N> {
     fn new(robot: &Robot, kind: usize, dimensions: Dimensions<H>) -> Result<Self, Refused> {
         let sheet = &robot.kinds[kind];
         let refused = |what: String, why: String| Refused { kind: sheet.name.clone(), what, why };
-        let [hip, thigh, knee] = sheet.range_deg;
-        let limits = Limits::degrees(hip, thigh, knee)
-            .map_err(|error| refused("range_deg".into(), error.to_string()))?;
-        let servos = trims(robot, kind)
+        let of_servo = |joint: usize, error: ik_core::ServoError| {
+            refused(format!("servo.{}", sheet.joint_names()[joint]), error.to_string())
+        };
+        let counter =
+            Counter::of(&robot.output).map_err(|error| refused("output".into(), error.to_string()))?;
+        let curves = trims(robot, kind)
             .map(|trims| {
-                let servo = |joint: usize| {
-                    Servo::from_spec(servo_spec(&sheet.servos[joint], trims[joint])).map_err(|error| {
-                        refused(format!("servo.{}", sheet.joint_names()[joint]), error.to_string())
-                    })
+                let curve = |joint: usize| {
+                    servo::curve(&sheet.servos[joint], trims[joint]).map_err(|error| of_servo(joint, error))
                 };
-                Ok([servo(0)?, servo(1)?, servo(2)?])
+                Ok([curve(0)?, curve(1)?, curve(2)?])
+            })
+            .collect::<Result<Vec<_>, _>>()?;
+        let drives = curves
+            .iter()
+            .map(|curves| {
+                let channel = |joint: usize| {
+                    Channel::from_curve(&curves[joint], counter.counting())
+                        .map_err(|error| of_servo(joint, error))
+                };
+                let channels = [channel(0)?, channel(1)?, channel(2)?];
+                Ok(match sheet.knee_drive {
+                    KneeDrive::Direct => AnyDrive::Direct(channels),
+                    KneeDrive::Parallelogram => AnyDrive::Parallelogram(Parallelogram(channels)),
+                })
             })
             .collect::<Result<_, _>>()?;
-        Ok(Self {
-            leg: Leg::from_dimensions(dimensions, limits)
-                .map_err(|error| refused("measures".into(), error.to_string()))?,
-            servos,
-            counter: Counter::of(&robot.output)
-                .map_err(|error| refused("output".into(), error.to_string()))?,
-        })
+        let limits = limits(sheet, dimensions.bend(), &curves)
+            .map_err(|error| refused("range_deg".into(), error.to_string()))?;
+        let bends_back = matches!(sheet.bend, Bend::Backward | Bend::Down);
+        let leg = Leg::from_dimensions(dimensions, limits)
+            .map_err(|error| refused("measures".into(), error.to_string()))?;
+        Ok(Self { leg, bends_back, drives, counter })
+    }
+}
+
+/// The joint ranges that suit the servos of every leg of the kind.
+fn limits(
+    sheet: &LegKind,
+    bend: ik_core::Bend,
+    curves: &[[Curve; 3]],
+) -> Result<Limits, ik_core::limits::LimitsError> {
+    let [hip, thigh, knee] = sheet.range_deg;
+    let limits = Limits::degrees(hip, thigh, knee)?;
+    match sheet.knee_drive {
+        KneeDrive::Direct => Ok(limits),
+        KneeDrive::Parallelogram => curves.iter().try_fold(limits, |limits, [_, thigh, shank]| {
+            limits.through_parallelogram(bend, thigh.joint_deg(), shank.joint_deg())
+        }),
     }
 }
 
@@ -164,16 +208,18 @@ where
         let foot = Foot::<N>::try_from_mm(x, y, z)?;
         let answer = self.leg.solve(foot, Joints::ZERO);
         let joints = answer.joints.as_array();
-        let servos = &self.servos[leg % self.servos.len()];
-        let commands = [0, 1, 2].map(|joint| servos[joint].command(joints[joint]));
+        let Counts { counts, held } = match &self.drives[leg % self.drives.len()] {
+            AnyDrive::Direct(channels) => channels.send(&answer.joints, self.bends_back),
+            AnyDrive::Parallelogram(channels) => channels.send(&answer.joints, self.bends_back),
+        };
         Some(Answered {
             foot_mm: foot.mm(),
             pose: Pose { hip: joints[0].radians(), thigh: joints[1].radians(), knee: joints[2].radians() },
             outcome: answer.outcome,
             off_by_mm: N::mm(answer.off_by),
-            pulses_us: commands.map(|command| command.pulse.us()),
-            pulses_held: commands.map(|command| command.held),
-            counts: commands.map(|command| self.counter.counts(command.pulse)),
+            counts,
+            pulses_held: held.as_array(),
+            pulses_us: counts.map(|counts| f64::from(counts) * self.counter.count_us()),
         })
     }
 }
@@ -197,20 +243,6 @@ fn bend(bend: Bend) -> ik_core::Bend {
     }
 }
 
-fn servo_spec(servo: &ServoSheet, trim_us: f64) -> ServoSpec {
-    ServoSpec {
-        centre_us: servo.centre_us,
-        joint_at_centre_deg: servo.joint_at_centre_deg,
-        us_per_degree: servo.us_per_degree,
-        turns: match servo.turns {
-            Turns::With => ik_core::Turns::With,
-            Turns::Against => ik_core::Turns::Against,
-        },
-        trim_us,
-        pulse_us: servo.pulse_us,
-    }
-}
-
 /// A kind of leg as the reference sees it: from the sheet, not from ik-core.
 pub fn judged_leg(kind: &LegKind) -> judged::Leg {
     judged::Leg {
@@ -230,56 +262,23 @@ pub fn judged_leg(kind: &LegKind) -> judged::Leg {
     }
 }
 
-/// Its joint ranges as the reference sees them.
-pub fn judged_ranges(kind: &LegKind) -> Ranges {
+/// The joint ranges of a kind's legs as the reference sees them. With a knee driven through a parallelogram, the thigh's
+/// is what its servo can take in every leg of the kind, and what leaves the shank's servo an angle of the knee's range.
+pub fn judged_ranges(robot: &Robot, kind: usize) -> Ranges {
+    let sheet = &robot.kinds[kind];
+    let [hip, mut thigh, knee] = sheet.range_deg;
+    if sheet.knee_drive == KneeDrive::Parallelogram {
+        for trims in trims(robot, kind) {
+            let servo = |joint: usize| servo::range_deg(&sheet.servos[joint], trims[joint]);
+            let ([thigh_least, thigh_most], [shank_least, shank_most]) = (servo(1), servo(2));
+            let (shank_least, shank_most) = (shank_least.max(-180.0), shank_most.min(180.0));
+            let left = match sheet.bend {
+                Bend::Backward | Bend::Down => [shank_least - knee[1], shank_most - knee[0]],
+                Bend::Forward | Bend::Up => [knee[0] - shank_most, knee[1] - shank_least],
+            };
+            thigh = [thigh[0].max(thigh_least).max(left[0]), thigh[1].min(thigh_most).min(left[1])];
+        }
+    }
     let range = |[least, most]: [f64; 2]| Range { min: least.to_radians(), max: most.to_radians() };
-    Ranges { hip: range(kind.range_deg[0]), thigh: range(kind.range_deg[1]), knee: range(kind.range_deg[2]) }
-}
-
-/// The servos of a kind's legs and the output, in plain f64: where counts really put the joints.
-#[derive(Debug, Clone)]
-pub struct Commanded {
-    /// By leg of the kind, by joint: the pulse at the joint's angle at the centre, µs.
-    centres_us: Vec<[f64; 3]>,
-    /// By joint: radians per µs, with its sign.
-    radians_per_us: [f64; 3],
-    at_centre: [f64; 3],
-    count_us: f64,
-}
-
-impl Commanded {
-    /// For a kind of leg.
-    ///
-    /// # Errors
-    /// What the output refuses.
-    pub fn of(robot: &Robot, kind: usize) -> Result<Self, Refused> {
-        let sheet = &robot.kinds[kind];
-        let counter = Counter::of(&robot.output).map_err(|error| Refused {
-            kind: sheet.name.clone(),
-            what: "output".into(),
-            why: error.to_string(),
-        })?;
-        let servo = |joint: usize| &sheet.servos[joint];
-        Ok(Self {
-            centres_us: trims(robot, kind)
-                .map(|trims| [0, 1, 2].map(|joint| servo(joint).centre_us + trims[joint]))
-                .collect(),
-            radians_per_us: [0, 1, 2].map(|joint| {
-                let gain = servo(joint).us_per_degree.recip().to_radians();
-                if servo(joint).turns == Turns::With { gain } else { -gain }
-            }),
-            at_centre: [0, 1, 2].map(|joint| servo(joint).joint_at_centre_deg.to_radians()),
-            count_us: counter.count_us(),
-        })
-    }
-
-    /// The pose in which ideal servos of the `leg`th leg of the kind stand at the given counts.
-    pub fn pose(&self, leg: usize, counts: [u32; 3]) -> Pose {
-        let centres = &self.centres_us[leg % self.centres_us.len()];
-        let [hip, thigh, knee] = [0, 1, 2].map(|joint| {
-            let pulse = f64::from(counts[joint]) * self.count_us;
-            self.at_centre[joint] + (pulse - centres[joint]) * self.radians_per_us[joint]
-        });
-        Pose { hip, thigh, knee }
-    }
+    Ranges { hip: range(hip), thigh: range(thigh), knee: range(knee) }
 }

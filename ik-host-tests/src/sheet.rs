@@ -8,12 +8,16 @@
 //! | `[firmware]` | `numbers`: which of `float32`, `coarse`, `fixed32`, `fixed16` the firmware uses; `frame_hz` (optional, as `output.frame_hz`) |
 //! | `[output]`, `kind = "timer"` | `clock_hz`, `frame_hz`; optional `counter_bits` (16), `prescaler` (the finest that fits a frame) |
 //! | `[output]`, `kind = "expander"` | `oscillator_hz`, `resolution_bits`, `frame_hz` |
-//! | `[leg_kind.NAME]` | `hip = "yaw"` with `coxa_mm`, `femur_mm`, `tibia_mm`, or `hip = "roll"` with `hip_offset_mm`, `thigh_mm`, `shank_mm`; `knee_bends` |
+//! | `[leg_kind.NAME]` | `hip = "yaw"` with `coxa_mm`, `femur_mm`, `tibia_mm`, or `hip = "roll"` with `hip_offset_mm`, `thigh_mm`, `shank_mm`; `knee_bends`; optional `knee_drive` (`"direct"`, or `"parallelogram"`) |
 //! | `[leg_kind.NAME.range_deg]` | `hip`, `femur` or `thigh`, `knee`: `[least, most]` in degrees |
-//! | `[leg_kind.NAME.servo.JOINT]` | `centre_us`, `joint_at_centre_deg`, `us_per_degree`, `turns`, `pulse_us`; optional `dead_band_us` (0), `speed_s_per_60_deg`, `stall_torque_n_mm` |
+//! | `[leg_kind.NAME.servo.JOINT]` | `centre_us`, `joint_at_centre_deg`, `us_per_degree`, `turns`, or in place of these four `measured`; `pulse_us`; optional `dead_band_us` (0), `speed_s_per_60_deg`, `stall_torque_n_mm` |
 //! | `[leg_kind.NAME.work]` | `x_mm`, `y_mm`, `z_mm`: the work volume, a box in the leg's frame |
 //! | `[[leg]]` | `name`, `kind`, `side`, `at_mm`; optional `trim_us` |
 //! | `[allowed]` | `arithmetic_mm`, `with_pulse_mm`; optional `unreached_percent` (100) |
+//!
+//! `measured` is a list of 2 to 16 points `[pulse_us, joint_deg]`, the pulses rising, the angles all rising or all falling;
+//! between them the servo is taken to be straight, beyond them it is never sent. With `knee_drive = "parallelogram"` the
+//! angles in `servo.knee` are the shank's: see [`KneeDrive`].
 //!
 //! The two demo sheets ([`DEMOS`]) explain every key in a comment and are meant to be copied.
 //! Frames: the body's x points forward, y left, z up; a leg's x forward, y outboard, z up, with the
@@ -49,8 +53,8 @@ use std::path::Path;
 pub use complaint::{Complaint, Complaints, SheetErrors};
 pub use demos::{DEMOS, Demo};
 pub use robot::{
-    Allowed, Bend, Firmware, HipShape, LegKind, LegMount, NumberSystem, Output, Robot, Servo, Side, Turns,
-    WorkBox,
+    Allowed, Bend, Firmware, HipShape, KneeDrive, LegKind, LegMount, NumberSystem, Output, Robot, Servo,
+    ServoCurve, Side, Turns, WorkBox,
 };
 
 /// The largest sheet that is read, in bytes. A sheet is a few kilobytes; anything near this is

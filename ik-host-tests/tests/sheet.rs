@@ -2,7 +2,8 @@
 //! once, each with its line, its field, what is wrong and what would be right, and nothing panics.
 
 use ik_host_tests::sheet::{
-    self, Bend, Complaints, DEMOS, HipShape, NumberSystem, Output, Robot, SheetErrors, Side, Turns,
+    self, Bend, Complaints, DEMOS, HipShape, KneeDrive, NumberSystem, Output, Robot, ServoCurve, SheetErrors,
+    Side, Turns,
 };
 
 const CULVERT: &str = DEMOS[0].text;
@@ -20,6 +21,13 @@ fn wrong(text: &str) -> Complaints {
         Err(complaints) => complaints,
     }
 }
+
+/// The hip's centre and gain in the culvert walker's sheet.
+const HIP_CURVE: &str = "\
+centre_us = 1500                 # the pulse at which the servo stands in its middle
+joint_at_centre_deg = 0          # the joint's angle then
+us_per_degree = 11.1             # change of pulse for one degree: about 2000 us for 180 degrees
+turns = \"with\"                   # a longer pulse makes the joint's angle larger; \"against\": smaller";
 
 /// `text` with the first `from` in it replaced.
 fn altered(text: &str, from: &str, to: &str) -> String {
@@ -53,10 +61,15 @@ fn the_culvert_walker_is_read_as_it_is_written() {
     assert_eq!(kind.joint_names(), ["hip", "femur", "knee"]);
     assert_eq!((kind.offset_mm, kind.thigh_mm, kind.shank_mm), (42.5, 71.0, 118.4));
     assert_eq!(kind.range_deg, [[-50.0, 50.0], [-40.0, 90.0], [15.0, 155.0]]);
+    assert_eq!(kind.knee_drive, KneeDrive::Direct);
     let femur = &kind.servos[1];
-    assert_eq!((femur.centre_us, femur.joint_at_centre_deg), (1500.0, 25.0));
-    assert_eq!(femur.us_per_degree, 11.1);
-    assert_eq!(femur.turns, Turns::Against);
+    let curve = ServoCurve::Straight {
+        centre_us: 1500.0,
+        joint_at_centre_deg: 25.0,
+        us_per_degree: 11.1,
+        turns: Turns::Against,
+    };
+    assert_eq!(femur.curve, curve);
     assert_eq!(femur.pulse_us, [600.0, 2400.0]);
     assert_eq!(femur.dead_band_us, 4.0);
     assert_eq!(femur.speed_s_per_60_deg, Some(0.16));
@@ -100,11 +113,16 @@ fn the_demo_servos_can_go_wherever_their_joints_may() {
             let kind = &robot.kinds[leg.kind];
             for joint in 0..3 {
                 let servo = &kind.servos[joint];
+                let ServoCurve::Straight { centre_us, joint_at_centre_deg, us_per_degree, turns } =
+                    servo.curve
+                else {
+                    panic!("the demo servos are straight");
+                };
                 for angle in kind.range_deg[joint] {
-                    let swing = (angle - servo.joint_at_centre_deg) * servo.us_per_degree;
+                    let swing = (angle - joint_at_centre_deg) * us_per_degree;
                     let pulse = leg.trim_us[joint]
-                        + servo.centre_us
-                        + match servo.turns {
+                        + centre_us
+                        + match turns {
                             Turns::With => swing,
                             Turns::Against => -swing,
                         };
@@ -119,6 +137,36 @@ fn the_demo_servos_can_go_wherever_their_joints_may() {
             }
         }
     }
+}
+
+#[test]
+fn a_measured_servo_and_a_parallelogram_are_read_as_they_are_written() {
+    let text = altered(CULVERT, HIP_CURVE, "measured = [[700, 70], [1500.5, 0], [2300, -75]]");
+    let robot =
+        good(&altered(&text, "knee_bends = \"up\"", "knee_bends = \"up\"\nknee_drive = \"parallelogram\""));
+    let kind = &robot.kinds[0];
+    assert_eq!(kind.knee_drive, KneeDrive::Parallelogram);
+    let hip = &kind.servos[0];
+    let measured = vec![[700.0, 70.0], [1500.5, 0.0], [2300.0, -75.0]];
+    assert_eq!(hip.curve, ServoCurve::Measured { measured });
+    assert_eq!(hip.pulse_us, [600.0, 2400.0]);
+    // Nothing beyond the points, nothing beyond what is safe.
+    assert_eq!(
+        (hip.middle_us(), hip.sent_us(0.0), hip.sent_us(150.0)),
+        (1500.0, [700.0, 2300.0], [850.0, 2400.0])
+    );
+    let json = serde_json::to_value(&robot).unwrap();
+    assert_eq!(json["kinds"][0]["servos"][0]["measured"][1][0], 1500.5);
+    assert_eq!(json["kinds"][0]["knee_drive"], "parallelogram");
+}
+
+#[test]
+fn a_trim_must_leave_a_measured_servo_pulses_to_send() {
+    let text = altered(CULVERT, HIP_CURVE, "measured = [[2000, 0], [2300, 30]]");
+    let text = altered(&text, "hip = -7", "hip = 450");
+    let complaints = wrong(&text);
+    let shown = complaints.to_string();
+    assert!(shown.contains("moves every measured pulse outside `pulse_us`"), "{shown}");
 }
 
 #[test]
@@ -195,7 +243,7 @@ fn complaints_show_the_line_and_the_remedy() {
     16 │ shnk_mm = 100                    # fault 2: a key that does not exist
        │ ^^^^^^^
        │
-       = did you mean `shank_mm`? its keys are hip, hip_offset_mm, thigh_mm, shank_mm, knee_bends, range_deg, servo, work
+       = did you mean `shank_mm`? its keys are hip, hip_offset_mm, thigh_mm, shank_mm, knee_bends, knee_drive, range_deg, servo, work
 
     error: leg_kind.bench.range_deg.knee = [140, 10]: the first number must be less than the second
        ┌─ five-faults.toml:22:8
@@ -289,7 +337,7 @@ struct Fault {
 }
 
 macro_rules! faults {
-    ($($demo:ident: $from:literal => $to:literal, at $at:literal,
+    ($($demo:ident: $from:expr => $to:literal, at $at:literal,
        $field:literal: $problem:literal, $remedy:literal;)*) => {
         &[$(Fault { demo: $demo, from: $from, to: $to, at: $at,
             field: $field, problem: $problem, remedy: $remedy }),*]
@@ -425,6 +473,29 @@ const FAULTS: &[Fault] = faults![
         "leg_kind.walker.servo.hip.joint_at_centre_deg": "from -180 to 180 degrees", "half a turn";
     CULVERT: "us_per_degree = 11.1" => "us_per_degree = 0", at "us_per_degree = 0",
         "leg_kind.walker.servo.hip.us_per_degree": "above 0 and at most 100", "`turns` gives the sense";
+    CULVERT: "knee_bends = \"up\"" => "knee_bends = \"up\"\nknee_drive = \"paralelogram\"", at "paralelogram",
+        "leg_kind.walker.knee_drive": "must be \"direct\" or \"parallelogram\"", "did you mean \"parallelogram\"?";
+    // Measured servos.
+    CULVERT: HIP_CURVE => "measured = [[700, -70], [1500, 0], [2300, 75]]\nturns = \"with\"", at "turns = \"with\"\n",
+        "leg_kind.walker.servo.hip.turns": "belongs to a servo without `measured`", "take it out";
+    CULVERT: HIP_CURVE => "measured = [[700, -70]]", at "[[700, -70]]",
+        "leg_kind.walker.servo.hip.measured": "from 2 to 16 points, not 1", "two give a straight line";
+    CULVERT: HIP_CURVE => "measured = [[700, -70], [1500, 0, 0]]", at "[1500, 0, 0]",
+        "leg_kind.walker.servo.hip.measured[2]": "must be 2 numbers, not 3", "[[600, -79.5], [1500, 0]";
+    CULVERT: HIP_CURVE => "measured = [[700, -70], 1500]", at "1500]",
+        "leg_kind.walker.servo.hip.measured[2]": "must be a list, not a number", "[[600, -79.5], [1500, 0]";
+    CULVERT: HIP_CURVE => "measured = [[700, -70], [3200, 70]]", at "3200, 70",
+        "leg_kind.walker.servo.hip.measured[2]": "from 100 to 3000 us", "microseconds";
+    CULVERT: HIP_CURVE => "measured = [[500, -90], [1500, 0]]", at "[500, -90]",
+        "leg_kind.walker.servo.hip.measured[1]": "within the safe pulses of `pulse_us`", "from 600 to 2400";
+    CULVERT: HIP_CURVE => "measured = [[700, -70], [1500, 0], [1500, 5]]", at "[1500, 5]",
+        "leg_kind.walker.servo.hip.measured[3]": "longer than the one before it, 1500 us", "sort the points";
+    CULVERT: HIP_CURVE => "measured = [[700, -70], [1500, 0], [1600, -5], [2300, 70]]", at "[1600, -5]",
+        "leg_kind.walker.servo.hip.measured[3]": "larger than the one before it, 0 degrees", "misread point";
+    CULVERT: HIP_CURVE => "measured = [[700, 70], [1500, 0], [1600, 0], [2300, -70]]", at "[1600, 0]",
+        "leg_kind.walker.servo.hip.measured[3]": "smaller than the one before it, 0 degrees", "misread point";
+    CULVERT: HIP_CURVE => "measured = [[700, -70], [1500, -69], [2300, 70]]", at "[1500, -69]",
+        "leg_kind.walker.servo.hip.measured[2]": "would take 800.000 us per degree", "misread?";
     CULVERT: "turns = \"with\"" => "turns = \"againts\"", at "againts",
         "leg_kind.walker.servo.hip.turns": "must be \"with\" or \"against\"", "did you mean \"against\"?";
     CULVERT: "pulse_us = [600, 2400]" => "pulse_us = [600, 3001]", at "3001",

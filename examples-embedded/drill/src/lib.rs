@@ -14,9 +14,9 @@ mod limbs;
 mod numbers;
 mod targets;
 
-use ik_core::{Coarse, End, Fixed32, Float32, Hip, Joints, Limb, Outcome};
+use ik_core::{Channel, Coarse, End, Fixed32, Float32, Hip, Joints, Limb, Outcome};
 
-use limbs::{InFlash, TIMER};
+use limbs::InFlash;
 use numbers::Bits;
 pub use targets::{TARGETS, Target};
 
@@ -74,7 +74,7 @@ fn both_legs<N: InFlash + Bits>(tell: &mut dyn FnMut(Event)) {
     one_leg("culvert walker's left front leg with free joints", &culvert, tell);
 }
 
-fn one_leg<H: Hip, N: Bits>(leg: &'static str, limb: &Limb<H, N>, tell: &mut dyn FnMut(Event)) {
+fn one_leg<H: Hip, N: Bits>(leg: &'static str, limb: &Limb<H, N, [Channel<N>; 3]>, tell: &mut dyn FnMut(Event)) {
     tell(Event::Run { leg, numbers: N::NAME });
     let mut pose = Joints::ZERO;
     for (number, target) in (0..).zip(targets::stream()) {
@@ -84,7 +84,7 @@ fn one_leg<H: Hip, N: Bits>(leg: &'static str, limb: &Limb<H, N>, tell: &mut dyn
 }
 
 /// From a foot target to three pulse lengths in ticks: what a firmware does every frame.
-fn solve<H: Hip, N: Bits>(limb: &Limb<H, N>, target: Target, pose: &mut Joints<N>) -> Answer {
+fn solve<H: Hip, N: Bits>(limb: &Limb<H, N, [Channel<N>; 3]>, target: Target, pose: &mut Joints<N>) -> Answer {
     // Targets are given as the leg sees them; a gait would give them on the body's frame.
     let foot = limb.mounting.body_frame(target.foot());
     let command = limb.command(foot, *pose);
@@ -94,8 +94,8 @@ fn solve<H: Hip, N: Bits>(limb: &Limb<H, N>, target: Target, pose: &mut Joints<N
         joints: command.answer.joints.as_array().map(|joint| N::angle_bits(joint.raw())),
         off_by: N::length_bits(command.answer.off_by),
         outcome: command.answer.outcome,
-        pulses_held: command.commands.map(|servo| servo.held),
-        ticks: command.counts(&TIMER),
+        pulses_held: command.commands.held.as_array(),
+        ticks: command.counts(),
     }
 }
 

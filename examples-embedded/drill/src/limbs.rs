@@ -5,8 +5,8 @@
 
 use ik_core::number::Number;
 use ik_core::{
-    Bend, Coarse, Dimensions, Fixed32, Float32, Foot, Leg, Limb, Limits, Mounting, RollHip, Servo, ServoSpec,
-    Side, Timer, Turns, YawHip,
+    Bend, Channel, Coarse, Dimensions, Fixed32, Float32, Foot, Leg, Limb, Limits, Mounting, RollHip,
+    ServoSpec, Side, Timer, Turns, YawHip,
 };
 
 /// An impossible leg, range or servo does not compile: the message becomes a compile error.
@@ -20,16 +20,16 @@ macro_rules! possible {
 }
 
 /// 16 bits at 48 MHz, frames of 20 ms.
-pub(crate) const TIMER: Timer = possible!(Timer::finest(48_000_000, 16, 50.0));
+const TIMER: Timer = possible!(Timer::finest(48_000_000, 16, 50.0));
 
 /// The two legs as constants of a number system; nothing is computed at start-up.
 pub(crate) trait InFlash: Number {
     /// Right front leg of the orchard walker.
-    const ORCHARD: Limb<RollHip, Self>;
+    const ORCHARD: Limb<RollHip, Self, [Channel<Self>; 3]>;
     /// The same leg with free joints.
     const ORCHARD_FREE: Leg<RollHip, Self>;
     /// Left front leg of the culvert walker.
-    const CULVERT: Limb<YawHip, Self>;
+    const CULVERT: Limb<YawHip, Self, [Channel<Self>; 3]>;
     /// The same leg with free joints.
     const CULVERT_FREE: Leg<YawHip, Self>;
 }
@@ -62,24 +62,24 @@ const CULVERT_SERVOS: [ServoSpec; 3] = [
 macro_rules! in_flash {
     ($numbers:ty, $mm:expr) => {
         impl InFlash for $numbers {
-            const ORCHARD: Limb<RollHip, Self> = Limb {
+            const ORCHARD: Limb<RollHip, Self, [Channel<Self>; 3]> = Limb {
                 leg: possible!(Leg::<RollHip, Self>::new(ORCHARD_DIMENSIONS, ORCHARD_LIMITS)),
                 mounting: Mounting::new(Foot::new($mm(120), $mm(-52), $mm(0)), Side::Right),
                 servos: [
-                    possible!(Servo::<Self>::new(ORCHARD_SERVOS[0])),
-                    possible!(Servo::<Self>::new(ORCHARD_SERVOS[1])),
-                    possible!(Servo::<Self>::new(ORCHARD_SERVOS[2])),
+                    possible!(Channel::<Self>::new(ORCHARD_SERVOS[0], TIMER.counting())),
+                    possible!(Channel::<Self>::new(ORCHARD_SERVOS[1], TIMER.counting())),
+                    possible!(Channel::<Self>::new(ORCHARD_SERVOS[2], TIMER.counting())),
                 ],
             };
             const ORCHARD_FREE: Leg<RollHip, Self> =
                 possible!(Leg::<RollHip, Self>::new(ORCHARD_DIMENSIONS, Limits::FREE));
-            const CULVERT: Limb<YawHip, Self> = Limb {
+            const CULVERT: Limb<YawHip, Self, [Channel<Self>; 3]> = Limb {
                 leg: possible!(Leg::<YawHip, Self>::new(CULVERT_DIMENSIONS, CULVERT_LIMITS)),
                 mounting: Mounting::new(Foot::new($mm(95), $mm(58), $mm(0)), Side::Left),
                 servos: [
-                    possible!(Servo::<Self>::new(CULVERT_SERVOS[0])),
-                    possible!(Servo::<Self>::new(CULVERT_SERVOS[1])),
-                    possible!(Servo::<Self>::new(CULVERT_SERVOS[2])),
+                    possible!(Channel::<Self>::new(CULVERT_SERVOS[0], TIMER.counting())),
+                    possible!(Channel::<Self>::new(CULVERT_SERVOS[1], TIMER.counting())),
+                    possible!(Channel::<Self>::new(CULVERT_SERVOS[2], TIMER.counting())),
                 ],
             };
             const CULVERT_FREE: Leg<YawHip, Self> =

@@ -16,6 +16,14 @@ pub struct Answer<N: Number> {
     pub off_by: N::Length,
 }
 
+impl<N: Number> Answer<N> {
+    /// A foot that is where it was asked to be.
+    #[inline(always)]
+    pub(crate) const fn reached(joints: Joints<N>) -> Self {
+        Self { joints, outcome: Outcome::Reached, off_by: N::NO_LENGTH }
+    }
+}
+
 /// What was done with a foot position.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
 #[cfg_attr(feature = "defmt", derive(defmt::Format))]

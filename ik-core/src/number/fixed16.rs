@@ -15,6 +15,7 @@ mod knee;
 mod root;
 mod sine;
 
+use super::line::FixedLine;
 use super::{Knee, Number, Placed};
 use crate::const_math::{inward, nearest_i32, power_of_two};
 use fixed::types::{I0F16, I10F6};
@@ -154,6 +155,10 @@ impl Fixed16 {
     pub(crate) const fn swing_from(turns_per_us: f64) -> i32 {
         nearest_i32(turns_per_us * power_of_two(SWING_BITS as i32))
     }
+
+    pub(crate) const fn line_from(per_turn: f64, at_zero: f64) -> FixedLine {
+        FixedLine::from(per_turn, at_zero)
+    }
 }
 
 /// The nearest integer that an `i16` holds.
@@ -183,6 +188,7 @@ impl Number for Fixed16 {
     type Unit = Fixed16Unit;
     type Gain = i32;
     type Swing = i32;
+    type Line = FixedLine;
 
     const NAME: &'static str = "fixed16";
     const NO_LENGTH: I10F6 = I10F6::ZERO;
@@ -231,6 +237,9 @@ impl Number for Fixed16 {
     }
     fn swing_from(turns_per_us: f64) -> i32 {
         Fixed16::swing_from(turns_per_us)
+    }
+    fn line_from(per_turn: f64, at_zero: f64) -> FixedLine {
+        Fixed16::line_from(per_turn, at_zero)
     }
 
     #[inline(always)]
@@ -405,6 +414,11 @@ impl Number for Fixed16 {
     fn swing_to(travel: i32, from: I0F16, swing: i32) -> I0F16 {
         let turned = ((i64::from(travel) * i64::from(swing)) >> (SWING_BITS - 1)) as i32;
         I0F16::from_bits(saturated(i32::from(from.to_bits()).saturating_add((turned + 1) >> 1)))
+    }
+
+    #[inline(always)]
+    fn on_line(line: FixedLine, angle: I0F16) -> i32 {
+        line.at_short(angle.to_bits())
     }
 }
 

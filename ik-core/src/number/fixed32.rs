@@ -10,6 +10,7 @@ mod knee;
 mod root;
 mod sine;
 
+use super::line::FixedLine;
 use super::{Knee, Number, Placed};
 use crate::const_math::{inward, nearest, nearest_i32, power_of_two};
 use fixed::types::{I0F32, I16F16};
@@ -119,6 +120,10 @@ impl Fixed32 {
     pub(crate) const fn swing_from(turns_per_us: f64) -> i32 {
         nearest_i32(turns_per_us * power_of_two(32 - LENGTH_BITS + SWING_BITS as i32))
     }
+
+    pub(crate) const fn line_from(per_turn: f64, at_zero: f64) -> FixedLine {
+        FixedLine::from(per_turn, at_zero)
+    }
 }
 
 /// `value / 2^bits`, rounded to nearest.
@@ -205,6 +210,7 @@ impl Number for Fixed32 {
     type Unit = u32;
     type Gain = i32;
     type Swing = i32;
+    type Line = FixedLine;
 
     const NAME: &'static str = "fixed32";
     const NO_LENGTH: I16F16 = I16F16::ZERO;
@@ -247,6 +253,9 @@ impl Number for Fixed32 {
     }
     fn swing_from(turns_per_us: f64) -> i32 {
         Fixed32::swing_from(turns_per_us)
+    }
+    fn line_from(per_turn: f64, at_zero: f64) -> FixedLine {
+        Fixed32::line_from(per_turn, at_zero)
     }
 
     #[inline(always)]
@@ -424,6 +433,11 @@ impl Number for Fixed32 {
     fn swing_to(travel: i32, from: I0F32, swing: i32) -> I0F32 {
         let turned = rounded_shift(i64::from(travel) * i64::from(swing), SWING_BITS);
         I0F32::from_bits(saturated(i64::from(from.to_bits()) + turned))
+    }
+
+    #[inline(always)]
+    fn on_line(line: FixedLine, angle: I0F32) -> i32 {
+        line.at(angle.to_bits())
     }
 }
 

@@ -87,6 +87,16 @@ impl Sub for Steps2 {
     }
 }
 
+/// A straight line from an angle to a whole number.
+#[derive(Debug, Clone, Copy, PartialEq)]
+#[cfg_attr(feature = "defmt", derive(defmt::Format))]
+pub struct FloatLine {
+    /// Per radian.
+    slope: f32,
+    /// At no angle, and ½ more.
+    start: f32,
+}
+
 /// Bits of the integers whose squares are exact.
 const STEP_BITS: i32 = 30;
 
@@ -164,6 +174,10 @@ impl<M: FloatMaths> Float<M> {
     pub(crate) const fn swing_from(turns_per_us: f64) -> f32 {
         (turns_per_us * core::f64::consts::TAU) as f32
     }
+
+    pub(crate) const fn line_from(per_turn: f64, at_zero: f64) -> FloatLine {
+        FloatLine { slope: (per_turn / core::f64::consts::TAU) as f32, start: (at_zero + 0.5) as f32 }
+    }
 }
 
 /// An angle of less than three half-turns, in (−π, π].
@@ -209,6 +223,7 @@ impl<M: FloatMaths> Number for Float<M> {
     type Unit = f32;
     type Gain = f32;
     type Swing = f32;
+    type Line = FloatLine;
 
     const NAME: &'static str = M::NAME;
     const NO_LENGTH: f32 = 0.0;
@@ -252,6 +267,9 @@ impl<M: FloatMaths> Number for Float<M> {
     fn swing_from(turns_per_us: f64) -> f32 {
         Self::swing_from(turns_per_us)
     }
+    fn line_from(per_turn: f64, at_zero: f64) -> FloatLine {
+        Self::line_from(per_turn, at_zero)
+    }
 
     /// Every foot passes: steps saturate and NaN gives none, sums of squares wrap, and no sum of three squares below
     /// 2^62 each that is not a square of the reach looks like one; NaN comes out as an angle.
@@ -290,6 +308,12 @@ impl<M: FloatMaths> Number for Float<M> {
 
     fn length_difference(a: f32, b: f32) -> f32 {
         a - b
+    }
+
+    #[inline(always)]
+    fn length_difference_or_mirrored(a: f32, b: f32, mirrored: bool) -> f32 {
+        let difference = a - b;
+        if mirrored { -difference } else { difference }
     }
 
     #[inline(always)]
@@ -414,6 +438,12 @@ impl<M: FloatMaths> Number for Float<M> {
     #[inline(always)]
     fn swing_to(travel: i32, from: f32, swing: f32) -> f32 {
         (from + travel as f32 * (1.0 / 65_536.0) * swing).clamp(-PI, PI)
+    }
+
+    #[inline(always)]
+    fn on_line(line: FloatLine, angle: f32) -> i32 {
+        // Towards zero, so that what is below zero comes out below 1 as well.
+        (line.slope * angle + line.start) as i32
     }
 }
 

@@ -1,6 +1,6 @@
 //! A PWM expander: many channels of few counts a frame, behind a serial bus.
 
-use super::{Clock, Output, OutputError};
+use super::{Clock, Counting, Output, OutputError};
 use crate::const_math::nearest;
 use crate::servo::Pulse;
 
@@ -66,6 +66,11 @@ impl Expander {
     /// The factor by which the prescaler divides.
     pub const fn divider(&self) -> u32 {
         self.clock.divider
+    }
+
+    /// How it counts.
+    pub const fn counting(&self) -> Counting {
+        Counting { clock: self.clock, most_counts: self.frame_counts() - 1 }
     }
 
     /// Counts in a frame.

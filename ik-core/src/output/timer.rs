@@ -1,6 +1,6 @@
 //! A timer whose compare registers end the pulses.
 
-use super::{Clock, Output, OutputError};
+use super::{Clock, Counting, Output, OutputError};
 use crate::const_math::nearest;
 use crate::servo::Pulse;
 
@@ -74,6 +74,11 @@ impl Timer {
     /// The factor by which the prescaler divides.
     pub const fn divider(&self) -> u32 {
         self.clock.divider
+    }
+
+    /// How it counts.
+    pub const fn counting(&self) -> Counting {
+        Counting { clock: self.clock, most_counts: self.most_ticks }
     }
 
     /// Ticks in a frame.

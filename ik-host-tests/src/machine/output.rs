@@ -2,7 +2,7 @@
 
 use crate::sheet;
 use ik_core::output::Output;
-use ik_core::{Expander, OutputError, Pulse, Timer};
+use ik_core::{Counting, Expander, OutputError, Pulse, Timer};
 
 /// A timer or an expander.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -35,6 +35,14 @@ impl Counter {
         match self {
             Self::Timer(timer) => timer,
             Self::Expander(expander) => expander,
+        }
+    }
+
+    /// How it counts.
+    pub const fn counting(&self) -> Counting {
+        match self {
+            Self::Timer(timer) => timer.counting(),
+            Self::Expander(expander) => expander.counting(),
         }
     }
 

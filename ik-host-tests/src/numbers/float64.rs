@@ -32,6 +32,8 @@ impl Number for Float64 {
     type Unit = f64;
     type Gain = f64;
     type Swing = f64;
+    /// Per radian, and at no angle.
+    type Line = (f64, f64);
 
     const NAME: &'static str = "float64";
     const NO_LENGTH: f64 = 0.0;
@@ -71,6 +73,9 @@ impl Number for Float64 {
     }
     fn swing_from(turns_per_us: f64) -> f64 {
         turns_per_us * TAU
+    }
+    fn line_from(per_turn: f64, at_zero: f64) -> (f64, f64) {
+        (per_turn / TAU, at_zero)
     }
 
     fn place(foot: [f64; 3], limit: f64) -> Placed<Self> {
@@ -177,5 +182,8 @@ impl Number for Float64 {
     }
     fn swing_to(travel: i32, from: f64, swing: f64) -> f64 {
         (from + f64::from(travel) / 65_536.0 * swing).clamp(-PI, PI)
+    }
+    fn on_line((slope, start): (f64, f64), angle: f64) -> i32 {
+        (slope * angle + start + 0.5).floor() as i32
     }
 }

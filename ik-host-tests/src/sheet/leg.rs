@@ -3,7 +3,7 @@
 use super::leg_kind::KnownKind;
 use super::limits;
 use super::nearest::nearest;
-use super::robot::{LegMount, Side};
+use super::robot::{LegMount, Servo, ServoCurve, Side};
 use super::table::{Item, Table};
 use super::vocabulary::{LEG, of_shape};
 
@@ -100,17 +100,37 @@ fn trims(item: &Item<'_>, kind: &KnownKind<'_>) -> Option<[f64; 3]> {
         let Some(servo) = servo else {
             continue; // complained of already
         };
-        let [least, most] = servo.pulse_us;
-        let centre = servo.centre_us;
-        if !(least..=most).contains(&(centre + written)) {
-            item.complain(
-                format!("moves the centre to {} us, outside `pulse_us`", centre + written),
-                format!("from {} to {}", least - centre, most - centre),
-            );
-            good = false;
-        }
+        good &= is_safe(&item, servo, written);
     }
     good.then_some(trims)
+}
+
+/// Whether a trim leaves the servo pulses to send.
+fn is_safe(item: &Item<'_>, servo: &Servo, trim: f64) -> bool {
+    let [least, most] = servo.pulse_us;
+    match &servo.curve {
+        ServoCurve::Straight { centre_us: centre, .. } => {
+            let safe = (least..=most).contains(&(centre + trim));
+            if !safe {
+                item.complain(
+                    format!("moves the centre to {} us, outside `pulse_us`", centre + trim),
+                    format!("from {} to {}", least - centre, most - centre),
+                );
+            }
+            safe
+        }
+        ServoCurve::Measured { .. } => {
+            let [first, last] = servo.sent_us(trim);
+            let safe = first < last;
+            if !safe {
+                item.complain(
+                    "moves every measured pulse outside `pulse_us`",
+                    "a trim is a few microseconds: measure the servo anew",
+                );
+            }
+            safe
+        }
+    }
 }
 
 /// Which kinds are used.

@@ -1,12 +1,14 @@
 //! `[leg_kind.NAME]`: the kinds of leg.
 
 use super::limits;
-use super::robot::{Bend, HipShape, LegKind, Output, Servo, WorkBox};
+use super::robot::{Bend, HipShape, KneeDrive, LegKind, Output, Servo, WorkBox};
 use super::servo;
 use super::table::{Item, Table};
 use super::vocabulary::{ShapeWords, WORK, of_shape};
 
 const HIPS: [(&str, HipShape); 2] = [("yaw", HipShape::Yaw), ("roll", HipShape::Roll)];
+const KNEE_DRIVES: [(&str, KneeDrive); 2] =
+    [("direct", KneeDrive::Direct), ("parallelogram", KneeDrive::Parallelogram)];
 
 /// A kind as far as it could be read: enough to check the legs against, even when it is faulty.
 pub(super) struct KnownKind<'s> {
@@ -55,6 +57,8 @@ fn read(name: &str, item: &Item<'_>, shape: HipShape, output: Option<&Output>) -
     let hip = table.needed("hip").and_then(|item| item.word(&HIPS));
     let lengths = lengths(&table, &words);
     let bend = table.needed("knee_bends").and_then(|item| bend(&item, shape));
+    let knee_drive =
+        table.optional("knee_drive").map_or(Some(KneeDrive::Direct), |item| item.word(&KNEE_DRIVES));
     let range_deg = ranges(&table, &words, shape);
     let servos = servos(&table, &words, shape, output);
     let work = table.needed("work").and_then(|item| work(&item));
@@ -67,6 +71,7 @@ fn read(name: &str, item: &Item<'_>, shape: HipShape, output: Option<&Output>) -
         shank_mm,
         bend: bend?,
         range_deg: range_deg?,
+        knee_drive: knee_drive?,
         servos: servos?,
         work: work?,
     })

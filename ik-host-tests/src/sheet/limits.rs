@@ -92,6 +92,18 @@ pub(super) const US_PER_DEGREE: Bounds = Bounds::above(
     " us per degree",
     "it is about 11.1 for a servo that takes 2000 us for 180 degrees; `turns` gives the sense",
 );
+pub(super) const MEASURED_POINTS: Bounds = Bounds::from(
+    2.0,
+    16.0,
+    " points",
+    "two give a straight line; more than 16 follow the reading errors, not the servo",
+);
+pub(super) const MEASURED_US_PER_DEGREE: Bounds = Bounds::from(
+    0.1,
+    90.0,
+    " us per degree",
+    "it is about 11.1 for a servo that takes 2000 us for 180 degrees: is a point misread?",
+);
 pub(super) const DEAD_BAND_US: Bounds =
     Bounds::from(0.0, 100.0, " us", "a dead band is a few microseconds, and 0 when it is not known");
 pub(super) const SPEED_S: Bounds = Bounds::above(

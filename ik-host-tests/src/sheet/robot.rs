@@ -114,7 +114,9 @@ pub struct LegKind {
     pub bend: Bend,
     /// Joint ranges, `[least, most]` in degrees: hip, thigh or femur, knee.
     pub range_deg: [[f64; 2]; 3],
-    /// Servos: hip, thigh or femur, knee.
+    /// What the knee's servo turns.
+    pub knee_drive: KneeDrive,
+    /// Servos: hip, thigh or femur, knee. With a parallelogram, the angles of the knee's servo are the shank's.
     pub servos: [Servo; 3],
     /// Where the foot works.
     pub work: WorkBox,
@@ -161,18 +163,25 @@ pub enum Bend {
     Down,
 }
 
+/// What the servo of the knee turns.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Serialize)]
+#[serde(rename_all = "lowercase")]
+pub enum KneeDrive {
+    /// The knee: it sits on the thigh, or moves with it.
+    Direct,
+    /// The shank, from the body, through a parallelogram beside the thigh. The servo's angle is the shank's: counted as
+    /// the knee is, so that it is knee + thigh for a knee that bends backward or down, knee - thigh for one that bends
+    /// forward or up.
+    Parallelogram,
+}
+
 /// One servo: how joint angle and pulse go together, and what it can bear.
 #[derive(Debug, Clone, PartialEq, Serialize)]
 pub struct Servo {
-    /// Pulse at which the servo stands in its middle, in microseconds, before trim.
-    pub centre_us: f64,
-    /// The joint's angle then, in degrees.
-    pub joint_at_centre_deg: f64,
-    /// How much longer or shorter the pulse gets per degree of the joint, in microseconds: above 0.
-    pub us_per_degree: f64,
-    /// Whether a longer pulse makes the joint's angle larger.
-    pub turns: Turns,
-    /// Mechanically safe pulses, `[least, most]` in microseconds; `centre_us` lies within.
+    /// How joint angle and pulse go together, before trim.
+    #[serde(flatten)]
+    pub curve: ServoCurve,
+    /// Mechanically safe pulses, `[least, most]` in microseconds; the centre, or every measured pulse, lies within.
     pub pulse_us: [f64; 2],
     /// Change of pulse that the servo does not answer, in microseconds.
     pub dead_band_us: f64,
@@ -180,6 +189,55 @@ pub struct Servo {
     pub speed_s_per_60_deg: Option<f64>,
     /// Torque at stall, in newton millimetres.
     pub stall_torque_n_mm: Option<f64>,
+}
+
+impl Servo {
+    /// The pulse in the middle, before trim: of a straight curve its centre, of a measured one midway between its ends.
+    pub fn middle_us(&self) -> f64 {
+        match &self.curve {
+            ServoCurve::Straight { centre_us, .. } => *centre_us,
+            ServoCurve::Measured { measured } => {
+                let ends = [measured.first(), measured.last()].map(|point| point.map_or(0.0, |[us, _]| *us));
+                (ends[0] + ends[1]) / 2.0
+            }
+        }
+    }
+
+    /// The pulses that are ever sent with a trim, `[least, most]` in microseconds: the safe ones, and of a measured curve
+    /// no more than was measured. Empty (the first above the second) if the trim leaves none.
+    pub fn sent_us(&self, trim_us: f64) -> [f64; 2] {
+        let [least, most] = self.pulse_us;
+        match &self.curve {
+            ServoCurve::Straight { .. } => [least, most],
+            ServoCurve::Measured { measured } => {
+                let end = |point: Option<&[f64; 2]>| point.map_or(0.0, |[us, _]| us + trim_us);
+                [least.max(end(measured.first())), most.min(end(measured.last()))]
+            }
+        }
+    }
+}
+
+/// How joint angle and pulse go together.
+#[derive(Debug, Clone, PartialEq, Serialize)]
+#[serde(untagged)]
+pub enum ServoCurve {
+    /// A straight line.
+    Straight {
+        /// Pulse at which the servo stands in its middle, in microseconds, before trim.
+        centre_us: f64,
+        /// The joint's angle then, in degrees.
+        joint_at_centre_deg: f64,
+        /// How much longer or shorter the pulse gets per degree of the joint, in microseconds: above 0.
+        us_per_degree: f64,
+        /// Whether a longer pulse makes the joint's angle larger.
+        turns: Turns,
+    },
+    /// Straight between measured points.
+    Measured {
+        /// Pulse in microseconds, before trim, and the joint's angle there in degrees: 2 to 16 points, the pulses rising,
+        /// the angles all rising or all falling.
+        measured: Vec<[f64; 2]>,
+    },
 }
 
 /// Whether a longer pulse makes the joint's angle larger.

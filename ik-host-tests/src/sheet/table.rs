@@ -303,6 +303,27 @@ impl<'s> Item<'s> {
         Some(array.iter().map(item).collect())
     }
 
+    /// The values of a list, counted from 1 in their paths.
+    pub(super) fn numbered_list(&self) -> Option<Vec<Item<'s>>> {
+        let mut items = self.list()?;
+        for (number, item) in (1..).zip(&mut items) {
+            item.path = format!("{}[{number}]", self.path);
+        }
+        Some(items)
+    }
+
+    /// A list of two numbers, each within bounds of its own.
+    pub(super) fn pair(&self, bounds: [&Bounds; 2]) -> Option<[f64; 2]> {
+        let list = self.list()?;
+        let [first, second] = &list[..] else {
+            let remedy = format!("write it as in `{}`", self.example);
+            self.complain(format!("must be 2 numbers, not {}", list.len()), remedy);
+            return None;
+        };
+        let (first, second) = (first.within(bounds[0]), second.within(bounds[1]));
+        Some([first?, second?])
+    }
+
     /// A list of exactly `N` numbers, each within bounds.
     pub(super) fn numbers<const N: usize>(&self, bounds: &Bounds) -> Option<[f64; N]> {
         let list = self.list()?;
@@ -398,10 +419,7 @@ impl<'s> Item<'s> {
             self.complain("must be a list of tables, not one table", remedy);
             return None;
         }
-        let mut items = self.list()?;
-        for (number, item) in (1..).zip(&mut items) {
-            item.path = format!("{}[{number}]", self.path);
-        }
+        let items = self.numbered_list()?;
         // Every one is opened, so that each wrong one is named.
         Some(items.iter().filter_map(|item| item.table(vocabulary)).collect())
     }

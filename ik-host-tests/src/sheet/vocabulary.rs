@@ -111,6 +111,7 @@ pub(super) static YAW_KIND: Vocabulary = Vocabulary {
         key("femur_mm", "femur_mm = 71.0"),
         key("tibia_mm", "tibia_mm = 118.0"),
         key("knee_bends", "knee_bends = \"up\""),
+        key("knee_drive", "knee_drive = \"direct\""),
         key("range_deg", "[leg_kind.walker.range_deg]"),
         key("servo", "[leg_kind.walker.servo.hip]"),
         key("work", "[leg_kind.walker.work]"),
@@ -130,6 +131,7 @@ pub(super) static ROLL_KIND: Vocabulary = Vocabulary {
         key("thigh_mm", "thigh_mm = 94.0"),
         key("shank_mm", "shank_mm = 107.0"),
         key("knee_bends", "knee_bends = \"forward\""),
+        key("knee_drive", "knee_drive = \"direct\""),
         key("range_deg", "[leg_kind.walker.range_deg]"),
         key("servo", "[leg_kind.walker.servo.hip]"),
         key("work", "[leg_kind.walker.work]"),
@@ -201,19 +203,40 @@ static ROLL_TRIMS: Vocabulary = Vocabulary {
     strays: &[stray("femur", Some("thigh"), OF_YAW_HIP)],
 };
 
-pub(super) static SERVO: Vocabulary = Vocabulary {
+pub(super) static STRAIGHT_SERVO: Vocabulary = Vocabulary {
     table: "a servo",
     keys: &[
         key("centre_us", "centre_us = 1500"),
         key("joint_at_centre_deg", "joint_at_centre_deg = 0"),
         key("us_per_degree", "us_per_degree = 11.1"),
         key("turns", "turns = \"with\""),
+        key("measured", MEASURED),
         key("pulse_us", "pulse_us = [600, 2400]"),
         key("dead_band_us", "dead_band_us = 4"),
         key("speed_s_per_60_deg", "speed_s_per_60_deg = 0.16"),
         key("stall_torque_n_mm", "stall_torque_n_mm = 1200"),
     ],
     strays: &[],
+};
+
+const MEASURED: &str = "measured = [[600, -79.5], [1500, 0], [2400, 83]]";
+const OF_STRAIGHT: &str = "belongs to a servo without `measured`, and this one has it";
+
+pub(super) static MEASURED_SERVO: Vocabulary = Vocabulary {
+    table: "a servo with `measured`",
+    keys: &[
+        key("measured", MEASURED),
+        key("pulse_us", "pulse_us = [600, 2400]"),
+        key("dead_band_us", "dead_band_us = 4"),
+        key("speed_s_per_60_deg", "speed_s_per_60_deg = 0.16"),
+        key("stall_torque_n_mm", "stall_torque_n_mm = 1200"),
+    ],
+    strays: &[
+        stray("centre_us", None, OF_STRAIGHT),
+        stray("joint_at_centre_deg", None, OF_STRAIGHT),
+        stray("us_per_degree", None, OF_STRAIGHT),
+        stray("turns", None, OF_STRAIGHT),
+    ],
 };
 
 pub(super) static WORK: Vocabulary = Vocabulary {

@@ -2,7 +2,7 @@
 //! and at every joint limit, each of them a little to both sides.
 
 use super::targets::is_within;
-use crate::machine::{judged_leg, judged_ranges};
+use crate::machine::judged_leg;
 use crate::reference::{self, Leg, Pose, Shape};
 use crate::sheet::LegKind;
 use rand::{Rng, RngExt};
@@ -108,8 +108,7 @@ fn at_two_limits(subject: &Subject<'_>, random: &mut dyn Rng) -> [f64; 3] {
 }
 
 fn hold_one(subject: &Subject<'_>, pose: &mut [f64; 3], random: &mut dyn Rng) {
-    let ranges = judged_ranges(subject.kind);
     let joint = random.random_range(0..3);
-    let range = [ranges.hip, ranges.thigh, ranges.knee][joint];
-    pose[joint] = if random.random() { range.min } else { range.max } + step(random);
+    let [least, most] = subject.ranges[joint];
+    pose[joint] = if random.random() { least } else { most }.to_radians() + step(random);
 }

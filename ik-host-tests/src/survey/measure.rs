@@ -53,7 +53,7 @@ impl Judge {
     /// What the output refuses.
     pub fn of(robot: &Robot, kind: usize) -> Result<Self, Refused> {
         let sheet = &robot.kinds[kind];
-        let (leg, ranges) = (judged_leg(sheet), judged_ranges(sheet));
+        let (leg, ranges) = (judged_leg(sheet), judged_ranges(robot, kind));
         Ok(Self {
             leg,
             ranges,

@@ -1,8 +1,8 @@
 //! ik-core's legs as constants, one line per number system.
 
 use ik_core::{
-    Bend, Coarse, Dimensions, Fixed32, Float32, Foot, Hip, Leg, Limb, Limits, Mounting, Number, RollHip,
-    Servo, ServoSpec, Side, Timer, Turns, YawHip,
+    Bend, Channel, Coarse, Dimensions, Fixed32, Float32, Foot, Hip, Leg, Limb, Limits, Mounting, Number,
+    RollHip, ServoSpec, Side, Timer, Turns, YawHip,
 };
 use targets::{PublishedLeg, ROLL_HIP, STEPS_PER_MM, YAW_HIP};
 
@@ -17,14 +17,14 @@ macro_rules! possible {
 }
 
 /// 16 bits at 48 MHz, frames of 20 ms.
-pub(crate) const TIMER: Timer = possible!(Timer::finest(48_000_000, 16, 50.0));
+const TIMER: Timer = possible!(Timer::finest(48_000_000, 16, 50.0));
 
 /// A number system whose legs are constants; nothing is computed at start-up.
 pub trait InFlash<H: Hip>: Number {
     /// The published leg without joint ranges.
     const FREE_LEG: Leg<H, Self>;
-    /// The published leg with joint ranges and servos, on a body.
-    const LIMB: Limb<H, Self>;
+    /// The published leg with joint ranges and servos on a timer, on a body.
+    const LIMB: Limb<H, Self, [Channel<Self>; 3]>;
 
     /// A length of so many steps of 1/64 mm, exact.
     fn in_steps(steps: i32) -> Self::Length;
@@ -64,7 +64,7 @@ macro_rules! one_hip {
     ($numbers:ty, $hip:ty, $dimensions:expr, $published:expr, $side:expr, $length:expr, $bits:expr) => {
         impl InFlash<$hip> for $numbers {
             const FREE_LEG: Leg<$hip, Self> = possible!(Leg::<$hip, Self>::new($dimensions, Limits::FREE));
-            const LIMB: Limb<$hip, Self> = Limb {
+            const LIMB: Limb<$hip, Self, [Channel<Self>; 3]> = Limb {
                 leg: possible!(Leg::<$hip, Self>::new($dimensions, limits($published))),
                 mounting: Mounting::new(
                     Foot::new(
@@ -75,9 +75,9 @@ macro_rules! one_hip {
                     $side,
                 ),
                 servos: [
-                    possible!(Servo::<Self>::new(servos($published)[0])),
-                    possible!(Servo::<Self>::new(servos($published)[1])),
-                    possible!(Servo::<Self>::new(servos($published)[2])),
+                    possible!(Channel::<Self>::new(servos($published)[0], TIMER.counting())),
+                    possible!(Channel::<Self>::new(servos($published)[1], TIMER.counting())),
+                    possible!(Channel::<Self>::new(servos($published)[2], TIMER.counting())),
                 ],
             };
 

@@ -33,7 +33,7 @@ pub(super) fn of(subject: &Subject<'_>) -> Vec<UsedPulse> {
             joint,
             used_us: [f64::INFINITY, f64::NEG_INFINITY],
             safe_us: servo.pulse_us,
-            centre_us: servo.centre_us,
+            centre_us: servo.middle_us(),
             held: false,
         })
         .collect();
