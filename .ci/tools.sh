@@ -1,6 +1,6 @@
 #!/usr/bin/env bash
 # Sets up what the firmware images need beyond stable Rust: a compiler that has a `core` for the
-# microcontroller targets, and the Arm system emulator. Quick and silent when all is there.
+# microcontroller targets, and the emulators of their chips. Quick and silent when all is there.
 #
 #   tools.sh [--way auto|rustup|distro] [--target TARGET]... [--no-emulator] [-- COMMAND...]
 #
@@ -17,7 +17,6 @@ set -euo pipefail
 
 # The minor version in the rust-version of Cargo.toml.
 OLDEST_RUST=$(sed -n 's/^rust-version = "1\.\([0-9]*\)".*/\1/p' "$(dirname "$0")/../Cargo.toml")
-EMULATOR=qemu-system-arm
 CACHE=${TOEHOLD_TOOLS:-${XDG_CACHE_HOME:-${HOME:-/tmp}/.cache}/toehold-tools}
 
 say() { echo "tools: $*" >&2; }
@@ -199,10 +198,21 @@ case $WAY in
   distro) distro_way || missing_tool "$(what_to_install)" ;;
 esac
 
-if [ "$WANT_EMULATOR" = yes ] && ! "$EMULATOR" --version >/dev/null 2>&1; then
-  if ! install_packages qemu-system-arm || ! "$EMULATOR" --version >/dev/null 2>&1; then
-    missing_tool "The emulator $EMULATOR is not here. On Debian, as root: apt-get install --no-install-recommends qemu-system-arm; elsewhere: your system's package of QEMU for Arm system emulation."
+# Each emulator and the Debian package that has it, as far as the targets need it.
+provide_emulator() { # program package
+  "$1" --version >/dev/null 2>&1 && return
+  if ! install_packages "$2" || ! "$1" --version >/dev/null 2>&1; then
+    missing_tool "The emulator $1 is not here. On Debian, as root: apt-get install --no-install-recommends $2; elsewhere: your system's package of QEMU that has it."
   fi
+}
+
+if [ "$WANT_EMULATOR" = yes ]; then
+  for target in "${TARGETS[@]}"; do
+    case $target in
+      thumb*) provide_emulator qemu-system-arm qemu-system-arm ;;
+      riscv32*) provide_emulator qemu-system-riscv32 qemu-system-misc ;;
+    esac
+  done
 fi
 
 if [ -n "$TOOLCHAIN_BIN" ]; then

@@ -14,6 +14,7 @@ fn main() {
         }
         "thumbv7m-none-eabi" => "cortex-m3.x",
         "thumbv7em-none-eabihf" => "cortex-m4f.x",
+        "riscv32imc-unknown-none-elf" => "rv32imc.x",
         // The PC, while clippy or an editor looks at the workspace: nothing is linked.
         _ => return,
     };

@@ -1,4 +1,4 @@
-//! Linker scripts: `link.x` is cortex-m-rt's (it includes the board's memory.x), `defmt.x` is defmt's.
+//! Linker scripts: `link.x` is the runtime's (it includes the board's memory.x), `defmt.x` is defmt's.
 
 fn main() {
     println!("cargo::rerun-if-changed=build.rs");

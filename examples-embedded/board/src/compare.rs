@@ -2,7 +2,7 @@
 //!
 //! The emulated Cortex-M0 machine has a timer with compare registers, and they are used: base
 //! address and offsets are those of TIMER1 in the "nRF51 Series Reference Manual", chapter "Timer /
-//! counter". The emulated M3 and M4F machines have timers that only reload, so three words of RAM
+//! counter". The other emulated machines have timers that only reload, so three words of RAM
 //! stand in there; the writes are volatile all the same, so the compiler cannot drop them.
 
 /// The compare registers, each holding the length of one joint's pulse in timer ticks.
@@ -17,7 +17,7 @@ impl CompareRegisters {
     /// The timer's registers, or `None` if they were taken before: they have one owner.
     #[must_use]
     pub fn take() -> Option<Self> {
-        let already_taken = cortex_m::interrupt::free(|_| {
+        let already_taken = critical_section::with(|_| {
             use core::sync::atomic::{AtomicBool, Ordering::Relaxed};
             static TAKEN: AtomicBool = AtomicBool::new(false);
             let before = TAKEN.load(Relaxed);

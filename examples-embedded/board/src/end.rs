@@ -4,12 +4,11 @@
 
 use core::sync::atomic::{AtomicI32, Ordering::Relaxed};
 
-use cortex_m_rt::{ExceptionFrame, exception};
 use semihosting::process::exit;
 
 /// Exit code after a panic.
 pub const PANICKED: i32 = 101;
-/// Exit code after a hard fault.
+/// Exit code after a hard fault (RISC-V: an exception).
 pub const FAULTED: i32 = 102;
 
 const RUNNING: i32 = 0;
@@ -21,6 +20,17 @@ static ENDING: AtomicI32 = AtomicI32::new(RUNNING);
 /// Ends the run in good order.
 pub fn done() -> ! {
     exit(0)
+}
+
+/// Executes an instruction that no chip has, on purpose.
+pub fn fault() -> ! {
+    #[cfg(not(target_arch = "riscv32"))]
+    cortex_m::asm::udf();
+    #[cfg(target_arch = "riscv32")]
+    // SAFETY: it changes nothing and does not return: the exception's handler ends the run.
+    unsafe {
+        core::arch::asm!("unimp", options(noreturn))
+    }
 }
 
 /// Ends the run with `code`, after `last_words` if they can still be logged.
@@ -42,7 +52,20 @@ fn panicked(info: &core::panic::PanicInfo<'_>) -> ! {
     })
 }
 
-#[exception]
-unsafe fn HardFault(frame: &ExceptionFrame) -> ! {
-    end(FAULTED, || defmt::println!("hard fault at pc {=u32:08x}", frame.pc()))
+#[cfg(not(target_arch = "riscv32"))]
+#[cortex_m_rt::exception]
+unsafe fn HardFault(frame: &cortex_m_rt::ExceptionFrame) -> ! {
+    faulted(frame.pc())
+}
+
+/// What a RISC-V chip does about an illegal instruction, a misaligned or forbidden access and the like.
+#[cfg(target_arch = "riscv32")]
+// SAFETY: riscv-rt looks for a function of this name and signature.
+#[unsafe(export_name = "ExceptionHandler")]
+fn exception(_frame: &riscv_rt::TrapFrame) -> ! {
+    faulted(riscv::register::mepc::read() as u32)
+}
+
+fn faulted(at: u32) -> ! {
+    end(FAULTED, || defmt::println!("hard fault at pc {=u32:08x}", at))
 }

@@ -45,11 +45,11 @@ fn go_wrong_on_purpose() {
         panic!("on purpose");
     }
     if cfg!(feature = "faults") {
-        cortex_m::asm::udf();
+        end::fault();
     }
     if cfg!(feature = "hangs") {
         loop {
-            cortex_m::asm::nop();
+            core::hint::spin_loop();
         }
     }
     if cfg!(feature = "stops-early") {

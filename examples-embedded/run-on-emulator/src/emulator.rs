@@ -10,7 +10,7 @@ use std::{
 
 use wait_timeout::ChildExt;
 
-use crate::{chip::Chip, tools, trouble::Trouble};
+use crate::{chip::Chip, trouble::Trouble};
 
 /// Exit codes of the image; they stand in `board/src/end.rs`.
 const PANICKED: i32 = 101;
@@ -56,9 +56,11 @@ impl Ending {
 }
 
 pub fn run(chip: Chip, elf: &Path, time_limit: Duration) -> Result<Run, Trouble> {
-    let failed = |source| Trouble::Io { what: format!("running {}", tools::EMULATOR), source };
-    let mut emulator = Command::new(tools::EMULATOR)
+    let (program, more) = chip.emulator();
+    let failed = |source| Trouble::Io { what: format!("running {program}"), source };
+    let mut emulator = Command::new(program)
         .args(["-machine", chip.machine()])
+        .args(more)
         // Nothing but the semihosting channel may write to standard output.
         .args(["-display", "none", "-serial", "none", "-monitor", "none"])
         .args(["-semihosting-config", "enable=on,target=native"])

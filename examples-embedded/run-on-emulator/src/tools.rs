@@ -1,4 +1,4 @@
-//! Compiler targets and emulator: asks `.ci/tools.sh` to provide them, and runs commands with them.
+//! Compiler targets and emulators: asks `.ci/tools.sh` to provide them, and runs commands with them.
 
 use std::{
     io,
@@ -12,8 +12,6 @@ use crate::{
     trouble::Trouble,
 };
 
-pub const EMULATOR: &str = "qemu-system-arm";
-
 /// The exit code by which `.ci/tools.sh` says that it could not provide a tool.
 const TOOL_MISSING: i32 = 3;
 
@@ -22,10 +20,10 @@ pub fn workspace() -> PathBuf {
     Path::new(env!("CARGO_MANIFEST_DIR")).parent().expect("a member of a workspace").to_owned()
 }
 
-/// Sees to it that there is a compiler for these chips, and an emulator.
+/// Sees to it that there is a compiler for these chips, and their emulators.
 pub fn set_up(way: Way, chips: &[Chip]) -> Result<(), Trouble> {
     if way == Way::None {
-        return emulator_answers();
+        return chips.iter().try_for_each(|chip| answers(chip.emulator().0));
     }
     let mut command = script(way, chips);
     // Without a command to run the script prints shell lines, which nobody needs here.
@@ -67,12 +65,12 @@ fn script(way: Way, chips: &[Chip]) -> Command {
     command
 }
 
-fn emulator_answers() -> Result<(), Trouble> {
-    match Command::new(EMULATOR).arg("--version").output() {
+fn answers(emulator: &str) -> Result<(), Trouble> {
+    match Command::new(emulator).arg("--version").output() {
         Ok(output) if output.status.success() => Ok(()),
         _ => Err(Trouble::ToolMissing {
-            what: format!("the emulator {EMULATOR}"),
-            remedy: "install your system's package of QEMU for Arm system emulation".into(),
+            what: format!("the emulator {emulator}"),
+            remedy: "install your system's package of QEMU that has it".into(),
         }),
     }
 }
