@@ -1,7 +1,7 @@
 //! A plugin for QEMU (system emulation, plugin API version 1) that counts what is executed between two marker
 //! instructions and writes one line of JSON per window.
 //!
-//! Arguments: `core=m0|m3|m4f`, whose cycle table to use, and `out=FILE`. All that is not talking to the emulator
+//! Arguments: `core=m0|m0plus|m3|m4f|m7|rv32imc`, whose cycle table to use, and `out=FILE`. All that is not talking to the emulator
 //! is in the crate `reckoning`.
 
 mod emulator;
@@ -17,6 +17,9 @@ use std::{
 
 use emulator::*;
 use reckoning::{Core, Decoder, Step, Windows};
+
+/// What `core` can be.
+const CORES: &str = "m0|m0plus|m3|m4f|m7|rv32imc";
 
 struct Counter {
     decoder: Decoder,
@@ -72,15 +75,15 @@ fn counter(arguments: impl Iterator<Item = String>) -> Result<Counter, String> {
     for argument in arguments {
         match argument.split_once('=') {
             Some(("core", name)) => {
-                core = Some(Core::named(name).ok_or(format!("core={name}: must be m0, m3 or m4f"))?);
+                core = Some(Core::named(name).ok_or(format!("core={name}: must be one of {CORES}"))?);
             }
             Some(("out", path)) => out = Some(PathBuf::from(path)),
-            _ => return Err(format!("unknown argument {argument:?}: there are core=m0|m3|m4f and out=FILE")),
+            _ => return Err(format!("unknown argument {argument:?}: there are core={CORES} and out=FILE")),
         }
     }
-    let core = core.ok_or("an argument core=m0|m3|m4f is needed")?;
+    let core = core.ok_or(format!("an argument core={CORES} is needed"))?;
     let out = out.ok_or("an argument out=FILE is needed")?;
-    let decoder = Decoder::new().map_err(|error| error.to_string())?;
+    let decoder = Decoder::new(core).map_err(|error| error.to_string())?;
     Ok(Counter { decoder, windows: Windows::new(core), out })
 }
 

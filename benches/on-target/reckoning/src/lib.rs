@@ -1,5 +1,5 @@
 //! What a window of executed instructions comes to: how many of which kind, how deep the stack went, and a range of
-//! cycles by Arm's published tables.
+//! cycles by published tables.
 //!
 //! Instructions are exact. Cycles are **estimated from published tables, zero wait states, not measured on
 //! silicon**.

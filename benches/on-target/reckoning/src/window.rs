@@ -89,6 +89,7 @@ impl Windows {
         if step.decoded.kind == Kind::ClosingMarker {
             if let Some(mut open) = self.open.take() {
                 open.window.stack = open.stack_pointer - open.lowest_store;
+                open.window.cycles = self.core.overlapped(open.window.cycles, open.window.instructions);
                 self.closed.push(open.window);
             }
             return;
@@ -167,7 +168,7 @@ mod tests {
             ],
         );
         let [window] = windows.closed() else { panic!("one window") };
-        assert_eq!((window.instructions, window.jumps, window.cycles), (2, 2, [4, 6]));
+        assert_eq!((window.instructions, window.jumps, window.cycles), (2, 2, [6, 6]));
     }
 
     #[test]

@@ -2,9 +2,8 @@
 
 use std::time::Duration;
 
-use clap::{Parser, ValueEnum};
-
-use crate::chip::Chip;
+use clap::Parser;
+use emulation::{Chip, Way};
 
 /// Count what a leg costs on emulated chips, for every contender.
 ///
@@ -46,27 +45,9 @@ pub struct Arguments {
     time_limit: u64,
 }
 
-/// Where the compiler for the chips comes from; all but `None` are explained in `.ci/tools.sh`.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, ValueEnum)]
-pub enum Way {
-    /// The compiler in use if it has the targets, else rustup, else Debian's packages
-    Auto,
-    /// Add targets to the toolchain in use with rustup
-    Rustup,
-    /// Debian's compiler, with `core` built once
-    Distro,
-    /// Use what is there and install nothing (needs no bash)
-    None,
-}
-
-/// The name by which the command line knows a value.
-pub fn name_of(value: &impl ValueEnum) -> String {
-    value.to_possible_value().map(|named| named.get_name().to_owned()).unwrap_or_default()
-}
-
 impl Arguments {
     pub fn chips(&self) -> Vec<Chip> {
-        if self.chips.is_empty() { Chip::USUAL.to_vec() } else { self.chips.clone() }
+        if self.chips.is_empty() { Chip::CONTENDED.to_vec() } else { self.chips.clone() }
     }
 
     /// Whether a contender of this name is wanted.

@@ -1,10 +1,11 @@
 //! From the windows of a run to what a leg costs.
 
 use contenders::To;
+use emulation::Run;
 use reckoning::{Kind, Window};
 use serde::Serialize;
 
-use crate::{emulator::Run, expected::Expected, trouble::Trouble};
+use crate::{expected::Expected, trouble::Trouble};
 
 /// Least, mean, most over the targets.
 #[derive(Debug, Clone, Copy, PartialEq, Serialize)]

@@ -1,6 +1,7 @@
 //! Every contender, with what its image has to log: computed here by the same code.
 
-use contenders::{Contender, Digest, PublishedHip, To, Visit};
+use contenders::{Contender, PublishedHip, To, Visit};
+use counted::Digest;
 use targets::Target;
 
 /// A contender, as far as the PC knows it.

@@ -4,24 +4,18 @@
 //! call; 3 a tool is missing and could not be installed.
 
 mod arguments;
-mod build;
-mod chip;
 mod count;
-mod emulator;
 mod expected;
-mod flash;
 mod report;
-mod second_count;
 mod table;
-mod tools;
 mod trouble;
 
 use std::{path::Path, process::ExitCode};
 
 use arguments::Arguments;
-use chip::Chip;
 use contenders::To;
 use count::Cost;
+use emulation::{Chip, Setting};
 use expected::Expected;
 use report::Report;
 use trouble::Trouble;
@@ -45,9 +39,9 @@ fn run(arguments: &Arguments) -> Result<(), Trouble> {
         return Ok(());
     }
     let chips = arguments.chips();
-    tools::set_up(arguments.way, &chips)?;
+    emulation::set_up(arguments.way, &chips)?;
     eprintln!("building the plugin");
-    let plugin = build::plugin()?;
+    let plugin = emulation::plugin()?;
     let mut reports = Vec::new();
     for &chip in &chips {
         let report = Report { chip, costs: count_on(arguments, chip, &plugin, &wanted)? };
@@ -85,23 +79,29 @@ fn count_on(
 ) -> Result<Vec<Cost>, Trouble> {
     eprintln!("{}: building {} images", chip.class(), wanted.len());
     let names: Vec<&str> = wanted.iter().map(|expected| expected.name).collect();
-    let images = build::images(arguments.way, chip, &names)?;
+    let images = emulation::images(arguments.way, chip, "image", &names)?;
+    let time_limit = arguments.time_limit();
+    let setting = Setting { chip, plugin: Some(plugin), data: None, time_limit };
     let (mut costs, mut call) = (Vec::new(), None);
     for expected in wanted {
-        let image = images.get(expected.name).ok_or_else(|| Trouble::NotNamed(expected.name.into()))?;
-        let run = emulator::run(chip, expected.name, image, plugin, arguments.time_limit())?;
+        let image = images.get(expected.name).ok_or_else(|| not_named(expected.name))?;
+        let run = emulation::run(expected.name, image, setting)?;
         count::check(expected, &run)?;
         if arguments.count_twice {
-            let again = second_count::instructions(chip, expected.name, image, arguments.time_limit())?;
+            let again = emulation::count_again(chip, expected.name, image, arguments.time_limit())?;
             count::compare(expected, &run.windows, &again)?;
             eprintln!("{}: {}: counted twice, {} windows alike", chip.class(), expected.name, again.len());
         }
-        let flash = flash::bytes(image)?;
+        let flash = emulation::flash_bytes(image)?;
         match (expected.to, call) {
             (To::Nothing, _) => call = Some(count::call_alone(&run.windows, flash)),
             (_, Some(call)) => costs.push(count::cost(expected, &run.windows, flash, call)),
-            (_, None) => return Err(Trouble::NotNamed("image of the call alone".into())),
+            (_, None) => return Err(not_named("image of the call alone")),
         }
     }
     Ok(costs)
+}
+
+fn not_named(what: &str) -> Trouble {
+    emulation::Trouble::NotNamed(what.into()).into()
 }

@@ -2,9 +2,10 @@
 
 use std::fmt;
 
+use emulation::Chip;
 use serde::Serialize;
 
-use crate::{chip::Chip, count::Cost, table};
+use crate::{count::Cost, table};
 
 /// What was counted on one chip.
 #[derive(Debug, Serialize)]
@@ -22,7 +23,7 @@ impl fmt::Display for Report {
             self.chip.class(),
             self.chip.target(),
             self.chip.machine(),
-            self.chip.cycles_of()
+            self.chip.cycles_from()
         )?;
         writeln!(f, "{}", table::table(&self.costs))
     }

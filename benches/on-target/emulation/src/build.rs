@@ -9,7 +9,10 @@ use std::{
 
 use cargo_metadata::{Artifact, Message};
 
-use crate::{arguments::Way, chip::Chip, tools, trouble::Trouble};
+use crate::{chip::Chip, tools, tools::Way, trouble::Trouble};
+
+/// Images by their names.
+pub type Images = BTreeMap<String, PathBuf>;
 
 /// The plugin, for this PC.
 pub fn plugin() -> Result<PathBuf, Trouble> {
@@ -25,17 +28,17 @@ pub fn plugin() -> Result<PathBuf, Trouble> {
         .ok_or_else(|| Trouble::NotNamed("plugin".into()))
 }
 
-/// The images of these contenders, by their names.
-pub fn images(way: Way, chip: Chip, names: &[&str]) -> Result<BTreeMap<String, PathBuf>, Trouble> {
+/// These images of a package, by their names.
+pub fn images(way: Way, chip: Chip, package: &str, names: &[impl AsRef<str>]) -> Result<Images, Trouble> {
     let mut cargo = tools::cargo(way, chip);
-    cargo.args(["build", "--profile", "chip", "--package", "image", "--target", chip.target()]);
+    cargo.args(["build", "--profile", "chip", "--package", package, "--target", chip.target()]);
     if let Some(processor) = chip.optimised_for() {
         // A folder of its own, or each of the two would undo the other's work.
         cargo.args(["--target-dir", "target/tuned"]);
         cargo.arg("--config").arg(format!("target.{}.rustflags=['-Ctarget-cpu={processor}']", chip.target()));
     }
     for name in names {
-        cargo.args(["--bin", name]);
+        cargo.args(["--bin", name.as_ref()]);
     }
     let artifacts = run(cargo, "an image")?;
     Ok(artifacts

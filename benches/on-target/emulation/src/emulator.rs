@@ -13,10 +13,10 @@ use defmt_decoder::{DecodeError, Table};
 use reckoning::Window;
 use wait_timeout::ChildExt;
 
-use crate::{chip::Chip, tools, trouble::Trouble};
+use crate::{chip::Chip, trouble::Trouble};
 
 /// Nothing but the semihosting channel may write to standard output.
-pub const MACHINE_ALONE: [&str; 8] = [
+pub(crate) const MACHINE_ALONE: [&str; 8] = [
     "-display",
     "none",
     "-serial",
@@ -27,7 +27,21 @@ pub const MACHINE_ALONE: [&str; 8] = [
     "enable=on,target=native",
 ];
 
+/// What an image is run with.
+#[derive(Debug, Clone, Copy)]
+pub struct Setting<'a> {
+    /// The chip.
+    pub chip: Chip,
+    /// The plugin, if what is executed is to be counted.
+    pub plugin: Option<&'a Path>,
+    /// A file that is to lie in memory, at [`Chip::data_at`].
+    pub data: Option<&'a Path>,
+    /// When a run that has not ended is stopped, and has failed.
+    pub time_limit: Duration,
+}
+
 /// What a run gave.
+#[derive(Debug, Clone, PartialEq)]
 pub struct Run {
     /// What the image logged.
     pub log: Vec<String>,
@@ -35,24 +49,29 @@ pub struct Run {
     pub windows: Vec<Window>,
 }
 
-pub fn run(chip: Chip, name: &str, elf: &Path, plugin: &Path, time_limit: Duration) -> Result<Run, Trouble> {
-    let failed = || Trouble::io(format!("running {}", tools::EMULATOR));
+/// Runs an image, which has a name for messages, to its end.
+///
+/// # Errors
+/// If it does not end in good order within its time, or if its log or its counts cannot be read.
+pub fn run(name: &str, elf: &Path, setting: Setting<'_>) -> Result<Run, Trouble> {
+    let Setting { chip, plugin, data, time_limit } = setting;
+    let failed = || Trouble::io(format!("running {}", chip.emulator()));
     let counts = elf.with_extension("windows.jsonl");
     // What an earlier run left must not pass for this one's.
     if counts.exists() {
         fs::remove_file(&counts).map_err(Trouble::io(counts.display().to_string()))?;
     }
-    let mut emulator = Command::new(tools::EMULATOR)
-        .args(MACHINE_ALONE)
-        .args(["-machine", chip.machine()])
-        .arg("-plugin")
-        // A comma in a path is doubled for QEMU's option parser.
-        .arg(format!(
-            "{},core={},out={}",
-            doubled_commas(plugin),
-            chip.cycle_table(),
-            doubled_commas(&counts)
-        ))
+    let mut command = Command::new(chip.emulator());
+    command.args(MACHINE_ALONE).args(["-machine", chip.machine()]).args(chip.processor());
+    if let Some(plugin) = plugin {
+        let (plugin, out) = (doubled_commas(plugin), doubled_commas(&counts));
+        command.arg("-plugin").arg(format!("{plugin},core={},out={out}", chip.cycle_table()));
+    }
+    if let Some(data) = data {
+        let (data, at) = (doubled_commas(data), chip.data_at());
+        command.arg("-device").arg(format!("loader,file={data},addr={at:#x},force-raw=on"));
+    }
+    let mut emulator = command
         .arg("-kernel")
         .arg(elf)
         .stdin(Stdio::null())
@@ -75,9 +94,10 @@ pub fn run(chip: Chip, name: &str, elf: &Path, plugin: &Path, time_limit: Durati
         let said = String::from_utf8_lossy(&said).trim().to_owned();
         return Err(Trouble::BadEnding { name: name.into(), status, log, said });
     }
-    Ok(Run { log, windows: windows(&counts)? })
+    Ok(Run { log, windows: if plugin.is_some() { windows(&counts)? } else { Vec::new() } })
 }
 
+/// A comma in a path is doubled for QEMU's option parser.
 fn doubled_commas(path: &Path) -> String {
     path.display().to_string().replace(',', ",,")
 }

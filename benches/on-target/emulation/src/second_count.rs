@@ -12,20 +12,21 @@ use std::{
 use object::{Object, ObjectSection, ObjectSymbol};
 use wait_timeout::ChildExt;
 
-use crate::{chip::Chip, emulator, tools, trouble::Trouble};
+use crate::{chip::Chip, emulator, trouble::Trouble};
 
 /// The image's function that holds the markers, and their bytes.
 const FUNCTION: &str = "call_in_window";
-const OPENING: [u8; 2] = [0x80, 0xbf];
-const CLOSING: [u8; 2] = [0x90, 0xbf];
+const THUMB: [&[u8]; 2] = [&[0x80, 0xbf], &[0x90, 0xbf]];
+const RISC_V: [&[u8]; 2] = [&[0x13, 0x20, 0x80, 0x00], &[0x13, 0x20, 0x90, 0x00]];
 
 /// Instructions in each window, by the emulator's log.
 pub fn instructions(chip: Chip, name: &str, elf: &Path, limit: Duration) -> Result<Vec<u64>, Trouble> {
     let log = elf.with_extension("executed.log");
-    let failed = || Trouble::io(format!("running {}", tools::EMULATOR));
-    let mut emulator = Command::new(tools::EMULATOR)
+    let failed = || Trouble::io(format!("running {}", chip.emulator()));
+    let mut emulator = Command::new(chip.emulator())
         .args(emulator::MACHINE_ALONE)
         .args(["-machine", chip.machine()])
+        .args(chip.processor())
         // One instruction a block, every block logged.
         .args(["-singlestep", "-d", "exec,nochain", "-D"])
         .arg(&log)
@@ -43,7 +44,7 @@ pub fn instructions(chip: Chip, name: &str, elf: &Path, limit: Duration) -> Resu
     if !status.success() {
         return Err(Trouble::BadEnding { name: name.into(), status, log: vec![], said: String::new() });
     }
-    let markers = markers(elf)?;
+    let markers = markers(elf, if chip == Chip::Rv32imc { RISC_V } else { THUMB })?;
     let file = fs::File::open(&log).map_err(Trouble::io(log.display().to_string()))?;
     let mut windows = Vec::new();
     let mut open = None;
@@ -70,7 +71,7 @@ fn address(line: &str) -> Option<u64> {
 }
 
 /// The addresses of the opening and the closing marker.
-fn markers(image: &Path) -> Result<[u64; 2], Trouble> {
+fn markers(image: &Path, [opening, closing]: [&[u8]; 2]) -> Result<[u64; 2], Trouble> {
     let bad = |problem: String| Trouble::BadFile { path: image.to_owned(), problem };
     let data = fs::read(image).map_err(|error| bad(error.to_string()))?;
     let file = object::File::parse(&*data).map_err(|error| bad(error.to_string()))?;
@@ -80,11 +81,11 @@ fn markers(image: &Path) -> Result<[u64; 2], Trouble> {
         // The lowest bit of a Thumb function's address is not part of it.
         let start = symbol.address() & !1;
         let code = section.data_range(start, symbol.size()).ok()??;
-        let at = |marker: [u8; 2]| {
-            let halfword = code.chunks_exact(2).position(|halfword| halfword == marker)?;
+        let at = |marker: &[u8]| {
+            let halfword = (0..code.len() / 2).position(|half| code[2 * half..].starts_with(marker))?;
             Some(start + 2 * halfword as u64)
         };
-        Some([at(OPENING)?, at(CLOSING)?])
+        Some([at(opening)?, at(closing)?])
     });
     found.ok_or_else(|| bad(format!("has no function {FUNCTION} with the markers")))
 }

@@ -1,0 +1,28 @@
+//! Builds images, runs them on emulated chips, and counts what they execute: what the runners `leg-cost` and
+//! `robot-cost` share.
+//!
+//! | module | what |
+//! | --- | --- |
+//! | `chip` | the chip classes: compiler target, emulated machine, cycle table |
+//! | `tools` | compiler targets and emulators, provided by `.ci/tools.sh` |
+//! | `build` | cargo builds the plugin and the images |
+//! | `emulator` | runs an image with the plugin, within a time limit |
+//! | `second_count` | counts the same run again, without the plugin |
+//! | `flash` | what an image takes of the flash |
+#![forbid(unsafe_code)]
+
+mod build;
+mod chip;
+mod emulator;
+mod flash;
+mod second_count;
+mod tools;
+mod trouble;
+
+pub use build::{Images, images, plugin};
+pub use chip::Chip;
+pub use emulator::{Run, Setting, run};
+pub use flash::bytes as flash_bytes;
+pub use second_count::instructions as count_again;
+pub use tools::{Way, name_of, set_up, workspace};
+pub use trouble::Trouble;

@@ -1,0 +1,5 @@
+//! Coarse, roll-hip leg, timer.
+#![no_std]
+#![no_main]
+
+robot_image::measure!(RollHip, Coarse, Timer);

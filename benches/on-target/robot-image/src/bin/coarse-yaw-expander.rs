@@ -1,0 +1,5 @@
+//! Coarse, yaw-hip leg, expander.
+#![no_std]
+#![no_main]
+
+robot_image::measure!(YawHip, Coarse, Expander);

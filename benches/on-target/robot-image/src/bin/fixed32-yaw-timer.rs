@@ -1,0 +1,5 @@
+//! Fixed32, yaw-hip leg, timer.
+#![no_std]
+#![no_main]
+
+robot_image::measure!(YawHip, Fixed32, Timer);
