@@ -6,6 +6,7 @@
 //! | 1 | done, and something is beyond what the sheet allows |
 //! | 2 | the input or the call is wrong |
 
+mod chips;
 mod ending;
 mod robots;
 mod sheet;
@@ -42,6 +43,8 @@ enum Task {
     Survey(survey::Call),
     /// Solve one foot position in every number system: joints, pulses, counts, error
     Solve(solve::Call),
+    /// Count what a leg costs on emulated chips: instructions, estimated time, flash, stack
+    Chips(chips::Call),
     /// Print a demo robot's sheet, to start one's own from
     Sheet(sheet::Call),
 }
@@ -59,6 +62,7 @@ pub fn run() -> ExitCode {
     let ending = match &call.task {
         Task::Survey(call) => call.run(),
         Task::Solve(call) => call.run(),
+        Task::Chips(call) => call.run(),
         Task::Sheet(call) => call.run(),
     };
     if let Ending::WrongInput(message) | Ending::Failed(message) = &ending {

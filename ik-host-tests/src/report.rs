@@ -1,15 +1,18 @@
 //! A survey for people and machines: text, JSON, and a page.
 
+mod chips;
 mod number;
 mod page;
 mod picture;
 mod solved;
 mod text;
 
+pub use chips::chips_text;
 pub use number::millimetres;
 pub use solved::solved_text;
 pub use text::text;
 
+use crate::chips::Chips;
 use crate::survey::Survey;
 use serde::Serialize;
 use std::io::Write as _;
@@ -50,6 +53,19 @@ pub fn write(folder: &Path, stem: &str, survey: &Survey, repeat: &str) -> Result
         replace(folder, &path, &text).map_err(|cause| WriteError { path: path.clone(), cause }).map(|()| path)
     };
     Ok([place("json", json(survey))?, place("html", page::page(survey, repeat))?])
+}
+
+/// Writes `STEM.chips.json` into a folder, as [`write`] does.
+///
+/// # Errors
+/// Names the file or folder and the cause.
+pub fn write_chips(folder: &Path, stem: &str, chips: &Chips) -> Result<PathBuf, WriteError> {
+    fs::create_dir_all(folder).map_err(|cause| WriteError { path: folder.to_owned(), cause })?;
+    let path = folder.join(format!("{stem}.chips.json"));
+    match replace(folder, &path, &json(chips)) {
+        Ok(()) => Ok(path),
+        Err(cause) => Err(WriteError { path, cause }),
+    }
 }
 
 fn replace(folder: &Path, path: &Path, text: &str) -> io::Result<()> {

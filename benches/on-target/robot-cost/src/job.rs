@@ -36,6 +36,8 @@ pub struct Leg {
     pub compared: Vec<[f64; 3]>,
     /// The same: those for which instructions are counted.
     pub counted: Vec<[f64; 3]>,
+    /// So many of them, from the first on, stand for the work volume.
+    pub typical: usize,
 }
 
 #[derive(Debug, Clone, Copy, Deserialize)]
@@ -69,6 +71,13 @@ impl Job {
         let text = fs::read_to_string(path).map_err(|error| complaint(error.to_string()))?;
         let job: Self = serde_json::from_str(&text).map_err(|error| complaint(error.to_string()))?;
         for leg in &job.legs {
+            if leg.typical == 0 || leg.typical > leg.counted.len() {
+                let (typical, counted) = (leg.typical, leg.counted.len());
+                return Err(complaint(format!(
+                    "{}: typical is {typical}; it must be 1 to {counted}",
+                    leg.name
+                )));
+            }
             for (what, targets) in [("compared", &leg.compared), ("counted", &leg.counted)] {
                 if targets.is_empty() || targets.len() > MOST_TARGETS {
                     let count = targets.len();

@@ -80,8 +80,9 @@ fn on_chip(arguments: &Arguments, job: &Job, chip: Chip, plugin: &Path, cases: &
             let found = match &case.made {
                 Err(why) => Found::Refused { why: why.clone() },
                 Ok(both) => {
-                    let flash = sizes.of_leg(job.legs[case.leg].hip, &case.number);
-                    one(&images, both, setting, sizes.call, flash)
+                    let leg = &job.legs[case.leg];
+                    let flash = sizes.of_leg(leg.hip, &case.number);
+                    one(&images, both, setting, (sizes.call, leg.typical, flash))
                         .unwrap_or_else(|trouble| Found::NotMeasured { why: trouble.to_string() })
                 }
             };
@@ -97,8 +98,7 @@ fn one(
     images: &Images,
     [counted, compared]: &[Expected; 2],
     counting: Setting<'_>,
-    call: Call,
-    flash: Option<i64>,
+    (call, typical, flash): (Call, usize, Option<i64>),
 ) -> Result<Found, Trouble> {
     let image = images.get(&counted.image).ok_or_else(|| Trouble::NotNamed(counted.image.clone()))?;
     let comparing = Setting { plugin: None, ..counting };
@@ -119,20 +119,23 @@ fn one(
         let why = format!("the instruction at {address:#x} is of no kind that the cycle tables have");
         return Ok(Found::NotMeasured { why });
     }
-    Ok(Found::Measured(measured(&run.windows, compared.targets(), call, flash)))
+    let mut measured = measured(&run.windows, typical, call);
+    (measured.compared, measured.flash) = (compared.targets(), flash);
+    Ok(Found::Measured(measured))
 }
 
-fn measured(windows: &[Window], compared: usize, call: Call, flash: Option<i64>) -> Measured {
+fn measured(windows: &[Window], typical: usize, call: Call) -> Measured {
     let all = |of: fn(&Window) -> u64| windows.iter().map(of);
     let less = |value: f64, call: u64| value - call as f64;
-    let mean =
-        |of: fn(&Window) -> u64, call: u64| less(all(of).sum::<u64>() as f64 / windows.len() as f64, call);
+    let mean = |of: fn(&Window) -> u64, call: u64| {
+        less(all(of).take(typical).sum::<u64>() as f64 / typical.max(1) as f64, call)
+    };
     let most = |of: fn(&Window) -> u64, call: u64| less(all(of).max().unwrap_or(0) as f64, call);
     let instructions: fn(&Window) -> u64 = |window| window.instructions;
     let [from, to]: [fn(&Window) -> u64; 2] = [|window| window.cycles[0], |window| window.cycles[1]];
     Measured {
         counted: windows.len(),
-        compared,
+        compared: 0,
         instructions: [
             less(all(instructions).min().unwrap_or(0) as f64, call.instructions),
             mean(instructions, call.instructions),
@@ -140,7 +143,7 @@ fn measured(windows: &[Window], compared: usize, call: Call, flash: Option<i64>)
         ],
         cycles: [mean(from, call.cycles[0]), mean(to, call.cycles[1])],
         most_cycles: [most(from, call.cycles[0]), most(to, call.cycles[1])],
-        flash,
+        flash: None,
         stack: all(|window| window.stack).max().unwrap_or(0),
     }
 }

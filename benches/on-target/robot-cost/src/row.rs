@@ -43,9 +43,9 @@ pub struct Measured {
     pub counted: usize,
     /// Targets whose answers are this PC's, bit for bit.
     pub compared: usize,
-    /// Executed per leg, the call subtracted: least, mean, most.
+    /// Executed per leg, the call subtracted: least, mean over the work volume, most.
     pub instructions: [f64; 3],
-    /// From, to, on average: estimated from published tables, zero wait states, not measured on silicon.
+    /// From, to, on average over the work volume: estimated from published tables, zero wait states, not measured on silicon.
     pub cycles: [f64; 2],
     /// The same, for the costliest target.
     pub most_cycles: [f64; 2],

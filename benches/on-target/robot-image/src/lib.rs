@@ -50,7 +50,7 @@ pub fn run<H: BuildHip, N: Bits, O: BuildOutput>() -> ! {
         let answer = unsafe { counted::call(entry::<H, N, O>, &ready, &asked) };
         let words = answer.words();
         if (header.tell[0]..header.tell[1]).contains(&number) {
-            defmt::println!("answer {=u32}: {=[u32; 9]}", number, words);
+            defmt::println!("answer {=u32}: {}", number, words);
         }
         if let Some(digest) = blocks.take(words, header.targets) {
             defmt::println!("to {=u32}: {=u32:08x}", number, digest);

@@ -96,6 +96,17 @@ fn kind(id: ArmInsn, registers: &[u8]) -> (Kind, u8) {
         | ARM_INS_SMLAWT | ARM_INS_SMMLA | ARM_INS_SMMLAR | ARM_INS_SMMLS | ARM_INS_SMMLSR
         | ARM_INS_SMLALBB | ARM_INS_SMLALBT | ARM_INS_SMLALTB | ARM_INS_SMLALTT | ARM_INS_SMLAD
         | ARM_INS_SMLSD => only(Kind::LongMultiplyAccumulate),
+        // Two or four additions at once, likewise.
+        ARM_INS_QADD16 | ARM_INS_QADD8 | ARM_INS_QSUB16 | ARM_INS_QSUB8 | ARM_INS_QASX | ARM_INS_QSAX
+        | ARM_INS_SADD16 | ARM_INS_SADD8 | ARM_INS_SSUB16 | ARM_INS_SSUB8 | ARM_INS_SASX | ARM_INS_SSAX
+        | ARM_INS_SHADD16 | ARM_INS_SHADD8 | ARM_INS_SHSUB16 | ARM_INS_SHSUB8 | ARM_INS_SHASX
+        | ARM_INS_SHSAX | ARM_INS_UADD16 | ARM_INS_UADD8 | ARM_INS_USUB16 | ARM_INS_USUB8 | ARM_INS_UASX
+        | ARM_INS_USAX | ARM_INS_UHADD16 | ARM_INS_UHADD8 | ARM_INS_UHSUB16 | ARM_INS_UHSUB8
+        | ARM_INS_UHASX | ARM_INS_UHSAX | ARM_INS_UQADD16 | ARM_INS_UQADD8 | ARM_INS_UQSUB16
+        | ARM_INS_UQSUB8 | ARM_INS_UQASX | ARM_INS_UQSAX | ARM_INS_SSAT16 | ARM_INS_USAT16
+        | ARM_INS_SXTAB16 | ARM_INS_UXTAB16 | ARM_INS_SXTB16 | ARM_INS_UXTB16 | ARM_INS_USAD8 => {
+            only(Kind::Simple)
+        }
         ARM_INS_SDIV | ARM_INS_UDIV => only(Kind::Divide),
         ARM_INS_MRS | ARM_INS_MSR => only(Kind::SpecialRegister),
         ARM_INS_IT => only(Kind::IfThen),
@@ -157,6 +168,10 @@ mod tests {
         ("addw r0, r1, #4000", &[0xf601, 0x70a0], Simple, 0),
         ("cmp.w lr, #1", &[0xf1be, 0x0f01], Simple, 0),
         ("asrs r0, r1", &[0x4108], Simple, 0),
+        ("qsub16 r4, r3, r4", &[0xfad3, 0xf414], Simple, 0),
+        ("uadd8 r0, r1, r2", &[0xfa81, 0xf042], Simple, 0),
+        ("ssat16 r0, #8, r1", &[0xf321, 0x0007], Simple, 0),
+        ("smuad r0, r1, r2", &[0xfb21, 0xf002], LongMultiply, 0),
         ("nop", &[0xbf00], Simple, 0),
         ("ldr r0, [r1]", &[0x6808], Load, 0),
         ("ldr r0, [pc, #8]", &[0x4802], Load, 0),
