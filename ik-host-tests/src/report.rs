@@ -41,18 +41,41 @@ pub fn json(data: &impl Serialize) -> String {
     text
 }
 
+/// A survey with what the legs cost on the chips, if that is known.
+#[derive(Serialize)]
+struct WithChips<'a> {
+    #[serde(flatten)]
+    survey: &'a Survey,
+    #[serde(skip_serializing_if = "Option::is_none")]
+    chips: Option<&'a Chips>,
+}
+
 /// Writes `STEM.json` and `STEM.html` into a folder, which is made if it is not there. Each is written beside its
 /// place and then moved there, so that an earlier report is replaced by a complete one or not at all.
 ///
 /// # Errors
 /// Names the file or folder and the cause.
-pub fn write(folder: &Path, stem: &str, survey: &Survey, repeat: &str) -> Result<[PathBuf; 2], WriteError> {
+pub fn write(
+    folder: &Path,
+    stem: &str,
+    survey: &Survey,
+    chips: Option<&Chips>,
+    repeat: &str,
+) -> Result<[PathBuf; 2], WriteError> {
     fs::create_dir_all(folder).map_err(|cause| WriteError { path: folder.to_owned(), cause })?;
     let place = |ending: &str, text: String| {
         let path = folder.join(format!("{stem}.{ending}"));
         replace(folder, &path, &text).map_err(|cause| WriteError { path: path.clone(), cause }).map(|()| path)
     };
-    Ok([place("json", json(survey))?, place("html", page::page(survey, repeat))?])
+    Ok([
+        place("json", json(&WithChips { survey, chips }))?,
+        place("html", page::page(survey, chips, repeat))?,
+    ])
+}
+
+/// Where the figures of the chips lie beside a survey's report.
+pub fn chips_place(folder: &Path, stem: &str) -> PathBuf {
+    folder.join(format!("{stem}.chips.json"))
 }
 
 /// Writes `STEM.chips.json` into a folder, as [`write`] does.
@@ -61,7 +84,7 @@ pub fn write(folder: &Path, stem: &str, survey: &Survey, repeat: &str) -> Result
 /// Names the file or folder and the cause.
 pub fn write_chips(folder: &Path, stem: &str, chips: &Chips) -> Result<PathBuf, WriteError> {
     fs::create_dir_all(folder).map_err(|cause| WriteError { path: folder.to_owned(), cause })?;
-    let path = folder.join(format!("{stem}.chips.json"));
+    let path = chips_place(folder, stem);
     match replace(folder, &path, &json(chips)) {
         Ok(()) => Ok(path),
         Err(cause) => Err(WriteError { path, cause }),

@@ -132,7 +132,7 @@ fn the_page_fits_a_phone_and_a_desk_light_and_dark() {
     for demo in DEMOS {
         let robot = sheet::demo(demo.name).unwrap();
         let survey = survey(&robot, Plan { targets: 100_000, seed: 1 }, &ProgressBar::hidden()).unwrap();
-        let [_, page] = report::write(folder.path(), demo.name, &survey, "toehold survey").unwrap();
+        let [_, page] = report::write(folder.path(), demo.name, &survey, None, "toehold survey").unwrap();
         for (width, dark) in [(390, false), (390, true), (1280, false), (1280, true)] {
             let found = measure(&page, width, dark);
             let scheme = if dark { "dark" } else { "light" };

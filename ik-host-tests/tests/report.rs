@@ -25,7 +25,7 @@ static SURVEYS: LazyLock<Vec<Survey>> = LazyLock::new(|| {
 
 fn page(survey: &Survey) -> String {
     let folder = tempfile::tempdir().unwrap();
-    let [_, html] = report::write(folder.path(), "robot", survey, REPEAT).unwrap();
+    let [_, html] = report::write(folder.path(), "robot", survey, None, REPEAT).unwrap();
     fs::read_to_string(html).unwrap()
 }
 

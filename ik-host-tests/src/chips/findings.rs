@@ -1,6 +1,9 @@
 //! What was found on the chips, as data: the text, the JSON and the survey's page are made from it.
 
+use crate::sheet::Robot;
 use serde::{Deserialize, Serialize};
+use std::fs;
+use std::path::Path;
 
 /// What the legs of a robot cost.
 #[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
@@ -134,6 +137,23 @@ impl Times {
 }
 
 impl Chips {
+    /// From a file that `toehold chips` wrote.
+    ///
+    /// # Errors
+    /// Names the file, and what is wrong with it.
+    pub fn read(path: &Path) -> Result<Self, String> {
+        let complaint = |problem: String| format!("{}: {problem}", path.display());
+        let text = fs::read_to_string(path).map_err(|error| complaint(error.to_string()))?;
+        let advice = "; `toehold chips` makes such a file";
+        serde_json::from_str(&text).map_err(|error| complaint(format!("{error}{advice}")))
+    }
+
+    /// Whether they are of this very sheet and this version of the program.
+    pub fn are_of(&self, robot: &Robot) -> bool {
+        self.toehold == env!("CARGO_PKG_VERSION")
+            && serde_json::to_value(robot).is_ok_and(|robot| robot == self.robot)
+    }
+
     /// Whether everything was measured and every chip gave the PC's bits. A leg that a number system cannot hold is no
     /// failure.
     pub fn all_well(&self) -> bool {

@@ -2,10 +2,13 @@
 
 use super::ending::{Ending, print};
 use super::robots::{self, Source};
+use crate::chips::Chips;
 use crate::report;
+use crate::sheet::Robot;
 use crate::survey::{Plan, Survey, Verdict, survey};
 use indicatif::{ProgressBar, ProgressStyle};
 use serde::Serialize;
+use std::io::Write as _;
 use std::path::PathBuf;
 
 /// Surveys the work volume of a robot's legs in every number system: arithmetic error, pulse error, both.
@@ -24,6 +27,9 @@ pub(super) struct Call {
     /// Folder for the reports, one .json and one .html per robot
     #[arg(long, value_name = "FOLDER", default_value = "toehold-survey")]
     report: PathBuf,
+    /// What `toehold chips` found of this sheet, to go into the report; without it, what lies in the reports' folder
+    #[arg(long, value_name = "FILE", requires = "sheet", conflicts_with = "no_report")]
+    chips: Option<PathBuf>,
     /// Write no reports
     #[arg(long, conflicts_with = "report")]
     no_report: bool,
@@ -46,12 +52,15 @@ impl Call {
         let sources = robots::named_or_all_demos(self.sheet.as_ref());
         let mut surveys = Vec::new();
         for source in &sources {
-            let survey = self.one(source)?;
+            let robot = source.robot()?;
+            // Before the long work, for a file that was named may be the wrong one.
+            let chips = if self.no_report { None } else { self.chips(source, &robot)? };
+            let survey = self.one(source, &robot)?;
             if !self.json {
                 print(&report::text(&survey, &source.shown()))?;
             }
             if !self.no_report {
-                self.write(source, &survey)?;
+                self.write(source, &survey, chips.as_ref())?;
             }
             surveys.push(survey);
         }
@@ -63,16 +72,15 @@ impl Call {
         Ok(if beyond { Ending::Beyond } else { Ending::Within })
     }
 
-    fn one(&self, source: &Source) -> Result<Survey, Ending> {
-        let robot = source.robot()?;
+    fn one(&self, source: &Source, robot: &Robot) -> Result<Survey, Ending> {
         let plan = Plan { targets: self.targets, seed: self.seed };
         let progress = bar(&source.stem(), self.targets * robot.kinds.len() as u64);
-        let survey = survey(&robot, plan, &progress);
+        let survey = survey(robot, plan, &progress);
         progress.finish_and_clear();
         survey.map_err(|error| Ending::WrongInput(format!("{}: {error}", source.shown())))
     }
 
-    fn write(&self, source: &Source, survey: &Survey) -> Result<(), Ending> {
+    fn write(&self, source: &Source, survey: &Survey, chips: Option<&Chips>) -> Result<(), Ending> {
         let repeat = format!(
             "toehold survey{} --targets {} --seed {}",
             match source {
@@ -82,13 +90,38 @@ impl Call {
             self.targets,
             self.seed
         );
-        let paths = report::write(&self.report, &source.stem(), survey, &repeat)
+        let paths = report::write(&self.report, &source.stem(), survey, chips, &repeat)
             .map_err(|error| Ending::Failed(format!("toehold: {error}")))?;
         if !self.json {
             let paths = paths.map(|path| path.display().to_string()).join(" and ");
             print(&format!("report: {paths}\n\n"))?;
         }
         Ok(())
+    }
+}
+
+impl Call {
+    /// What the legs cost on the chips: from the file that was named, which must be of this sheet; else from the one in
+    /// the reports' folder, if there is one and it is.
+    fn chips(&self, source: &Source, robot: &Robot) -> Result<Option<Chips>, Ending> {
+        let beside = report::chips_place(&self.report, &source.stem());
+        let path = match &self.chips {
+            Some(named) => named,
+            None if beside.is_file() => &beside,
+            None => return Ok(None),
+        };
+        let why = match Chips::read(path) {
+            Ok(chips) if chips.are_of(robot) => return Ok(Some(chips)),
+            Ok(_) => {
+                format!("{}: is of another sheet or version; `toehold chips` makes it anew", path.display())
+            }
+            Err(why) => why,
+        };
+        if self.chips.is_some() {
+            return Err(Ending::WrongInput(format!("toehold: {why}")));
+        }
+        let _ = writeln!(std::io::stderr(), "toehold: left out of the report: {why}");
+        Ok(None)
     }
 }
 

@@ -38,14 +38,27 @@ fn of_kind(chips: &Chips, kind: &KindOnChips) -> String {
         let _ = write!(out, ": counted on {counted} targets, answers compared with this PC's on {compared}");
     }
     let _ = writeln!(out, "\n{}", table(chips, kind));
+    for (rows, why) in reasons(kind) {
+        let _ = writeln!(out, "{}: {why}", rows.join("; "));
+    }
+    out
+}
+
+/// Why rows have no figures, each reason once.
+pub(super) fn reasons(kind: &KindOnChips) -> Vec<(Vec<String>, &str)> {
+    let mut reasons: Vec<(Vec<String>, &str)> = Vec::new();
     for row in &kind.rows {
         let (Found::Refused { why } | Found::Differs { why } | Found::NotMeasured { why }) = &row.found
         else {
             continue;
         };
-        let _ = writeln!(out, "{}, {}: {why}", row.class, row.number);
+        let which = format!("{}, {}", row.class, row.number);
+        match reasons.iter_mut().find(|(_, known)| known == why) {
+            Some((rows, _)) => rows.push(which),
+            None => reasons.push((vec![which], why)),
+        }
     }
-    out
+    reasons
 }
 
 fn table(chips: &Chips, kind: &KindOnChips) -> Table {

@@ -1,5 +1,7 @@
 //! What the templates see of a survey: every figure written out, every sentence that hangs on one made.
 
+use crate::chips::{Chips, KindOnChips, Row};
+use crate::report::chips as costs;
 use crate::report::number::{count, foot, millimetres, significant};
 use crate::report::picture::{self, Picture, UsedPulse};
 use crate::sheet::Allowed;
@@ -7,7 +9,7 @@ use crate::survey::{Errors, KindFindings, NumberFindings, Survey, Verdict, Worst
 use minijinja::{Value, context};
 
 /// The whole page.
-pub(super) fn of(survey: &Survey, repeat: &str) -> Value {
+pub(super) fn of(survey: &Survey, chips: Option<&Chips>, repeat: &str) -> Value {
     let robot = &survey.robot;
     let answers = survey.kinds.iter().flat_map(|kind| {
         let numbers = kind.numbers.iter().filter(|number| number.firmware);
@@ -21,11 +23,36 @@ pub(super) fn of(survey: &Survey, repeat: &str) -> Value {
         output => &survey.output.summary,
         answers => answers.collect::<Vec<_>>(),
         kinds => (0..survey.kinds.len()).map(|index| kind(survey, index)).collect::<Vec<_>>(),
+        chips => chips.map(on_chips),
         repeat,
         toehold => survey.toehold,
         targets => whole(survey.targets),
         seed => survey.seed,
         sheet => crate::report::json(robot),
+    }
+}
+
+/// What the legs cost on the chips.
+fn on_chips(chips: &Chips) -> Value {
+    let kind = |kind: &KindOnChips| {
+        let row = |row: &Row| context! { firmware => row.firmware, cells => costs::cells(row) };
+        let reasons = costs::reasons(kind).into_iter();
+        context! {
+            name => &kind.kind,
+            leg => &kind.leg,
+            legs => kind.legs,
+            rows => kind.rows.iter().map(row).collect::<Vec<_>>(),
+            reasons => reasons.map(|(rows, why)| format!("{}: {why}", rows.join("; "))).collect::<Vec<_>>(),
+        }
+    };
+    let [counted, flash, estimated, _] = costs::what_it_is_worth();
+    let left_out = chips.left_out.iter().map(|left| format!("{}: {}", left.class, left.why));
+    context! {
+        kinds => chips.kinds.iter().map(kind).collect::<Vec<_>>(),
+        frame_ms => significant(1e3 / chips.frame_hz),
+        notes => [counted, flash, estimated],
+        sources => costs::cycle_sources(chips),
+        left_out => left_out.collect::<Vec<_>>(),
     }
 }
 
