@@ -1,7 +1,7 @@
 //! The job of `robot-cost`, from a sheet.
 
 use crate::machine;
-use crate::sheet::{Bend, HipShape, Output, Robot, Side, Turns};
+use crate::sheet::{Bend, HipShape, KneeDrive, Output, Robot, ServoCurve, Side, Turns};
 use crate::survey::{Plan, Targets};
 use serde::Serialize;
 
@@ -20,6 +20,7 @@ pub(super) struct Job {
 pub(super) struct Leg {
     name: String,
     hip: &'static str,
+    parallelogram: bool,
     output: &'static str,
     measures_mm: [f64; 3],
     bends_back: bool,
@@ -39,12 +40,30 @@ pub(super) struct Leg {
 
 #[derive(Debug, Serialize)]
 struct Servo {
-    centre_us: f64,
-    joint_at_centre_deg: f64,
-    us_per_degree: f64,
+    curve: Curve,
     trim_us: f64,
-    against: bool,
     pulse_us: [f64; 2],
+}
+
+#[derive(Debug, Serialize)]
+#[serde(rename_all = "kebab-case")]
+enum Curve {
+    Straight { centre_us: f64, joint_at_centre_deg: f64, us_per_degree: f64, against: bool },
+    Measured(Vec<[f64; 2]>),
+}
+
+impl Curve {
+    fn of(curve: &ServoCurve) -> Self {
+        match curve {
+            ServoCurve::Straight { centre_us, joint_at_centre_deg, us_per_degree, turns } => Self::Straight {
+                centre_us: *centre_us,
+                joint_at_centre_deg: *joint_at_centre_deg,
+                us_per_degree: *us_per_degree,
+                against: *turns == Turns::Against,
+            },
+            ServoCurve::Measured { measured } => Self::Measured(measured.clone()),
+        }
+    }
 }
 
 /// The first leg of a kind.
@@ -71,6 +90,7 @@ pub(super) fn leg(robot: &Robot, kind: usize) -> Leg {
             HipShape::Yaw => "yaw",
         },
         output,
+        parallelogram: sheet.knee_drive == KneeDrive::Parallelogram,
         measures_mm: [sheet.offset_mm, sheet.thigh_mm, sheet.shank_mm],
         bends_back: matches!(sheet.bend, Bend::Backward | Bend::Down),
         range_deg: sheet.range_deg,
@@ -78,14 +98,7 @@ pub(super) fn leg(robot: &Robot, kind: usize) -> Leg {
         right: mount.side == Side::Right,
         servos: [0, 1, 2].map(|joint| {
             let servo = &sheet.servos[joint];
-            Servo {
-                centre_us: servo.centre_us,
-                joint_at_centre_deg: servo.joint_at_centre_deg,
-                us_per_degree: servo.us_per_degree,
-                trim_us: mount.trim_us[joint],
-                against: servo.turns == Turns::Against,
-                pulse_us: servo.pulse_us,
-            }
+            Servo { curve: Curve::of(&servo.curve), trim_us: mount.trim_us[joint], pulse_us: servo.pulse_us }
         }),
         clock_hz,
         divider,

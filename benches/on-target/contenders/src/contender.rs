@@ -4,6 +4,7 @@ use ik_core::{RollHip, YawHip};
 use targets::{PublishedLeg, Target};
 
 use crate::forward::Forward;
+use crate::inverse::Inverse;
 
 /// One way to get from a foot to what it is asked for.
 ///
@@ -56,7 +57,7 @@ pub enum To {
 }
 
 /// A hip with published targets.
-pub trait PublishedHip: Forward + 'static {
+pub trait PublishedHip: Forward + Inverse + 'static {
     /// Its name in the table.
     const NAME: &'static str;
     /// Its leg and targets.

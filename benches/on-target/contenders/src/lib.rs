@@ -8,6 +8,7 @@
 mod contender;
 mod forward;
 mod in_flash;
+mod inverse;
 mod least_squares;
 mod nothing;
 mod ours;
@@ -16,6 +17,7 @@ mod textbook;
 
 pub use contender::{Contender, Named, PublishedHip, To};
 pub use forward::{Forward, foot_error_mm};
+pub use inverse::{Inverse, joint_error_rad};
 pub use least_squares::LeastSquares;
 pub use nothing::Nothing;
 pub use ours::Ours;

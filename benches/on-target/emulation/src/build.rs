@@ -2,6 +2,7 @@
 
 use std::{
     collections::BTreeMap,
+    fs,
     io::BufReader,
     path::PathBuf,
     process::{Command, Stdio},
@@ -29,7 +30,24 @@ pub fn plugin() -> Result<PathBuf, Trouble> {
 }
 
 /// These images of a package, by their names.
+///
+/// # Errors
+/// If one does not build.
 pub fn images(way: Way, chip: Chip, package: &str, names: &[impl AsRef<str>]) -> Result<Images, Trouble> {
+    images_with(way, chip, package, names, &[])
+}
+
+/// The same with some features of the package. They are copied to where those with other features do not replace them.
+///
+/// # Errors
+/// If one does not build, or cannot be copied.
+pub fn images_with(
+    way: Way,
+    chip: Chip,
+    package: &str,
+    names: &[impl AsRef<str>],
+    features: &[&str],
+) -> Result<Images, Trouble> {
     let mut cargo = tools::cargo(way, chip);
     cargo.args(["build", "--profile", "chip", "--package", package, "--target", chip.target()]);
     if let Some(processor) = chip.optimised_for() {
@@ -37,14 +55,24 @@ pub fn images(way: Way, chip: Chip, package: &str, names: &[impl AsRef<str>]) ->
         cargo.args(["--target-dir", "target/tuned"]);
         cargo.arg("--config").arg(format!("target.{}.rustflags=['-Ctarget-cpu={processor}']", chip.target()));
     }
+    if !features.is_empty() {
+        cargo.args(["--features", &features.join(",")]);
+    }
     for name in names {
         cargo.args(["--bin", name.as_ref()]);
     }
-    let artifacts = run(cargo, "an image")?;
-    Ok(artifacts
-        .into_iter()
-        .filter_map(|artifact| Some((artifact.target.name, artifact.executable?.into())))
-        .collect())
+    let mut images = Images::new();
+    for artifact in run(cargo, "an image")? {
+        let Some(executable) = artifact.executable else { continue };
+        let mut path = PathBuf::from(executable);
+        if !features.is_empty() {
+            let copy = path.with_file_name(format!("{}-{}", artifact.target.name, features.join("-")));
+            fs::copy(&path, &copy).map_err(Trouble::io(copy.display().to_string()))?;
+            path = copy;
+        }
+        images.insert(artifact.target.name, path);
+    }
+    Ok(images)
 }
 
 fn run(mut cargo: Command, what: &'static str) -> Result<Vec<Artifact>, Trouble> {

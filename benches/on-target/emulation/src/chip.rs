@@ -29,6 +29,8 @@ pub enum Chip {
 impl Chip {
     /// What the published table of contenders is for.
     pub const CONTENDED: [Self; 3] = [Self::M0, Self::M3, Self::M4f];
+    /// What the guard is about: one for every compiler target.
+    pub const GUARDED: [Self; 4] = [Self::M0, Self::M3, Self::M4f, Self::Rv32imc];
     /// What a robot is counted on if no chip is named.
     pub const CLASSES: [Self; 6] = [Self::M0, Self::M0Plus, Self::M3, Self::M4f, Self::M7, Self::Rv32imc];
 

@@ -19,7 +19,7 @@ mod second_count;
 mod tools;
 mod trouble;
 
-pub use build::{Images, images, plugin};
+pub use build::{Images, images, images_with, plugin};
 pub use chip::Chip;
 pub use emulator::{Run, Setting, run};
 pub use flash::bytes as flash_bytes;

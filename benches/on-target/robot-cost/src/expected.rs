@@ -1,9 +1,9 @@
 //! What an image has to log about a leg, computed here by the same code; and the words that go into its memory.
 
-use ik_core::{Coarse, Expander, Fixed16, Fixed32, Float32, Foot, RollHip, Timer, YawHip};
-use robot::{Bits, Blocks, BuildHip, BuildOutput, Header, Ready, TARGETS_AT, WORDS, Writer, answer, ask};
+use ik_core::{Channel, Coarse, Fixed16, Fixed32, Float32, Foot, Parallelogram, RollHip, YawHip};
+use robot::{Bits, Blocks, BuildDrive, BuildHip, Header, TARGETS_AT, WORDS, Writer, answer, ask};
 
-use crate::job::{Hip, Leg, Output};
+use crate::job::{Hip, Leg};
 
 /// A leg and targets in a number system.
 #[derive(Debug, Clone)]
@@ -39,27 +39,30 @@ pub fn expected(leg: &Leg, number: &str, targets: &[[f64; 3]]) -> Result<Expecte
     }
 }
 
+/// The host has room for any servo: how much there is changes no answer.
+type Channels<N> = [Channel<N, 14>; 3];
+
 fn in_number<N: Bits>(leg: &Leg, number: &str, targets: &[[f64; 3]]) -> Result<Expected, String> {
-    match (leg.hip, leg.output) {
-        (Hip::Roll, Output::Timer) => solved::<RollHip, N, Timer>(leg, number, targets),
-        (Hip::Roll, Output::Expander) => solved::<RollHip, N, Expander>(leg, number, targets),
-        (Hip::Yaw, Output::Timer) => solved::<YawHip, N, Timer>(leg, number, targets),
-        (Hip::Yaw, Output::Expander) => solved::<YawHip, N, Expander>(leg, number, targets),
+    match (leg.hip, leg.parallelogram) {
+        (Hip::Roll, false) => solved::<RollHip, N, Channels<N>>(leg, number, targets),
+        (Hip::Roll, true) => solved::<RollHip, N, Parallelogram<Channel<N, 14>>>(leg, number, targets),
+        (Hip::Yaw, false) => solved::<YawHip, N, Channels<N>>(leg, number, targets),
+        (Hip::Yaw, true) => solved::<YawHip, N, Parallelogram<Channel<N, 14>>>(leg, number, targets),
     }
 }
 
-fn solved<H: BuildHip, N: Bits, O: BuildOutput>(
+fn solved<H: BuildHip, N: Bits, D: BuildDrive<N>>(
     leg: &Leg,
     number: &str,
     targets: &[[f64; 3]],
 ) -> Result<Expected, String> {
     let words = leg.words();
-    let ready = Ready { limb: words.limb::<H, N>()?, output: O::build(&words)? };
+    let limb = words.limb::<H, N, D>()?;
     let targets: Vec<[u32; 3]> = targets
         .iter()
         .map(|&[x, y, z]| {
             // Targets are given as the leg sees them; a gait would give them on the body's frame.
-            let foot = ready.limb.mounting.body_frame(Foot::<N>::from_mm(x, y, z));
+            let foot = limb.mounting.body_frame(Foot::<N>::from_mm(x, y, z));
             foot.lengths().map(N::length_bits)
         })
         .collect();
@@ -67,12 +70,12 @@ fn solved<H: BuildHip, N: Bits, O: BuildOutput>(
     let answers = targets
         .iter()
         .map(|&target| {
-            let answered = answer(&ready, &ask(target, last.as_ref()));
+            let answered = answer(&limb, &ask(target, last.as_ref()));
             last = Some(answered);
             answered.words()
         })
         .collect();
-    Ok(Expected { image: format!("{number}-{}-{}", H::WORD, O::WORD), targets, answers, leg: words })
+    Ok(Expected { image: format!("{number}-{}", H::WORD), targets, answers, leg: words })
 }
 
 impl Expected {

@@ -2,7 +2,7 @@
 
 use std::{fs, path::Path};
 
-use robot::{LegWords, MOST_TARGETS, ServoWords};
+use robot::{LegWords, MOST_TARGETS, POINTS, ServoWords};
 use serde::Deserialize;
 
 /// Legs, each to be measured in every number system on every chip.
@@ -21,6 +21,8 @@ pub struct Leg {
     /// For messages.
     pub name: String,
     pub hip: Hip,
+    /// Whether the knee's servo sits on the body.
+    pub parallelogram: bool,
     pub output: Output,
     pub measures_mm: [f64; 3],
     pub bends_back: bool,
@@ -54,15 +56,25 @@ pub enum Output {
     Expander,
 }
 
-#[derive(Debug, Clone, Copy, Deserialize)]
+#[derive(Debug, Clone, Deserialize)]
 #[serde(deny_unknown_fields)]
 pub struct Servo {
-    pub centre_us: f64,
-    pub joint_at_centre_deg: f64,
-    pub us_per_degree: f64,
+    pub curve: Curve,
     pub trim_us: f64,
-    pub against: bool,
     pub pulse_us: [f64; 2],
+}
+
+#[derive(Debug, Clone, Deserialize)]
+#[serde(rename_all = "kebab-case")]
+pub enum Curve {
+    Straight {
+        centre_us: f64,
+        joint_at_centre_deg: f64,
+        us_per_degree: f64,
+        against: bool,
+    },
+    /// Pulse, us, and joint's angle, degrees.
+    Measured(Vec<[f64; 2]>),
 }
 
 impl Job {
@@ -100,15 +112,56 @@ impl Leg {
             range_deg: self.range_deg,
             at_mm: self.at_mm,
             right: self.right,
-            servos: self.servos.map(|servo| ServoWords {
-                measures: [servo.centre_us, servo.joint_at_centre_deg, servo.us_per_degree, servo.trim_us],
-                against: servo.against,
-                pulse_us: servo.pulse_us,
-            }),
+            servos: self.servos.each_ref().map(Servo::words),
+            expander: matches!(self.output, Output::Expander),
             clock_hz: self.clock_hz,
             divider: self.divider,
             bits: self.bits,
             frame_hz: self.frame_hz,
         }
+    }
+
+    /// The features of the images that drive it.
+    pub fn features(&self) -> Vec<&'static str> {
+        let bends = self.servos.iter().map(|servo| match &servo.curve {
+            Curve::Straight { .. } => 0,
+            Curve::Measured(points) => points.len().saturating_sub(2),
+        });
+        let mut features = match bends.max().unwrap_or(0) {
+            0 => vec![],
+            1..=2 => vec!["bends-2"],
+            3..=6 => vec!["bends-6"],
+            _ => vec!["bends-14"],
+        };
+        if self.parallelogram {
+            features.push("parallelogram");
+        }
+        features
+    }
+}
+
+impl Servo {
+    fn words(&self) -> ServoWords {
+        let mut words = ServoWords {
+            straight: [0.0; 3],
+            against: false,
+            trim_us: self.trim_us,
+            pulse_us: self.pulse_us,
+            points: 0,
+            measured: [[0.0; 2]; POINTS],
+        };
+        match &self.curve {
+            Curve::Straight { centre_us, joint_at_centre_deg, us_per_degree, against } => {
+                words.straight = [*centre_us, *joint_at_centre_deg, *us_per_degree];
+                words.against = *against;
+            }
+            Curve::Measured(points) => {
+                words.points = points.len().min(POINTS) as u32;
+                for (word, point) in words.measured.iter_mut().zip(points) {
+                    *word = *point;
+                }
+            }
+        }
+        words
     }
 }

@@ -1,6 +1,10 @@
 //! Builds, runs, compares, counts.
 
-use std::{fs, path::Path};
+use std::{
+    collections::{BTreeMap, BTreeSet},
+    fs,
+    path::Path,
+};
 
 use emulation::{Chip, Images, Setting, Trouble};
 use reckoning::Window;
@@ -60,14 +64,7 @@ fn on_chip(arguments: &Arguments, job: &Job, chip: Chip, plugin: &Path, cases: &
     eprintln!("{}: building images", chip.class());
     let setting = Setting { chip, plugin: Some(plugin), data: None, time_limit: arguments.time_limit() };
     let built = emulation::set_up(arguments.way, &[chip]).and_then(|()| {
-        let mut names: Vec<&str> =
-            cases.iter().filter_map(|case| Some(case.made.as_ref().ok()?[0].image.as_str())).collect();
-        names.sort_unstable();
-        names.dedup();
-        Ok((
-            emulation::images(arguments.way, chip, "robot-image", &names)?,
-            Sizes::of(arguments, setting, &job.numbers)?,
-        ))
+        Ok((images(arguments, job, chip, cases)?, Sizes::of(arguments, setting, &job.numbers)?))
     });
     let (images, sizes) = match built {
         Ok(built) => built,
@@ -82,7 +79,7 @@ fn on_chip(arguments: &Arguments, job: &Job, chip: Chip, plugin: &Path, cases: &
                 Ok(both) => {
                     let leg = &job.legs[case.leg];
                     let flash = sizes.of_leg(leg.hip, &case.number);
-                    one(&images, both, setting, (sizes.call, leg.typical, flash))
+                    one(&images[&leg.features()], both, setting, (sizes.call, leg.typical, flash))
                         .unwrap_or_else(|trouble| Found::NotMeasured { why: trouble.to_string() })
                 }
             };
@@ -90,6 +87,25 @@ fn on_chip(arguments: &Arguments, job: &Job, chip: Chip, plugin: &Path, cases: &
                 eprintln!("{}: {}, {}: {why}", chip.class(), job.legs[case.leg].name, case.number);
             }
             Row::new(case.leg, &case.number, chip, found)
+        })
+        .collect()
+}
+
+/// Images by the features that drive a leg.
+type ByFeatures = BTreeMap<Vec<&'static str>, Images>;
+
+fn images(arguments: &Arguments, job: &Job, chip: Chip, cases: &[Case]) -> Result<ByFeatures, Trouble> {
+    let mut names = BTreeMap::<_, BTreeSet<&str>>::new();
+    for case in cases {
+        let names = names.entry(job.legs[case.leg].features()).or_default();
+        names.extend(case.made.as_ref().map(|made| made[0].image.as_str()));
+    }
+    names
+        .into_iter()
+        .map(|(features, names)| {
+            let names: Vec<&str> = names.into_iter().collect();
+            let images = emulation::images_with(arguments.way, chip, "robot-image", &names, &features)?;
+            Ok((features, images))
         })
         .collect()
 }

@@ -1,26 +1,40 @@
-//! What all images share: each, in `bin`, has one hip, one number system and one output, and nothing of the others. Leg
-//! and targets come from memory, where the emulator put them, so that one image serves every robot's sheet.
+//! What all images share: each, in `bin`, has one hip and one number system, and nothing of the others. Leg and targets
+//! come from memory, where the emulator put them, so that one image serves every robot's sheet.
 #![no_std]
 
 use core::mem::MaybeUninit;
 
-use robot::{
-    Answer, Ask, Bits, Blocks, BuildHip, BuildOutput, Header, LegWords, Reader, Ready, TARGETS_AT, ask,
-};
+use ik_core::{Channel, Limb};
+use robot::{Answer, Ask, Bits, Blocks, BuildHip, Header, LegWords, Reader, TARGETS_AT, ask};
 
 #[doc(hidden)]
 pub use {board, ik_core};
 
-/// The image of a hip, a number system and an output.
+/// The image of a hip and a number system.
 #[macro_export]
 macro_rules! measure {
-    ($hip:ident, $number:ident, $output:ident) => {
+    ($hip:ident, $number:ident) => {
         #[$crate::board::entry]
         fn main() -> ! {
-            $crate::run::<$crate::ik_core::$hip, $crate::ik_core::$number, $crate::ik_core::$output>()
+            $crate::run::<$crate::ik_core::$hip, $crate::ik_core::$number>()
         }
     };
 }
+
+const BENDS: usize = if cfg!(feature = "bends-14") {
+    14
+} else if cfg!(feature = "bends-6") {
+    6
+} else if cfg!(feature = "bends-2") {
+    2
+} else {
+    0
+};
+
+#[cfg(not(feature = "parallelogram"))]
+type Driven<N> = [Channel<N, BENDS>; 3];
+#[cfg(feature = "parallelogram")]
+type Driven<N> = ik_core::Parallelogram<Channel<N, BENDS>>;
 
 /// Where the words lie: `Chip::data_at` in `emulation/src/chip.rs`.
 const WORDS_AT: usize = if cfg!(target_arch = "riscv32") { 0x8002_0000 } else { 0x0002_0000 };
@@ -28,16 +42,16 @@ const WORDS_AT: usize = if cfg!(target_arch = "riscv32") { 0x8002_0000 } else { 
 const WORDS: usize = 128 * 1024 / 4;
 
 /// Goes through all targets, and tells a digest of the answers at the end of every block.
-pub fn run<H: BuildHip, N: Bits, O: BuildOutput>() -> ! {
+pub fn run<H: BuildHip, N: Bits>() -> ! {
     // SAFETY: the memory map of every board has so much there, the linker puts nothing there (images are far smaller),
     // and nobody writes to it.
     let words = unsafe { core::slice::from_raw_parts(core::hint::black_box(WORDS_AT) as *const u32, WORDS) };
     let mut reader = Reader::new(words);
     let Some(header) = Header::read(&mut reader) else { panic!("there is no leg in memory") };
     let leg = LegWords::read(&mut reader);
-    let ready = match (leg.limb::<H, N>(), O::build(&leg)) {
-        (Ok(limb), Ok(output)) => Ready { limb, output },
-        (Err(why), _) | (_, Err(why)) => {
+    let limb = match leg.limb::<H, N, Driven<N>>() {
+        Ok(limb) => limb,
+        Err(why) => {
             defmt::println!("refused: {=str}", why);
             board::end::done()
         }
@@ -47,7 +61,7 @@ pub fn run<H: BuildHip, N: Bits, O: BuildOutput>() -> ! {
     for (number, target) in (0..header.targets).zip(words[TARGETS_AT..].chunks_exact(3)) {
         let asked = core::hint::black_box(ask::<N>([target[0], target[1], target[2]], last.as_ref()));
         // SAFETY: `entry` writes the answer.
-        let answer = unsafe { counted::call(entry::<H, N, O>, &ready, &asked) };
+        let answer = unsafe { counted::call(entry::<H, N>, &limb, &asked) };
         let words = answer.words();
         if (header.tell[0]..header.tell[1]).contains(&number) {
             defmt::println!("answer {=u32}: {}", number, words);
@@ -61,10 +75,10 @@ pub fn run<H: BuildHip, N: Bits, O: BuildOutput>() -> ! {
 }
 
 /// What is counted.
-extern "C" fn entry<H: BuildHip, N: Bits, O: BuildOutput>(
-    ready: &Ready<H, N, O>,
+extern "C" fn entry<H: BuildHip, N: Bits>(
+    limb: &Limb<H, N, Driven<N>>,
     ask: &Ask<N>,
     answer: &mut MaybeUninit<Answer<N>>,
 ) {
-    answer.write(robot::answer(ready, ask));
+    answer.write(robot::answer(limb, ask));
 }

@@ -1,19 +1,11 @@
 //! From a target to its answer, and the digest of many.
 
 use counted::Digest;
+use ik_core::channel::Counts;
 use ik_core::limb::LimbCommand;
 use ik_core::{End, Foot, Hip, Joints, Limb, Outcome};
 
-use crate::{Bits, BuildOutput};
-
-/// What is solved with: a limb, and the output that its servos hang on.
-#[derive(Debug, Clone, Copy)]
-pub struct Ready<H: Hip, N: Bits, O> {
-    /// The leg at its place, with its servos.
-    pub limb: Limb<H, N>,
-    /// Timer or expander.
-    pub output: O,
-}
+use crate::{Bits, BuildDrive};
 
 /// What is asked: where a foot is to go, and the last pose.
 #[derive(Debug, Clone, Copy)]
@@ -24,10 +16,7 @@ pub struct Ask<N: Bits> {
 
 /// What is answered.
 #[derive(Debug, Clone, Copy)]
-pub struct Answer<N: Bits> {
-    command: LimbCommand<N>,
-    counts: [u32; 3],
-}
+pub struct Answer<N: Bits>(LimbCommand<N, Counts>);
 
 /// Words of an answer: joints, how far the foot is off, outcome, pulses held, counts.
 pub const WORDS: usize = 9;
@@ -38,31 +27,29 @@ pub const BLOCK: u32 = 250;
 pub fn ask<N: Bits>([x, y, z]: [u32; 3], last: Option<&Answer<N>>) -> Ask<N> {
     Ask {
         foot: Foot::new(N::length_from(x), N::length_from(y), N::length_from(z)),
-        hold: last.map_or(Joints::ZERO, |last| last.command.answer.joints),
+        hold: last.map_or(Joints::ZERO, |last| last.0.answer.joints),
     }
 }
 
 /// What a firmware does for a leg in a frame: from a foot on the body's frame to three counts. This is what is counted.
 #[inline]
-pub fn answer<H: Hip, N: Bits, O: BuildOutput>(ready: &Ready<H, N, O>, ask: &Ask<N>) -> Answer<N> {
-    let command = ready.limb.command(ask.foot, ask.hold);
-    Answer { counts: command.counts(&ready.output), command }
+pub fn answer<H: Hip, N: Bits, D: BuildDrive<N>>(limb: &Limb<H, N, D>, ask: &Ask<N>) -> Answer<N> {
+    Answer(limb.command(ask.foot, ask.hold))
 }
 
 impl<N: Bits> Answer<N> {
     /// The answer, down to the last bit.
     pub fn words(&self) -> [u32; WORDS] {
-        let [hip, thigh, knee] =
-            self.command.answer.joints.as_array().map(|joint| N::angle_bits(joint.raw()));
-        let [a, b, c] = self.counts;
-        let off_by = N::length_bits(self.command.answer.off_by);
-        let outcome = match self.command.answer.outcome {
+        let [hip, thigh, knee] = self.0.answer.joints.as_array().map(|joint| N::angle_bits(joint.raw()));
+        let [a, b, c] = self.0.counts();
+        let off_by = N::length_bits(self.0.answer.off_by);
+        let outcome = match self.0.answer.outcome {
             Outcome::Reached => 0,
             Outcome::Moved => 1,
             Outcome::NotFinite => 2,
             Outcome::Held(held) => 4 + ends(held.as_array()),
         };
-        let pulses = ends(self.command.commands.map(|command| command.held));
+        let pulses = ends(self.0.commands.held.as_array());
         [hip, thigh, knee, off_by, outcome, pulses, a, b, c]
     }
 }

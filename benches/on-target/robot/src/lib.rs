@@ -4,7 +4,7 @@
 //! | module | what |
 //! | --- | --- |
 //! | `words` | how the words are laid out, written and read |
-//! | `build` | from words to a limb and an output of ik-core |
+//! | `build` | from words to a limb of ik-core |
 //! | `numbers` | a number system's lengths and angles as bits |
 //! | `answers` | from a target to its answer, and the digest of many |
 #![cfg_attr(not(test), no_std)]
@@ -15,7 +15,7 @@ mod build;
 mod numbers;
 mod words;
 
-pub use answers::{Answer, Ask, BLOCK, Blocks, Ready, WORDS, answer, ask};
-pub use build::{BuildHip, BuildOutput};
+pub use answers::{Answer, Ask, BLOCK, Blocks, WORDS, answer, ask};
+pub use build::{BuildDrive, BuildHip};
 pub use numbers::Bits;
-pub use words::{Header, LegWords, MAGIC, MOST_TARGETS, Reader, ServoWords, TARGETS_AT, Writer};
+pub use words::{Header, LegWords, MAGIC, MOST_TARGETS, POINTS, Reader, ServoWords, TARGETS_AT, Writer};

@@ -1,10 +1,12 @@
 //! How the words are laid out, written and read: little-endian, an `f64` as two words, the low one first.
 
 /// The first word: what follows are words of this layout.
-pub const MAGIC: u32 = 0x7065_6731;
+pub const MAGIC: u32 = 0x7065_6732;
+/// The most points of a measured servo.
+pub const POINTS: usize = ik_core::servo::MOST_POINTS;
 /// Where the targets begin: three words each, the lengths of a foot on the body's frame, as the number system stores
 /// them.
-pub const TARGETS_AT: usize = 128;
+pub const TARGETS_AT: usize = 288;
 /// So that all lie within 128 KB.
 pub const MOST_TARGETS: usize = (128 * 1024 / 4 - TARGETS_AT) / 3;
 
@@ -32,7 +34,9 @@ pub struct LegWords {
     pub right: bool,
     /// Hip, thigh, knee.
     pub servos: [ServoWords; 3],
-    /// The clock of timer or expander, Hz.
+    /// Whether the servos hang on an expander, not on a timer.
+    pub expander: bool,
+    /// Its clock, Hz.
     pub clock_hz: u32,
     /// What it is divided by; 0 of a timer: the least with which a frame fits.
     pub divider: u32,
@@ -45,12 +49,17 @@ pub struct LegWords {
 /// A servo.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct ServoWords {
-    /// Centre, joint's angle there, gain, trim.
-    pub measures: [f64; 4],
+    /// Centre, joint's angle there, gain; of a measured servo nothing.
+    pub straight: [f64; 3],
     /// Whether a longer pulse makes the joint's angle smaller.
     pub against: bool,
+    pub trim_us: f64,
     /// The shortest and the longest safe pulse, us.
     pub pulse_us: [f64; 2],
+    /// How many points were measured; 0 of a straight servo.
+    pub points: u32,
+    /// Pulse, us, and joint's angle, degrees.
+    pub measured: [[f64; 2]; POINTS],
 }
 
 /// Takes words.
@@ -136,10 +145,16 @@ impl LegWords {
         to.numbers(self.at_mm);
         to.word(self.right.into());
         for servo in &self.servos {
-            to.numbers(servo.measures);
+            to.numbers(servo.straight);
             to.word(servo.against.into());
+            to.number(servo.trim_us);
             to.numbers(servo.pulse_us);
+            to.word(servo.points);
+            for point in servo.measured.iter().take(servo.points as usize) {
+                to.numbers(*point);
+            }
         }
+        to.word(self.expander.into());
         to.words([self.clock_hz, self.divider, self.bits]);
         to.number(self.frame_hz);
     }
@@ -152,16 +167,30 @@ impl LegWords {
             range_deg: core::array::from_fn(|_| from.numbers()),
             at_mm: from.numbers(),
             right: from.word() != 0,
-            servos: core::array::from_fn(|_| ServoWords {
-                measures: from.numbers(),
-                against: from.word() != 0,
-                pulse_us: from.numbers(),
-            }),
+            servos: core::array::from_fn(|_| ServoWords::read(from)),
+            expander: from.word() != 0,
             clock_hz: from.word(),
             divider: from.word(),
             bits: from.word(),
             frame_hz: from.number(),
         }
+    }
+}
+
+impl ServoWords {
+    fn read(from: &mut Reader<'_>) -> Self {
+        let mut servo = Self {
+            straight: from.numbers(),
+            against: from.word() != 0,
+            trim_us: from.number(),
+            pulse_us: from.numbers(),
+            points: from.word(),
+            measured: [[0.0; 2]; POINTS],
+        };
+        for point in servo.measured.iter_mut().take(servo.points as usize) {
+            *point = from.numbers();
+        }
+        servo
     }
 }
 
@@ -177,10 +206,13 @@ mod tests {
 
     #[test]
     fn what_is_written_is_read_back_and_leaves_room_for_the_targets() {
-        let servo = |n: f64| ServoWords {
-            measures: [n, n + 0.1, n + 0.2, -n],
-            against: n > 2.0,
-            pulse_us: [n, n * 2.0],
+        let servo = |points: usize| ServoWords {
+            straight: [points as f64, 0.1, 0.2],
+            against: points > 2,
+            trim_us: -3.5,
+            pulse_us: [600.0, 2400.0],
+            points: points as u32,
+            measured: core::array::from_fn(|n| if n < points { [n as f64, -0.5] } else { [0.0; 2] }),
         };
         let leg = LegWords {
             measures_mm: [31.5, 94.0, 107.25],
@@ -188,7 +220,8 @@ mod tests {
             range_deg: [[-1.0, 1.5], [-2.0, 2.5], [3.0, 3.5]],
             at_mm: [120.0, -52.0, 0.125],
             right: true,
-            servos: [servo(1.0), servo(2.0), servo(3.0)],
+            servos: [servo(POINTS), servo(POINTS), servo(POINTS)],
+            expander: true,
             clock_hz: 48_000_000,
             divider: 15,
             bits: 16,

@@ -33,6 +33,10 @@ pub struct Cost {
     pub stack: u64,
     /// How far the foot is from where it was asked to be, at most, mm.
     pub largest_foot_error_mm: f64,
+    /// The same as a share of thigh and shank together.
+    pub largest_foot_error: f64,
+    /// How far a joint is from where it should be, at most, radians.
+    pub largest_joint_error_rad: f64,
     /// Instructions by kind, on average.
     pub kinds: Vec<(Kind, f64)>,
 }
@@ -116,6 +120,8 @@ pub fn cost(expected: &Expected, windows: &[Window], flash: u64, call: CallAlone
         flash: flash as i64 - call.flash as i64,
         stack: windows.iter().map(|window| window.stack).max().unwrap_or(0),
         largest_foot_error_mm: expected.largest_foot_error_mm,
+        largest_foot_error: expected.largest_foot_error,
+        largest_joint_error_rad: expected.largest_joint_error_rad,
         kinds: kinds
             .into_iter()
             .map(|kind| (kind, mean(&|window| window.kinds.get(&kind).copied().unwrap_or(0))))
@@ -147,6 +153,8 @@ mod tests {
             targets: 2,
             line: "some-roll 2 77".into(),
             largest_foot_error_mm: 0.5,
+            largest_foot_error: 0.0025,
+            largest_joint_error_rad: 0.01,
         }
     }
 

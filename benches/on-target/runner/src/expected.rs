@@ -17,6 +17,10 @@ pub struct Expected {
     pub line: String,
     /// How far the foot is from where it was asked to be, at most, mm.
     pub largest_foot_error_mm: f64,
+    /// The same as a share of thigh and shank together.
+    pub largest_foot_error: f64,
+    /// How far a joint is from where it should be, at most, radians.
+    pub largest_joint_error_rad: f64,
 }
 
 /// All contenders, in the order of the table.
@@ -32,13 +36,16 @@ impl Visit for Collector {
     fn visit<C: Contender>(&mut self) {
         let targets: &[Target] = C::Hip::PUBLISHED.targets;
         let mut digest = Digest::EMPTY;
-        let mut largest_foot_error_mm = 0.0_f64;
+        let (mut largest_foot_error_mm, mut largest_joint_error_rad) = (0.0_f64, 0.0_f64);
         for &target in targets {
             let answer = C::solve(&C::LEG, &C::foot(target));
             digest = digest.with(C::bits(&answer));
             if C::TO != To::Nothing {
-                largest_foot_error_mm = largest_foot_error_mm
-                    .max(contenders::foot_error_mm::<C::Hip>(C::joints(&answer), target));
+                let joints = C::joints(&answer);
+                let foot_error_mm = contenders::foot_error_mm::<C::Hip>(joints, target);
+                largest_foot_error_mm = largest_foot_error_mm.max(foot_error_mm);
+                let joint_error_rad = contenders::joint_error_rad::<C::Hip>(joints, target);
+                largest_joint_error_rad = largest_joint_error_rad.max(joint_error_rad);
             }
         }
         self.0.push(Expected {
@@ -50,6 +57,9 @@ impl Visit for Collector {
             targets: targets.len(),
             line: format!("{} {} {}", C::NAME, targets.len(), digest.value()),
             largest_foot_error_mm,
+            largest_foot_error: largest_foot_error_mm
+                / (C::Hip::PUBLISHED.thigh_mm + C::Hip::PUBLISHED.shank_mm),
+            largest_joint_error_rad,
         });
     }
 }

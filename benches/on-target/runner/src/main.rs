@@ -6,6 +6,8 @@
 mod arguments;
 mod count;
 mod expected;
+mod goals;
+mod guard;
 mod report;
 mod table;
 mod trouble;
@@ -17,6 +19,7 @@ use contenders::To;
 use count::Cost;
 use emulation::{Chip, Setting};
 use expected::Expected;
+use goals::Goals;
 use report::Report;
 use trouble::Trouble;
 
@@ -52,8 +55,28 @@ fn run(arguments: &Arguments) -> Result<(), Trouble> {
     }
     if arguments.json {
         println!("{}", report::json(&reports));
+    } else {
+        println!("{}", Goals::of(&reports));
     }
-    Ok(())
+    if arguments.rewrite_guard {
+        println!("written: {}", guard::rewrite(&reports)?.display());
+    }
+    if arguments.guard { compare_with_guard(&mut reports, arguments.pretend_more) } else { Ok(()) }
+}
+
+fn compare_with_guard(reports: &mut [Report], pretend_more: u64) -> Result<(), Trouble> {
+    for cost in reports.iter_mut().flat_map(|report| &mut report.costs) {
+        cost.instructions.mean *= 1.0 + pretend_more as f64 / 100.0;
+    }
+    let excesses = guard::excesses(reports)?;
+    for excess in &excesses {
+        eprintln!("{excess}");
+    }
+    if excesses.is_empty() {
+        println!("the guard: nothing costs more than 3 % beyond guard.toml");
+        return Ok(());
+    }
+    Err(Trouble::Beyond { excesses: excesses.len() })
 }
 
 /// What is asked for, and the call alone, which is always needed.
@@ -67,7 +90,7 @@ fn wanted(arguments: &Arguments) -> Result<Vec<Expected>, Trouble> {
     }
     Ok(all
         .into_iter()
-        .filter(|expected| expected.to == To::Nothing || arguments.wants(expected.name))
+        .filter(|expected| expected.to == To::Nothing || arguments.wants(expected.name, expected.ours))
         .collect())
 }
 

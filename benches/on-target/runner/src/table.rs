@@ -22,7 +22,9 @@ pub fn table(costs: &[Cost]) -> Table {
         "cycles",
         "flash",
         "stack",
+        "joint off, rad",
         "foot off, mm",
+        "of reach",
     ]);
     for column in table.column_iter_mut().skip(3) {
         column.set_cell_alignment(CellAlignment::Right);
@@ -44,7 +46,9 @@ pub fn table(costs: &[Cost]) -> Table {
             format!("{:.0}-{:.0}", cost.cycles[0], cost.cycles[1]),
             cost.flash.to_string(),
             cost.stack.to_string(),
+            format!("{:.1e}", cost.largest_joint_error_rad),
             format!("{:.1e}", cost.largest_foot_error_mm),
+            format!("{:.1e}", cost.largest_foot_error),
         ]);
     }
     table

@@ -26,6 +26,12 @@ pub enum Trouble {
         "{name}: the instruction at {address:#x} is of no kind that the cycle tables have; see reckoning/src/decode.rs"
     )]
     UnknownInstruction { name: String, address: u64 },
+
+    #[error("{path}: {problem}; `cargo leg-cost --rewrite-guard` writes it anew", path = path.display())]
+    Guard { path: std::path::PathBuf, problem: String },
+
+    #[error("{excesses} figures are beyond guard.toml; if that is meant, `cargo leg-cost --rewrite-guard`")]
+    Beyond { excesses: usize },
 }
 
 impl Trouble {

@@ -1,5 +1,0 @@
-//! Coarse, roll-hip leg, expander.
-#![no_std]
-#![no_main]
-
-robot_image::measure!(RollHip, Coarse, Expander);

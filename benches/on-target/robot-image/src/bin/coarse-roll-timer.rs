@@ -1,5 +1,0 @@
-//! Coarse, roll-hip leg, timer.
-#![no_std]
-#![no_main]
-
-robot_image::measure!(RollHip, Coarse, Timer);

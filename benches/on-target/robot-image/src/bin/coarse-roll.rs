@@ -1,0 +1,5 @@
+//! Coarse, roll-hip leg.
+#![no_std]
+#![no_main]
+
+robot_image::measure!(RollHip, Coarse);

@@ -1,5 +1,0 @@
-//! Coarse, yaw-hip leg, expander.
-#![no_std]
-#![no_main]
-
-robot_image::measure!(YawHip, Coarse, Expander);

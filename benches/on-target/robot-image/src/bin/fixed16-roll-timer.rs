@@ -1,5 +1,0 @@
-//! Fixed16, roll-hip leg, timer.
-#![no_std]
-#![no_main]
-
-robot_image::measure!(RollHip, Fixed16, Timer);

@@ -1,5 +1,0 @@
-//! Fixed32, roll-hip leg, expander.
-#![no_std]
-#![no_main]
-
-robot_image::measure!(RollHip, Fixed32, Expander);

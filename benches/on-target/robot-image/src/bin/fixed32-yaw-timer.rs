@@ -1,5 +1,0 @@
-//! Fixed32, yaw-hip leg, timer.
-#![no_std]
-#![no_main]
-
-robot_image::measure!(YawHip, Fixed32, Timer);
