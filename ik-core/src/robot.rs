@@ -62,15 +62,14 @@ impl<H: Hip, N: Number, const LEGS: usize, D: Drive<N>> Robot<H, N, LEGS, D> {
     /// One frame: a foot per leg (body frame), in the order in which they were added, to pulses. A leg without a
     /// foot, or with one that is not finite, keeps its pose; feet without a leg are passed over.
     pub fn frame(&mut self, feet: &[Foot<N>]) -> Vec<LimbCommand<N, D::Sent>, LEGS> {
-        self.limbs
-            .iter_mut()
-            .zip(feet)
-            .map(|((limb, pose), foot)| {
-                let command = limb.command(*foot, *pose);
-                *pose = command.answer.joints;
-                command
-            })
-            .collect()
+        let mut commands = Vec::new();
+        for ((limb, pose), foot) in self.limbs.iter_mut().zip(feet) {
+            let command = limb.command(*foot, *pose);
+            *pose = command.answer.joints;
+            // There is room for as many as there are limbs; to collect would leave a panic for want of it.
+            let _ = commands.push(command);
+        }
+        commands
     }
 }
 

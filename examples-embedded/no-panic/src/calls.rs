@@ -1,10 +1,14 @@
 //! Every public function of ik-core, in a number system, with opaque values.
 
+use ik_core::channel::PulsesHeld;
+use ik_core::drive::{Drive, Sent, Servos};
 use ik_core::limits::End;
-use ik_core::output::Output;
+use ik_core::output::{Counting, Output};
+use ik_core::servo::MOST_POINTS;
 use ik_core::{
-    Angle, Answer, Bend, Dimensions, Expander, Foot, Hip, Joints, Leg, Limb, Limits, Mounting, Number,
-    Outcome, Pulse, Servo, ServoSpec, Side, Timer, Turns,
+    Angle, Answer, Bend, Channel, Curve, Dimensions, Expander, Foot, Hip, Joints, Leg, Limb, Limits,
+    MeasuredServo, Mounting, Number, Outcome, Parallelogram, Pulse, Servo, ServoError, ServoSpec, Side,
+    Timer, Turns,
 };
 
 use crate::numbers::{Opaque, every_primitive};
@@ -68,7 +72,7 @@ fn limits() -> Limits {
     match Limits::degrees(two(), two(), two()) {
         Ok(limits) => {
             use_up([limits.hip_deg(), limits.thigh_deg(), limits.knee_deg()]);
-            limits
+            limits.through_parallelogram(bend(), two(), two()).unwrap_or(limits)
         }
         Err(error) => {
             use_up(error.message());
@@ -81,24 +85,81 @@ fn pulse() -> Pulse {
     Pulse::from_steps(word())
 }
 
-fn servos<N: Opaque>() -> [Servo<N>; 3] {
+fn pulses() {
     use_up((pulse().steps(), pulse().us(), Pulse::from_us(number()), Pulse::from_fixed(pulse().fixed())));
-    let spec = || ServoSpec {
+}
+
+/// A value that could be made.
+fn made<T>(mut make: impl FnMut() -> Result<T, ServoError>) -> T {
+    loop {
+        match make() {
+            Ok(made) => return made,
+            Err(error) => use_up(error.message()),
+        }
+    }
+}
+
+fn spec() -> ServoSpec {
+    ServoSpec {
         centre_us: number(),
         joint_at_centre_deg: number(),
         us_per_degree: number(),
         turns: if truth() { Turns::With } else { Turns::Against },
         trim_us: number(),
         pulse_us: two(),
-    };
-    let servo = loop {
-        match Servo::<N>::from_spec(spec()) {
-            Ok(servo) => break servo,
-            Err(error) => use_up(error.message()),
+    }
+}
+
+fn curve() -> Curve {
+    let mut points = [[0.0; 2]; MOST_POINTS + 2];
+    for point in &mut points {
+        *point = two();
+    }
+    let points = points.get(..word() as usize).unwrap_or(&[]);
+    let measured = made(|| MeasuredServo { points, trim_us: number(), pulse_us: two() }.curve());
+    let curve = if truth() { made(|| spec().curve()) } else { measured };
+    use_up((curve.bends(), curve.pulse_us(), curve.joint_deg()));
+    curve
+}
+
+fn counting() -> Counting {
+    loop {
+        let counting = if truth() {
+            Timer::finest(word(), word() as u8, number()).map(|timer| timer.counting())
+        } else {
+            Expander::nearest(word(), word() as u8, number()).map(|expander| expander.counting())
+        };
+        if let Ok(counting) = counting {
+            use_up((counting.counts_per_us(), counting.most_counts()));
+            return counting;
         }
-    };
+    }
+}
+
+/// Servos and channels, straight and with room for some bends.
+fn servos<N: Opaque>() -> [Servo<N>; 3] {
+    let servo = made(|| Servo::<N>::from_spec(spec()));
     use_up((servo.command(angle()), servo.angle(pulse()), servo.pulse_range()));
+    let bent = made(|| Servo::<N, 4>::from_curve(&curve()));
+    use_up((bent.command(angle()), bent.angle(pulse()), bent.pulse_range()));
+    use_up([bent; 3].turn([angle(), angle(), angle()]));
+    let channel = made(|| Channel::<N, 4>::from_curve(&curve(), counting()));
+    use_up((channel.command(angle()), channel.range()));
+    let counts = [channel; 3].turn([angle(), angle(), angle()]);
+    let held = PulsesHeld::of(counts.held.as_array());
+    use_up((counts.is_held(), held.any(), [channel; 3].turn_quickly([angle(), angle(), angle()])));
     [servo; 3]
+}
+
+/// A leg with what drives it.
+fn driven<H: Hip, N: Opaque, D: Drive<N>>(leg: Leg<H, N>, servos: D) {
+    let limb = Limb { leg, mounting: Mounting::new(foot(), Side::Right), servos };
+    let command = limb.command(foot(), joints());
+    answer(command.answer);
+    use_up((limb.commands(&joints()), command.pulse_held(), command.commands));
+    use_up((servos.send(&joints(), truth()), servos.send_quickly(&joints(), truth())));
+    #[cfg(feature = "heapless")]
+    robot(limb);
 }
 
 fn output(output: &impl Output) {
@@ -108,6 +169,7 @@ fn output(output: &impl Output) {
 
 fn outputs() {
     let bits = || word() as u8;
+    pulses();
     for timer in [Timer::new(word(), word(), bits(), number()), Timer::finest(word(), bits(), number())] {
         match timer {
             Ok(timer) => {
@@ -146,14 +208,18 @@ fn legs<H: Hip, N: Opaque>(dimensions: Dimensions<H>, limits: Limits, servos: [S
     use_up(leg.forward(&joints()));
 
     let limb = Limb { leg, mounting: Mounting::new(foot(), Side::Right), servos };
-    let command = limb.command(foot(), joints());
-    answer(command.answer);
-    use_up((limb.commands(&joints()), command.pulse_held()));
     if let Ok(timer) = Timer::finest(word(), 16, number()) {
-        use_up(command.counts(&timer));
+        use_up(limb.command(foot(), joints()).counts(&timer));
     }
-    #[cfg(feature = "heapless")]
-    robot(limb);
+    let channel = made(|| Channel::<N>::from_spec(spec(), counting()));
+    let bent = made(|| Channel::<N, 4>::from_curve(&curve(), counting()));
+    use_up(Limb { leg, mounting: limb.mounting, servos: [channel; 3] }.command(foot(), joints()).counts());
+    driven(leg, servos);
+    driven(leg, [channel; 3]);
+    driven(leg, [bent; 3]);
+    driven(leg, Parallelogram([channel; 3]));
+    driven(leg, Parallelogram(servos));
+    use_up(Parallelogram::<()>::shank(&joints::<N>(), truth()));
     #[cfg(feature = "queue")]
     queue::<N>();
 }
@@ -167,8 +233,8 @@ fn answer<N: Number>(answer: Answer<N>) {
 }
 
 #[cfg(feature = "heapless")]
-fn robot<H: Hip, N: Opaque>(limb: Limb<H, N>) {
-    let mut robot = ik_core::robot::Robot::<H, N, 6>::new();
+fn robot<H: Hip, N: Opaque, D: Drive<N>>(limb: Limb<H, N, D>) {
+    let mut robot = ik_core::robot::Robot::<H, N, 6, D>::new();
     for _ in 0..word() {
         use_up(robot.add(limb).is_ok());
     }

@@ -5,7 +5,7 @@ use ik_core::Number;
 #[cfg(any(feature = "float32", feature = "coarse"))]
 use ik_core::number::float::{Float, FloatMaths};
 
-use crate::opaque::{number, two, use_up, word};
+use crate::opaque::{number, truth, two, use_up, word};
 
 /// A number system whose values can be opaque.
 pub trait Opaque: Number {
@@ -95,6 +95,7 @@ pub fn every_primitive<N: Opaque>() {
     use_up(N::millidegrees(N::any_angle()));
     use_up(N::micrometres(N::any_length()));
     use_up(N::length_difference(N::any_length(), N::any_length()));
+    use_up(N::length_difference_or_mirrored(N::any_length(), N::any_length(), truth()));
 
     use_up(N::square(coord(), scale));
     use_up(N::root(square(), scale));
@@ -119,5 +120,6 @@ pub fn every_primitive<N: Opaque>() {
     use_up(N::distance(foot, [N::any_length(), N::any_length(), N::any_length()]));
 
     use_up(N::travel(N::any_angle(), N::any_angle(), N::gain_from(number())));
+    use_up(N::on_line(N::line_from(number(), number()), N::any_angle()));
     use_up(N::swing_to(word() as i32, N::any_angle(), N::swing_from(number())));
 }

@@ -98,8 +98,10 @@ impl Curve {
 
     /// A stretch; the last one for what lies beyond.
     pub(crate) const fn stretch(&self, number: usize) -> Stretch {
-        let last = if self.count <= MOST_STRETCHES { self.count - 1 } else { MOST_STRETCHES - 1 };
-        self.stretches[if number < last { number } else { last }]
+        let last = self.count.saturating_sub(1);
+        let number = if number < last { number } else { last };
+        // So that the compiler sees it: the count never leaves 1 to the most.
+        self.stretches[if number < MOST_STRETCHES { number } else { MOST_STRETCHES - 1 }]
     }
 }
 
@@ -172,6 +174,10 @@ impl MeasuredServo<'_> {
         while number < points.len() && count < MOST_STRETCHES {
             // By rising angle of the joint.
             let at = if falls { points.len() - number } else { number };
+            // Never; but so the compiler sees that no index is out of bounds.
+            if at == 0 || at >= points.len() {
+                return Err(ServoError::Points);
+            }
             let (before, after) = (points[at - 1], points[at]);
             let (us, next_us) = (before[0] + self.trim_us, after[0] + self.trim_us);
             if !(magnitude(before[1]) <= 180.0 && magnitude(after[1]) <= 180.0) {
