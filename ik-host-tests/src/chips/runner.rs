@@ -27,6 +27,8 @@ pub struct Ask {
     pub clocks: Clocks,
     /// Where the compiler for the chips comes from: a word of `.ci/tools.sh`, or `none`.
     pub way: String,
+    /// More arguments for `robot-cost`.
+    pub pass_on: Vec<String>,
 }
 
 /// Why nothing could be measured.
@@ -159,6 +161,7 @@ fn run(ask: &Ask, job: &Job) -> Result<Vec<Told>, ChipsError> {
         .args(["--way", &ask.way])
         .stdin(Stdio::null())
         .stderr(Stdio::inherit());
+    cargo.args(&ask.pass_on);
     for chip in &ask.chips {
         cargo.args(["--chip", chip]);
     }

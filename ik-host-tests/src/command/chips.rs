@@ -40,6 +40,9 @@ pub(super) struct Call {
     /// Where the compiler for the chips comes from; none: install nothing
     #[arg(long, value_name = "WAY", default_value = "auto", value_parser = ["auto", "rustup", "distro", "none"])]
     way: String,
+    /// Self-test: an argument for robot-cost
+    #[arg(long, hide = true, value_name = "ARGUMENT", allow_hyphen_values = true)]
+    pass_on: Vec<String>,
 }
 
 const NOTE: &str = "\
@@ -68,6 +71,7 @@ impl Call {
             numbers: NumberSystem::ALL.into_iter().filter(|number| is_asked(number.name())).collect(),
             clocks: Clocks::of(&self.clocks, &ON_ALL).map_err(wrong)?,
             way: self.way.clone(),
+            pass_on: self.pass_on.clone(),
         };
         let found =
             chips::measure(&robots, &ask).map_err(|error| Ending::Failed(format!("toehold: {error}")))?;

@@ -4,7 +4,7 @@ use std::{
     collections::BTreeMap,
     fs,
     io::BufReader,
-    path::PathBuf,
+    path::{Path, PathBuf},
     process::{Command, Stdio},
 };
 
@@ -34,10 +34,10 @@ pub fn plugin() -> Result<PathBuf, Trouble> {
 /// # Errors
 /// If one does not build.
 pub fn images(way: Way, chip: Chip, package: &str, names: &[impl AsRef<str>]) -> Result<Images, Trouble> {
-    images_with(way, chip, package, names, &[])
+    images_with(way, chip, package, names, &[], None)
 }
 
-/// The same with some features of the package. They are copied to where those with other features do not replace them.
+/// The same with some features of the package, and, for a self-test, with another ik-core than ours. They are copied to where those with other features do not replace them.
 ///
 /// # Errors
 /// If one does not build, or cannot be copied.
@@ -47,6 +47,7 @@ pub fn images_with(
     package: &str,
     names: &[impl AsRef<str>],
     features: &[&str],
+    ik_core: Option<&Path>,
 ) -> Result<Images, Trouble> {
     let mut cargo = tools::cargo(way, chip);
     cargo.args(["build", "--profile", "chip", "--package", package, "--target", chip.target()]);
@@ -57,6 +58,9 @@ pub fn images_with(
     }
     if !features.is_empty() {
         cargo.args(["--features", &features.join(",")]);
+    }
+    if let Some(other) = ik_core {
+        cargo.arg("--config").arg(format!("paths=['{}']", other.display()));
     }
     for name in names {
         cargo.args(["--bin", name.as_ref()]);

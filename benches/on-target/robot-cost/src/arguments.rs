@@ -28,6 +28,10 @@ pub struct Arguments {
     /// Self-test: expect a wrong answer at this target
     #[arg(long, hide = true, value_name = "TARGET")]
     pub spoil: Option<u32>,
+
+    /// Self-test: build the images with the ik-core in this folder
+    #[arg(long, hide = true, value_name = "FOLDER")]
+    pub ik_core: Option<PathBuf>,
 }
 
 impl Arguments {

@@ -104,7 +104,14 @@ fn images(arguments: &Arguments, job: &Job, chip: Chip, cases: &[Case]) -> Resul
         .into_iter()
         .map(|(features, names)| {
             let names: Vec<&str> = names.into_iter().collect();
-            let images = emulation::images_with(arguments.way, chip, "robot-image", &names, &features)?;
+            let images = emulation::images_with(
+                arguments.way,
+                chip,
+                "robot-image",
+                &names,
+                &features,
+                arguments.ik_core.as_deref(),
+            )?;
             Ok((features, images))
         })
         .collect()
