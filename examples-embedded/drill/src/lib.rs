@@ -74,7 +74,11 @@ fn both_legs<N: InFlash + Bits>(tell: &mut dyn FnMut(Event)) {
     one_leg("culvert walker's left front leg with free joints", &culvert, tell);
 }
 
-fn one_leg<H: Hip, N: Bits>(leg: &'static str, limb: &Limb<H, N, [Channel<N>; 3]>, tell: &mut dyn FnMut(Event)) {
+fn one_leg<H: Hip, N: Bits>(
+    leg: &'static str,
+    limb: &Limb<H, N, [Channel<N>; 3]>,
+    tell: &mut dyn FnMut(Event),
+) {
     tell(Event::Run { leg, numbers: N::NAME });
     let mut pose = Joints::ZERO;
     for (number, target) in (0..).zip(targets::stream()) {
@@ -84,7 +88,11 @@ fn one_leg<H: Hip, N: Bits>(leg: &'static str, limb: &Limb<H, N, [Channel<N>; 3]
 }
 
 /// From a foot target to three pulse lengths in ticks: what a firmware does every frame.
-fn solve<H: Hip, N: Bits>(limb: &Limb<H, N, [Channel<N>; 3]>, target: Target, pose: &mut Joints<N>) -> Answer {
+fn solve<H: Hip, N: Bits>(
+    limb: &Limb<H, N, [Channel<N>; 3]>,
+    target: Target,
+    pose: &mut Joints<N>,
+) -> Answer {
     // Targets are given as the leg sees them; a gait would give them on the body's frame.
     let foot = limb.mounting.body_frame(target.foot());
     let command = limb.command(foot, *pose);

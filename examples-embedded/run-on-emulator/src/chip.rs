@@ -52,7 +52,9 @@ impl Chip {
         match self {
             Self::M0 | Self::M3 | Self::M4f | Self::M7 => ("qemu-system-arm", &[]),
             // No floating point and no atomics, so that an image which has them ends in a fault.
-            Self::Rv32imc => ("qemu-system-riscv32", &["-bios", "none", "-cpu", "rv32,f=false,d=false,a=false"]),
+            Self::Rv32imc => {
+                ("qemu-system-riscv32", &["-bios", "none", "-cpu", "rv32,f=false,d=false,a=false"])
+            }
         }
     }
 }

@@ -1,6 +1,7 @@
 //! The clock of a chip.
 
 use std::collections::BTreeMap;
+use std::ops::RangeInclusive;
 use std::str::FromStr;
 
 /// A clock that the user names, for one class or for all.
@@ -17,7 +18,7 @@ pub struct Clocks {
     of_class: BTreeMap<String, f64>,
 }
 
-const RANGE_HZ: [f64; 2] = [1e3, 1e10];
+const RANGE_HZ: RangeInclusive<f64> = 1e3..=1e10;
 
 impl FromStr for Clock {
     type Err = String;
@@ -33,7 +34,7 @@ impl FromStr for Clock {
             .find_map(|(name, unit)| Some((frequency.strip_suffix(name)?.trim_end(), *unit)))
             .unwrap_or((frequency, 1.0));
         let hz = number.replace('_', "").parse::<f64>().map_or(f64::NAN, |number| number * unit);
-        if RANGE_HZ[0] <= hz && hz <= RANGE_HZ[1] {
+        if RANGE_HZ.contains(&hz) {
             Ok(Self { class, hz })
         } else {
             Err(format!(
