@@ -141,7 +141,7 @@ fn names_from_a_sheet_cannot_break_the_page() {
     survey.kinds[0].legs[0] = format!("leg {evil}");
     let folder = tempfile::tempdir().unwrap();
     let repeat = format!("toehold survey '{evil}.toml'");
-    let [_, html] = report::write(folder.path(), "robot", &survey, &repeat).unwrap();
+    let [_, html] = report::write(folder.path(), "robot", &survey, None, &repeat).unwrap();
     let broken = fs::read_to_string(html).unwrap();
     let good = page(&SURVEYS[0]);
     // The same elements, one for one: whatever the names hold, they are text.
@@ -169,7 +169,7 @@ fn a_report_is_two_files_and_nothing_is_left_beside_them() {
     let folder = tempfile::tempdir().unwrap();
     let inner = folder.path().join("made/on/the/way");
     for _ in 0..2 {
-        let [json, html] = report::write(&inner, "robot", &SURVEYS[0], REPEAT).unwrap();
+        let [json, html] = report::write(&inner, "robot", &SURVEYS[0], None, REPEAT).unwrap();
         assert_eq!((json, html), (inner.join("robot.json"), inner.join("robot.html")));
         assert_eq!(names(&inner), ["robot.html", "robot.json"]);
     }
@@ -182,7 +182,7 @@ fn an_earlier_report_is_replaced_not_written_over() {
     fs::write(&page, "the earlier page").unwrap();
     // Another name for the same file: were it written over, this would change too.
     fs::hard_link(&page, &kept).unwrap();
-    report::write(folder.path(), "robot", &SURVEYS[0], REPEAT).unwrap();
+    report::write(folder.path(), "robot", &SURVEYS[0], None, REPEAT).unwrap();
     assert_eq!(fs::read_to_string(&kept).unwrap(), "the earlier page");
     let new = fs::read_to_string(&page).unwrap();
     assert!(new.starts_with("<!DOCTYPE html>") && new.trim_end().ends_with("</html>"));
@@ -195,7 +195,7 @@ fn a_report_that_cannot_be_placed_leaves_what_was_there_and_no_other_file() {
     let place = folder.path().join("robot.html");
     fs::create_dir(&place).unwrap();
     fs::write(place.join("inside"), "kept").unwrap();
-    let error = report::write(folder.path(), "robot", &SURVEYS[0], REPEAT).unwrap_err().to_string();
+    let error = report::write(folder.path(), "robot", &SURVEYS[0], None, REPEAT).unwrap_err().to_string();
     assert!(error.contains(&place.display().to_string()), "{error}");
     assert_eq!(fs::read_to_string(place.join("inside")).unwrap(), "kept");
     assert_eq!(names(folder.path()), ["robot.html", "robot.json"]);
@@ -207,7 +207,7 @@ fn a_folder_that_cannot_be_made_is_named() {
     let file = folder.path().join("file");
     fs::write(&file, "kept").unwrap();
     let inside = file.join("reports");
-    let error = report::write(&inside, "robot", &SURVEYS[0], REPEAT).unwrap_err().to_string();
+    let error = report::write(&inside, "robot", &SURVEYS[0], None, REPEAT).unwrap_err().to_string();
     assert!(error.contains("cannot write") && error.contains(&inside.display().to_string()), "{error}");
     assert_eq!(fs::read_to_string(&file).unwrap(), "kept");
 }
