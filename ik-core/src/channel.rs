@@ -12,13 +12,14 @@
 //!
 //! | number system | counts are within |
 //! | --- | --- |
-//! | `Float32`, `Coarse` | ½ + 2⁻²² · w |
-//! | `Fixed32`, `Fixed16` | ½ + 2⁻²⁷ · w |
+//! | `Float32`, `Coarse` | ½ + 2⁻²³ · w |
+//! | `Fixed32`, `Fixed16` | ½ + ¾ · 2⁻³⁰ · w |
 //!
-//! of the exact line at the angle as the number system holds it, and at least ½ + 2⁻²² of it; w is the number of counts in
-//! a turn of the servo, and in its pulse at the joint's zero, together. For a servo of 4000 µs a turn on a timer of
-//! 0.3125 µs, w is 17 600, and a count is within 0.505 of the exact one in floating point and within 0.5002 in fixed
-//! point. An angle of `Fixed16` is itself a whole number of 1/65536 turns, of which such a servo has five in a count.
+//! of the exact line at the angle as the number system holds it (½ + 2⁻²² if that is more); w is the number of counts in a
+//! turn of the servo, and in its pulse at the joint's zero, together. For a servo of 4000 µs a turn on a timer of 0.3125 µs,
+//! w is 17 600: a count is within 0.503 of the exact one in floating point, and within 0.50002 in fixed point. An angle of
+//! `Fixed16` is itself a whole number of 1/65536 turns, of which such a servo has five in a count; and a bend of a measured
+//! servo lies at the nearest of them.
 
 use crate::angle::Angle;
 use crate::limits::End;

@@ -15,7 +15,7 @@ pub struct FixedLine {
 
 impl FixedLine {
     /// With as many fraction bits as 31 bits leave room for, up to 24: nothing overflows at any angle. The line is then
-    /// within four of its smallest parts, 2^(2 − shift), of the exact one.
+    /// within ¾ of its smallest part, 2^-shift, of the exact one before it is rounded down, for the two roundings down are one.
     pub(super) const fn from(per_turn: f64, at_zero: f64) -> Self {
         let most = magnitude(per_turn) + magnitude(at_zero) + 2.0;
         let mut shift = 0;
@@ -66,14 +66,14 @@ mod tests {
 
     #[cfg(feature = "fixed32")]
     #[test]
-    fn a_line_is_within_four_of_its_smallest_parts() {
+    fn a_line_is_within_three_quarters_of_its_smallest_part() {
         for (per_turn, at_zero) in LINES {
             let line = FixedLine::from(per_turn, at_zero);
             for step in -32_768..32_768i64 {
                 let angle = (step * 65_536 + (step * step) % 65_536) as i32;
                 let exact = per_turn * f64::from(angle) / 4_294_967_296.0 + at_zero;
                 let off = f64::from(line.at(angle)) - exact;
-                let slack = 0.5 + 4.0 / power_of_two(line.shift as i32);
+                let slack = 0.5 + 0.75 / power_of_two(line.shift as i32);
                 assert!(off.abs() <= slack, "{per_turn} {at_zero} {angle}: off by {off}");
             }
         }

@@ -4,6 +4,7 @@
 //! | --- | --- |
 //! | [`solver`] | ik-core in any number system behind plain `f64`, so that a wrong solver can take its place |
 //! | [`servo`] | the same of a servo |
+//! | [`channel`] | the same of a servo on an output, in every number system |
 //! | [`legs`] | legs and targets, drawn by proptest or from a fixed seed |
 //! | [`bounds`] | what each number system promises, as it was measured |
 //! | [`knee_reach`] | the reachable set of a leg whose knee has a range |
@@ -14,6 +15,7 @@
 #![allow(dead_code, unreachable_pub, reason = "each test file is a crate of its own and uses a part of this")]
 
 pub mod bounds;
+pub mod channel;
 pub mod checks;
 pub mod effort;
 pub mod knee_reach;

@@ -1,6 +1,7 @@
 //! One checker per promise. Each takes a solver, servo or output, whoever made it, and says what is wrong with
 //! it; `breaking.rs` feeds each of them wrong ones.
 
+pub mod channel;
 pub mod continuity;
 pub mod limits;
 pub mod mirror;
