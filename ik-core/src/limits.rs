@@ -65,7 +65,7 @@ const fn ordered(range: [f64; 2], least: f64) -> bool {
     range[0] >= least && range[1] <= 180.0 && range[0] <= range[1]
 }
 
-/// What two ranges have in common; NaN if it is part of either.
+/// What two ranges have in common; neither holds NaN.
 const fn common(a: [f64; 2], b: [f64; 2]) -> [f64; 2] {
     [if a[0] < b[0] { b[0] } else { a[0] }, if a[1] > b[1] { b[1] } else { a[1] }]
 }
@@ -107,6 +107,11 @@ impl Limits {
         thigh_servo_deg: [f64; 2],
         shank_servo_deg: [f64; 2],
     ) -> Result<Self, LimitsError> {
+        // NaN fails the comparisons.
+        let sound = thigh_servo_deg[0] <= thigh_servo_deg[1] && shank_servo_deg[0] <= shank_servo_deg[1];
+        if !sound {
+            return Err(LimitsError::Shank);
+        }
         let [knee_least, knee_most] = self.knee_deg;
         // A shank's angle is held at half a turn.
         let [shank_least, shank_most] = common(shank_servo_deg, [-180.0, 180.0]);

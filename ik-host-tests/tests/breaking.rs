@@ -3,17 +3,19 @@
 
 mod common;
 
+use common::channel::{self, AnyOutput, ChannelModel, Measured};
 use common::checks::output::Hardware;
 use common::checks::published_pose::Published;
 use common::checks::{
-    continuity, limits, mirror, output, published_pose, reach, round_trip, servo as servo_checks, totality,
+    channel as channel_checks, continuity, limits, mirror, output, published_pose, reach, round_trip,
+    servo as servo_checks, totality,
 };
 use common::legs::{CULVERT, ORCHARD};
 use common::published::leg_poses;
 use common::servo::{self, ServoModel};
 use common::solver::{NumberSystem, Solver, Told, core};
 use ik_core::output::Output;
-use ik_core::{End, Expander, Held, Outcome, Pulse, ServoSpec, Side};
+use ik_core::{End, Expander, Held, Outcome, Pulse, ServoSpec, Side, Timer};
 use ik_host_tests::reference::{Leg, Pose, Ranges, transforms};
 use std::f64::consts::PI;
 
@@ -437,6 +439,108 @@ fn a_servo_that_steps_back_is_noticed_by_that_alone() {
         };
         assert!(servo_checks::check_monotone(&wrong, 0.1, 0.3).is_err(), "{number:?}");
         assert_eq!(servo_checks::check_monotone(&wrong, -0.1, 0.1), Ok(()), "{number:?}");
+    }
+}
+
+/// Counts and whether they were held, to other counts and another word.
+type ChangeCount = fn(f64, u32, Option<End>) -> (u32, Option<End>);
+
+/// A servo on an output with something wrong.
+struct WrongChannel {
+    inner: Box<dyn ChannelModel>,
+    change: ChangeCount,
+    range: fn([u32; 2]) -> [u32; 2],
+    back: fn(f64) -> f64,
+}
+
+impl ChannelModel for WrongChannel {
+    fn name(&self) -> &'static str {
+        self.inner.name()
+    }
+    fn quantised(&self, degrees: f64) -> f64 {
+        self.inner.quantised(degrees)
+    }
+    fn command(&self, degrees: f64) -> (u32, Option<End>) {
+        let (counts, held) = self.inner.command(degrees);
+        (self.change)(degrees, counts, held)
+    }
+    fn back(&self, counts: u32) -> f64 {
+        (self.back)(self.inner.back(counts))
+    }
+    fn range(&self) -> [u32; 2] {
+        (self.range)(self.inner.range())
+    }
+    fn bound(&self) -> f64 {
+        self.inner.bound()
+    }
+}
+
+#[test]
+fn a_wrong_channel_is_noticed() {
+    let servo = Measured {
+        points: vec![[700.0, -70.5], [1100.0, -30.0], [1900.0, 38.0], [2300.0, 80.0]],
+        trim_us: 4.0,
+        pulse_us: [750.2, 2250.4],
+    };
+    let output = AnyOutput::Timer(Timer::finest(48_000_000, 16, 50.0).expect("a timer"));
+    let check = |channel: &dyn ChannelModel| {
+        channel_checks::check_ends(channel, &servo, &output)?;
+        (-100..100).try_for_each(|degrees| {
+            let degrees = f64::from(degrees) * 1.003;
+            channel_checks::check(channel, &servo, &output, degrees)?;
+            channel_checks::check_monotone(channel, &servo, degrees, degrees + 0.7)?;
+            channel_checks::check_back(channel, &servo, &output, channel.command(degrees).0)
+        })
+    };
+    let faults: [(&str, ChangeCount); 5] = [
+        ("a count too many", |_, counts, held| (counts + u32::from(held.is_none()), held)),
+        ("held, but not said", |_, counts, _| (counts, None)),
+        ("said to be held, but not", |_, counts, held| (counts, held.or(Some(End::Most)))),
+        ("beyond its range", |_, counts, held| (counts + u32::from(held == Some(End::Most)), held)),
+        ("a step back", |degrees, counts, held| {
+            (if degrees > 30.0 { counts.min(5500) } else { counts }, held)
+        }),
+    ];
+    let sound = || channel::in_every_number(&servo, output).expect("a channel");
+    for model in sound() {
+        assert_eq!(check(&*model), Ok(()), "{}: sound", model.name());
+    }
+    let same: fn([u32; 2]) -> [u32; 2] = |range| range;
+    for (fault, change) in faults {
+        for inner in sound() {
+            let wrong = WrongChannel { inner, change, range: same, back: |degrees| degrees };
+            assert!(check(&wrong).is_err(), "{}: {fault} went unnoticed", wrong.name());
+        }
+    }
+    let ranges: [(&str, fn([u32; 2]) -> [u32; 2]); 4] = [
+        ("a least too short", |[least, most]| [least - 1, most]),
+        ("a least too long", |[least, most]| [least + 1, most]),
+        ("a most too short", |[least, most]| [least, most - 1]),
+        ("a most too long", |[least, most]| [least, most + 1]),
+    ];
+    for (fault, range) in ranges {
+        for inner in sound() {
+            let wrong = WrongChannel {
+                inner,
+                change: |_, counts, held| (counts, held),
+                range,
+                back: |degrees| degrees,
+            };
+            assert!(
+                channel_checks::check_ends(&wrong, &servo, &output).is_err(),
+                "{}: {fault}",
+                wrong.name()
+            );
+        }
+    }
+    for inner in sound() {
+        let wrong = WrongChannel {
+            inner,
+            change: |_, counts, held| (counts, held),
+            range: same,
+            back: |degrees| degrees + 0.1,
+        };
+        assert!(check(&wrong).is_err(), "{}: a wrong way back went unnoticed", wrong.name());
     }
 }
 

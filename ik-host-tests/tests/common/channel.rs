@@ -48,6 +48,14 @@ impl Measured {
         us + (degrees - from) * (next_us - us) / (to - from) + self.trim_us
     }
 
+    /// The angle at a pulse, degrees: straight beyond the ends.
+    pub fn degrees_at(&self, us: f64) -> f64 {
+        let us = us - self.trim_us;
+        let at = self.points.windows(2).rposition(|pair| pair[0][0] <= us).unwrap_or(0);
+        let [[from_us, from], [to_us, to]] = [self.points[at], self.points[at + 1]];
+        from + (us - from_us) * (to - from) / (to_us - from_us)
+    }
+
     /// The largest µs per degree between any two points.
     pub fn steepest(&self) -> f64 {
         self.points
