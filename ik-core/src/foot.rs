@@ -14,6 +14,9 @@ pub struct Foot<N: Number> {
 }
 
 impl<N: Number> Foot<N> {
+    /// The frame's origin.
+    pub const ORIGIN: Self = Self { x: N::NO_LENGTH, y: N::NO_LENGTH, z: N::NO_LENGTH };
+
     /// A foot from lengths of the number system.
     pub const fn new(x: N::Length, y: N::Length, z: N::Length) -> Self {
         Self { x, y, z }

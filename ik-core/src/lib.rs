@@ -68,6 +68,7 @@
 //! | `float32`, `fixed32` (on by default), `fixed16`, `coarse` | a number system each |
 //! | `heapless` | `robot`: the legs of a robot without allocation |
 //! | `queue` | `queue`: foot targets from the main loop to the frame interrupt; needs atomic loads and stores (on RV32IMC switch on one of heapless's `portable-atomic` features) |
+//! | `hal` | [`output::hal`]: servos through embedded-hal 1.0, on any PWM channel or an expander behind I²C |
 //! | `defmt` | `defmt::Format` on everything that a firmware may want to log |
 //!
 //! All are additive, and each works alone.

@@ -2,9 +2,14 @@
 //!
 //! Prescalers divide by whole numbers, so the true period of a tick is rarely the nominal one; everything here
 //! works with the true one. Rounding is to the nearest tick, exactly: the quotient is formed in 64-bit integers.
+//!
+#![doc = include_str!("../docs/wiring-an-output.md")]
 
 mod counting;
 mod expander;
+#[cfg(feature = "hal")]
+pub mod hal;
+mod ratio;
 mod timer;
 
 pub use counting::Counting;
@@ -13,7 +18,7 @@ pub use timer::Timer;
 
 use crate::servo::Pulse;
 use core::fmt;
-use core::num::NonZeroU64;
+use ratio::Ratio;
 
 /// What turns pulses into whole counts of a clock.
 pub trait Output {
@@ -42,6 +47,8 @@ pub enum OutputError {
     Bits,
     /// A frame must last at least 256 counts, and no longer than the counter and its prescaler allow.
     Frame,
+    /// The registers of an expander's channels must lie within 256.
+    Registers,
 }
 
 impl OutputError {
@@ -54,6 +61,7 @@ impl OutputError {
             Self::Frame => {
                 "a frame must last at least 256 counts and no longer than counter and prescaler allow"
             }
+            Self::Registers => "the registers of an expander's channels must lie within 256",
         }
     }
 }
@@ -88,32 +96,12 @@ impl Clock {
         }
     }
 
-    /// steps·hz / (steps per second·divider), rounded: below 2^62 / 2^36.
-    #[inline]
-    fn counts(&self, pulse: Pulse) -> u64 {
-        let per_hertz = self.steps_per_hertz();
-        (u64::from(pulse.steps()) * u64::from(self.hz) + per_hertz.get() / 2) / per_hertz
-    }
-
-    fn pulse(&self, counts: u32) -> Pulse {
-        // Counts beyond the longest pulse would overflow; they saturate.
-        let per_hertz = self.steps_per_hertz().get();
-        let most = (u64::from(u32::MAX) * u64::from(self.hz)) / self.steps_per_hertz();
-        let counts = u64::from(counts).min(most);
-        let hz = u64::from(self.hz);
-        let steps = (counts * per_hertz + hz / 2).checked_div(hz).unwrap_or(0);
-        Pulse::from_steps(steps.min(u64::from(u32::MAX)) as u32)
+    const fn ratio(&self) -> Ratio {
+        // The divider is not 0, nor is this more than 2^36·2^16.
+        Ratio::new(self.hz, PULSE_STEPS_PER_S * self.divider as u64)
     }
 
     const fn count_us(&self) -> f64 {
         self.divider as f64 * 1e6 / self.hz as f64
-    }
-
-    const fn steps_per_hertz(&self) -> NonZeroU64 {
-        // At most 2^36·2^16, and never 0, for the divider is not.
-        match NonZeroU64::new(PULSE_STEPS_PER_S * self.divider as u64) {
-            Some(steps) => steps,
-            None => NonZeroU64::MIN,
-        }
     }
 }

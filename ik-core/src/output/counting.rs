@@ -1,12 +1,14 @@
 //! How an output counts, for what is worked out while compiling.
 
-use super::Clock;
+use super::{OutputError, Ratio};
+use crate::servo::Pulse;
 
-/// How an output counts: what a [`Channel`](crate::Channel) is made for.
+/// How an output counts: what a [`Channel`](crate::Channel) is made for. From [`Timer::counting`](crate::Timer::counting),
+/// [`Expander::counting`](crate::Expander::counting), or [`Counting::of_duty`].
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 #[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct Counting {
-    pub(super) clock: Clock,
+    pub(super) ratio: Ratio,
     pub(super) most_counts: u32,
 }
 
@@ -14,9 +16,22 @@ pub struct Counting {
 const STEPS_PER_US: f64 = 65_536.0;
 
 impl Counting {
+    /// A PWM channel of which so much duty is the whole of a period: 2 µs to 1 s, at least 256 counts.
+    ///
+    /// # Errors
+    /// If the period or the duty is not that.
+    pub const fn of_duty(whole: u16, period_ns: u32) -> Result<Self, OutputError> {
+        if whole < 256 || period_ns < 2_000 || period_ns > 1_000_000_000 {
+            return Err(OutputError::Frame);
+        }
+        // A nanosecond is 8192/125 steps of a pulse.
+        let ratio = Ratio::new(whole as u32 * 125, period_ns as u64 * 8192);
+        Ok(Self { ratio, most_counts: whole as u32 })
+    }
+
     /// Counts in a microsecond.
     pub const fn counts_per_us(&self) -> f64 {
-        self.clock.hz as f64 / (self.clock.divider as f64 * 1e6)
+        self.ratio.per_us()
     }
 
     /// The largest count within a frame.
@@ -24,17 +39,27 @@ impl Counting {
         self.most_counts
     }
 
-    /// [least, most] whole counts that lie within [shortest, longest] µs, exactly: neither is rounded outward. No count
-    /// is below 1, for 0 counts are no pulse. `None` if there are none.
+    /// The count nearest to a pulse, halves upwards; held at the largest within a frame.
+    #[inline]
+    pub const fn counts(&self, pulse: Pulse) -> u32 {
+        let counts = self.ratio.nearest(pulse);
+        if counts > self.most_counts as u64 { self.most_counts } else { counts as u32 }
+    }
+
+    /// The pulse of so many counts, to the nearest 1/65536 µs; saturates.
+    pub const fn pulse(&self, counts: u32) -> Pulse {
+        self.ratio.pulse(counts)
+    }
+
+    /// [least, most] whole counts that lie within [shortest, longest] µs: neither is rounded outward. No count is below 1,
+    /// for 0 counts are no pulse. `None` if there are none.
     pub(crate) const fn within(&self, [shortest_us, longest_us]: [f64; 2]) -> Option<[u32; 2]> {
-        let per_hertz = self.clock.steps_per_hertz().get();
-        let hz = self.clock.hz as u64;
         // Multiplied by a power of two, nothing is lost; a pulse has less than 2^31 steps.
         let (shortest, longest) = (shortest_us * STEPS_PER_US, (longest_us * STEPS_PER_US) as u64);
         let down = shortest as u64;
         let shortest = if (down as f64) < shortest { down + 1 } else { down };
-        let least = (shortest * hz).div_ceil(per_hertz);
-        let most = longest * hz / per_hertz;
+        let least = self.ratio.covering(shortest);
+        let most = self.ratio.within(longest);
         let least = if least < 1 { 1 } else { least };
         let most = if most > self.most_counts as u64 { self.most_counts as u64 } else { most };
         if least > most { None } else { Some([least as u32, most as u32]) }

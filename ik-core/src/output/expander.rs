@@ -70,7 +70,7 @@ impl Expander {
 
     /// How it counts.
     pub const fn counting(&self) -> Counting {
-        Counting { clock: self.clock, most_counts: self.frame_counts() - 1 }
+        Counting { ratio: self.clock.ratio(), most_counts: self.frame_counts() - 1 }
     }
 
     /// Counts in a frame.
@@ -82,11 +82,11 @@ impl Expander {
 impl Output for Expander {
     #[inline]
     fn counts(&self, pulse: Pulse) -> u32 {
-        self.clock.counts(pulse).min(u64::from(self.most_counts())) as u32
+        self.counting().counts(pulse)
     }
 
     fn pulse(&self, counts: u32) -> Pulse {
-        self.clock.pulse(counts)
+        self.counting().pulse(counts)
     }
 
     fn most_counts(&self) -> u32 {

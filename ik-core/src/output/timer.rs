@@ -71,6 +71,44 @@ impl Timer {
         }
     }
 
+    /// The finest timer whose prescaler takes only certain dividers, such as powers of two. They may come in any order.
+    ///
+    /// ```
+    /// use ik_core::Timer;
+    /// use ik_core::output::Output;
+    ///
+    /// // 16 bits at 16 MHz: of 1, 8, 64, 256 and 1024, dividing by 8 is the finest that holds 20 ms; a tick is 0.5 us.
+    /// let timer = Timer::finest_of(&[1, 8, 64, 256, 1024], 16_000_000, 16, 50.0).map_err(|error| error.message())?;
+    /// assert_eq!((timer.divider(), timer.frame_ticks(), timer.count_us()), (8, 40_000, 0.5));
+    /// # Ok::<(), &'static str>(())
+    /// ```
+    ///
+    /// # Errors
+    /// Says what the hardware cannot do; [`OutputError::Frame`] if none of the dividers suits.
+    pub const fn finest_of(
+        dividers: &[u32],
+        clock_hz: u32,
+        counter_bits: u8,
+        frame_hz: f64,
+    ) -> Result<Self, OutputError> {
+        let mut found = Err(OutputError::Frame);
+        let mut finest = u32::MAX;
+        let mut number = 0;
+        while number < dividers.len() {
+            let divider = dividers[number];
+            match Self::new(clock_hz, divider, counter_bits, frame_hz) {
+                Ok(timer) if divider < finest => {
+                    found = Ok(timer);
+                    finest = divider;
+                }
+                Ok(_) | Err(OutputError::Frame) => {}
+                Err(error) => return Err(error),
+            }
+            number += 1;
+        }
+        found
+    }
+
     /// The factor by which the prescaler divides.
     pub const fn divider(&self) -> u32 {
         self.clock.divider
@@ -78,7 +116,7 @@ impl Timer {
 
     /// How it counts.
     pub const fn counting(&self) -> Counting {
-        Counting { clock: self.clock, most_counts: self.most_ticks }
+        Counting { ratio: self.clock.ratio(), most_counts: self.most_ticks }
     }
 
     /// Ticks in a frame.
@@ -90,11 +128,11 @@ impl Timer {
 impl Output for Timer {
     #[inline]
     fn counts(&self, pulse: Pulse) -> u32 {
-        self.clock.counts(pulse).min(u64::from(self.most_ticks)) as u32
+        self.counting().counts(pulse)
     }
 
     fn pulse(&self, counts: u32) -> Pulse {
-        self.clock.pulse(counts)
+        self.counting().pulse(counts)
     }
 
     fn most_counts(&self) -> u32 {

@@ -72,7 +72,7 @@ pub fn check_ends(channel: &dyn ChannelModel, servo: &Measured, output: &AnyOutp
         }
     };
     let scaled = |us: f64| (us * 2f64.powi(40)) as u128 * hz;
-    let pulse = |counts: u128| counts * u128::from(divider) * 1_000_000 << 40;
+    let pulse = |counts: u128| (counts * u128::from(divider) * 1_000_000) << 40;
     let case = format!("{}: {servo:?} {output:?}: {least} to {most}", channel.name());
     // A whole number of 2^-40 µs is at most one short.
     ensure!(pulse(least) + hz >= scaled(shortest), "{case}: the least is too short");
