@@ -31,6 +31,10 @@ use crate::servo::{Curve, ServoError, ServoSpec, Stretch};
 /// measured points. A `const` one lives in flash.
 ///
 /// ```
+/// # #[cfg(not(feature = "fixed32"))]
+/// # fn main() {}
+/// # #[cfg(feature = "fixed32")]
+/// # fn main() -> Result<(), &'static str> {
 /// use ik_core::{Angle, Channel, End, Fixed32, ServoSpec, Timer};
 ///
 /// const TIMER: Timer = match Timer::finest(48_000_000, 16, 50.0) {
@@ -41,7 +45,6 @@ use crate::servo::{Curve, ServoError, ServoSpec, Stretch};
 ///     Ok(channel) => channel,
 ///     Err(error) => panic!("{}", error.message()),
 /// };
-/// # fn main() -> Result<(), &'static str> {
 /// // 9 degrees at 100/9 us per degree are 100 us; 1600 us are 5120 ticks of 0.3125 us.
 /// let command = HIP.command(Angle::from_degrees(9.0).ok_or("angle")?);
 /// assert_eq!((command.counts, command.held), (5120, None));

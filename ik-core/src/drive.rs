@@ -106,12 +106,15 @@ where
 /// Servos of hip, thigh and shank, the last one on the body; see [the module](crate::drive).
 ///
 /// ```
+/// # #[cfg(not(feature = "fixed32"))]
+/// # fn main() {}
+/// # #[cfg(feature = "fixed32")]
+/// # fn main() -> Result<(), Box<dyn core::error::Error>> {
 /// use ik_core::drive::{Parallelogram, Sent};
 /// use ik_core::{
 ///     Bend, Channel, Dimensions, Fixed32, Foot, Joints, Leg, Limb, Limits, Mounting, RollHip, ServoSpec, Side, Timer,
 /// };
 ///
-/// # fn main() -> Result<(), Box<dyn core::error::Error>> {
 /// let timer = Timer::finest(48_000_000, 16, 50.0)?;
 /// let wide = ServoSpec { pulse_us: [600.0, 2400.0], ..ServoSpec::COMMON };
 /// let servos = [wide, wide, ServoSpec { joint_at_centre_deg: 60.0, ..wide }];

@@ -444,12 +444,14 @@ fn a_servo_that_steps_back_is_noticed_by_that_alone() {
 
 /// Counts and whether they were held, to other counts and another word.
 type ChangeCount = fn(f64, u32, Option<End>) -> (u32, Option<End>);
+/// A range of counts to another.
+type ChangeRange = fn([u32; 2]) -> [u32; 2];
 
 /// A servo on an output with something wrong.
 struct WrongChannel {
     inner: Box<dyn ChannelModel>,
     change: ChangeCount,
-    range: fn([u32; 2]) -> [u32; 2],
+    range: ChangeRange,
     back: fn(f64) -> f64,
 }
 
@@ -505,14 +507,14 @@ fn a_wrong_channel_is_noticed() {
     for model in sound() {
         assert_eq!(check(&*model), Ok(()), "{}: sound", model.name());
     }
-    let same: fn([u32; 2]) -> [u32; 2] = |range| range;
+    let same: ChangeRange = |range| range;
     for (fault, change) in faults {
         for inner in sound() {
             let wrong = WrongChannel { inner, change, range: same, back: |degrees| degrees };
             assert!(check(&wrong).is_err(), "{}: {fault} went unnoticed", wrong.name());
         }
     }
-    let ranges: [(&str, fn([u32; 2]) -> [u32; 2]); 4] = [
+    let ranges: [(&str, ChangeRange); 4] = [
         ("a least too short", |[least, most]| [least - 1, most]),
         ("a least too long", |[least, most]| [least + 1, most]),
         ("a most too short", |[least, most]| [least, most - 1]),

@@ -199,7 +199,7 @@ fn ends_are_rounded_inward_and_no_count_is_none() {
     // 8 µs a count: 1000 is 125 counts exactly, 1001 lies above.
     assert_eq!(range([1000.0, 2000.0]), Ok([125, 250]));
     assert_eq!(range([1001.0, 1999.0]), Ok([126, 249]));
-    assert_eq!(range([1000.000_1, 1999.999_9]), Ok([126, 249]));
+    assert_eq!(range([1000.0001, 1999.9999]), Ok([126, 249]));
     // 0 counts are no pulse, not a short one.
     assert_eq!(range([0.0, 2000.0]), Ok([1, 250]));
     assert_eq!(range([1497.0, 1503.0]), Err(ServoError::Counts));

@@ -12,6 +12,7 @@ const MOST_STRETCHES: usize = MOST_POINTS - 1;
 /// A servo as it was measured: straight between the points.
 ///
 /// ```
+/// # #[cfg(feature = "fixed32")] {
 /// use ik_core::{Fixed32, MeasuredServo, Pulse, Servo};
 ///
 /// // A servo that is a little slower at the ends of its travel. Four points: two bends.
@@ -27,6 +28,7 @@ const MOST_STRETCHES: usize = MOST_POINTS - 1;
 /// };
 /// assert!((KNEE.angle(Pulse::from_us(1106.0)).degrees() - 41.0).abs() < 1e-4);
 /// assert!((KNEE.angle(Pulse::from_us(1506.0)).degrees() - 78.0).abs() < 1e-4);
+/// # }
 /// ```
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct MeasuredServo<'a> {
