@@ -6,10 +6,9 @@ use crate::textbook::{on_cordic, on_libm, on_micromath};
 use cordic::CordicNumber;
 use fixed::traits::Fixed;
 use fixed::types::{I16F16, I32F32};
-use ik_core::output::Output;
 use ik_core::{
-    Angle, Bend, Coarse, Dimensions, Fixed32, Float32, Foot, Hip, Joints, Leg, Limb, Limits, Mounting,
-    Number, Servo, ServoSpec, Side, Timer,
+    Angle, Bend, Channel, Coarse, Dimensions, Fixed32, Float32, Foot, Hip, Joints, Leg, Limb, Limits,
+    Mounting, Number, ServoSpec, Side, Timer,
 };
 use std::hint::black_box;
 use std::rc::Rc;
@@ -121,14 +120,11 @@ fn core_of<H: Hip, N: Number>(
         let solve = move |foot: &Foot<N>| leg.solve(*foot, Joints::ZERO);
         return Contender::new(name, accuracy, feet, solve, move |answer| radians(answer.joints));
     }
-    let servos = [Servo::from_spec(ServoSpec::COMMON).expect("a servo"); 3];
-    let limb = Limb { leg, mounting: Mounting::new(Foot::from_mm(0.0, 0.0, 0.0), Side::Left), servos };
     let timer = Timer::finest(48_000_000, 16, 50.0).expect("a timer");
-    let solve = move |foot: &Foot<N>| {
-        let command = limb.command(*foot, Joints::ZERO);
-        (command.answer, command.commands.map(|c| timer.counts(c.pulse)))
-    };
-    Contender::new(name, accuracy, feet, solve, move |(answer, _)| radians(answer.joints))
+    let servos = [Channel::from_spec(ServoSpec::COMMON, timer.counting()).expect("a servo"); 3];
+    let limb = Limb { leg, mounting: Mounting::new(Foot::ORIGIN, Side::Left), servos };
+    let solve = move |foot: &Foot<N>| limb.command(*foot, Joints::ZERO);
+    Contender::new(name, accuracy, feet, solve, move |command| radians(command.answer.joints))
 }
 
 fn textbook_f32(

@@ -32,6 +32,7 @@
 //! | limits | [`limits`] | joint angles within their ranges, and which joint was held |
 //! | servo | [`servo`] | a pulse in microseconds within its range |
 //! | output | [`output`] | timer ticks or expander counts |
+//! | both at once | [`channel`], [`drive`] | counts from joint angles, without the pulse in between |
 //!
 //! # Frames, units, signs
 //!

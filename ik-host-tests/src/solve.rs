@@ -2,7 +2,7 @@
 
 use crate::machine::{self, Counter, Refused, legs_of};
 use crate::reference::{Pose, leg::distance};
-use crate::sheet::{Robot, Side};
+use crate::sheet::{KneeDrive, Robot, Side};
 use crate::survey::Judge;
 use ik_core::Outcome;
 use ik_core::limits::End;
@@ -21,6 +21,8 @@ pub struct Solved {
     pub foot_mm: [f64; 3],
     /// Whether it was given in the body's frame.
     pub asked_on_body: bool,
+    /// Whether the last pulse turns the shank through a parallelogram, not the knee.
+    pub parallelogram: bool,
     /// `ticks` or `counts`.
     pub unit: &'static str,
     /// What the reference says, in f64.
@@ -149,6 +151,7 @@ pub fn solve(robot: &Robot, leg: usize, foot_mm: [f64; 3], asked_on_body: bool) 
         joints,
         foot_mm,
         asked_on_body,
+        parallelogram: sheet.knee_drive == KneeDrive::Parallelogram,
         unit: counter.unit(),
         reference,
         answers,

@@ -9,9 +9,10 @@ use common::checks::channel;
 use common::effort::rounds;
 use common::legs::Sweep;
 use ik_core::{
-    Angle, Channel, Counting, Curve, Fixed16, Fixed32, Float32, MeasuredServo, Number, Servo, ServoError,
-    ServoSpec, Timer, Turns,
+    Angle, Channel, Coarse, Counting, Curve, Fixed16, Fixed32, Float32, MeasuredServo, Number, Servo,
+    ServoError, ServoSpec, Timer, Turns,
 };
+use ik_host_tests::numbers::Float64;
 
 fn timer() -> Timer {
     Timer::finest(48_000_000, 16, 50.0).expect("a timer")
@@ -56,6 +57,45 @@ fn every_count_comes_back_through_its_angle() {
                 }
             }
         }
+    }
+}
+
+/// The same servo without an output: its pulse is right, within what may be sent, never steps back, and comes back.
+#[test]
+fn pulses_of_measured_servos_are_right_too() {
+    fn check<N: Number>(servo: &Measured, sweep: &mut Sweep, parts_of_a_turn: f64) {
+        let model = Servo::<N, 14>::from_curve(&servo.curve().expect("a curve")).expect("a servo");
+        let [shortest, longest] = servo.sent_us();
+        // A step of the pulse, what the gain's rounding comes to over the longest stretch, and a bend at the nearest angle.
+        let slack = 2.0 / 65_536.0 + parts_of_a_turn * 360.0 * servo.steepest();
+        for _ in 0..100 {
+            let angle =
+                |degrees: f64| Angle::<N>::from_degrees(degrees.clamp(-180.0, 180.0)).expect("an angle");
+            let from = angle(sweep.within(-180.0, 180.0));
+            let command = model.command(from);
+            let exact = servo.us_at(from.degrees()).clamp(shortest, longest);
+            let off = (command.pulse.us() - exact).abs();
+            assert!(off <= slack, "{}: {servo:?} {}: {off} us off", N::NAME, from.degrees());
+            let [least, most] = model.pulse_range();
+            assert!((least..=most).contains(&command.pulse), "{}: {servo:?}", N::NAME);
+            let other = model.command(angle(from.degrees() + 10f64.powf(sweep.within(-5.0, 2.0)))).pulse;
+            let (low, high) = if servo.falls() { (other, command.pulse) } else { (command.pulse, other) };
+            assert!(low <= high, "{}: {servo:?} {}: a step back", N::NAME, from.degrees());
+            let back = model.angle(command.pulse);
+            if command.held.is_none() && back.degrees().abs() < 179.9 {
+                let off = (model.command(back).pulse.us() - command.pulse.us()).abs();
+                assert!(off <= 2.0 * slack, "{}: {servo:?}: {off} us there and back", N::NAME);
+            }
+        }
+    }
+    let mut sweep = Sweep::from_seed(44);
+    for _ in 0..rounds(600) {
+        let servo = Measured::random(&mut sweep);
+        check::<Float32>(&servo, &mut sweep, 3e-7);
+        check::<Coarse>(&servo, &mut sweep, 3e-7);
+        check::<Fixed32>(&servo, &mut sweep, 3e-8);
+        check::<Fixed16>(&servo, &mut sweep, 1.0 / 65_536.0);
+        check::<Float64>(&servo, &mut sweep, 1e-14);
     }
 }
 

@@ -14,7 +14,8 @@ mod limbs;
 mod numbers;
 mod targets;
 
-use ik_core::{Channel, Coarse, End, Fixed32, Float32, Hip, Joints, Limb, Outcome};
+use ik_core::drive::Drive;
+use ik_core::{Coarse, Counts, End, Fixed32, Float32, Hip, Joints, Limb, Outcome};
 
 use limbs::InFlash;
 use numbers::Bits;
@@ -66,6 +67,7 @@ pub fn go_through(tell: &mut dyn FnMut(Event)) {
 
 fn both_legs<N: InFlash + Bits>(tell: &mut dyn FnMut(Event)) {
     one_leg("orchard walker's right front leg", &N::ORCHARD, tell);
+    one_leg("orchard walker's right front leg with bent servos and a parallelogram", &N::ORCHARD_BENT, tell);
     one_leg("culvert walker's left front leg", &N::CULVERT, tell);
     // Without joint ranges more of the solver's angles are seen.
     let orchard = Limb { leg: N::ORCHARD_FREE, ..N::ORCHARD };
@@ -74,9 +76,9 @@ fn both_legs<N: InFlash + Bits>(tell: &mut dyn FnMut(Event)) {
     one_leg("culvert walker's left front leg with free joints", &culvert, tell);
 }
 
-fn one_leg<H: Hip, N: Bits>(
+fn one_leg<H: Hip, N: Bits, D: Drive<N, Sent = Counts>>(
     leg: &'static str,
-    limb: &Limb<H, N, [Channel<N>; 3]>,
+    limb: &Limb<H, N, D>,
     tell: &mut dyn FnMut(Event),
 ) {
     tell(Event::Run { leg, numbers: N::NAME });
@@ -88,8 +90,8 @@ fn one_leg<H: Hip, N: Bits>(
 }
 
 /// From a foot target to three pulse lengths in ticks: what a firmware does every frame.
-fn solve<H: Hip, N: Bits>(
-    limb: &Limb<H, N, [Channel<N>; 3]>,
+fn solve<H: Hip, N: Bits, D: Drive<N, Sent = Counts>>(
+    limb: &Limb<H, N, D>,
     target: Target,
     pose: &mut Joints<N>,
 ) -> Answer {
@@ -133,10 +135,10 @@ mod tests {
     }
 
     #[test]
-    fn two_legs_with_and_without_joint_ranges_in_three_number_systems() {
+    fn five_legs_in_three_number_systems() {
         let titles: std::collections::BTreeSet<_> =
             runs().iter().map(|&(leg, numbers, _)| (leg, numbers)).collect();
-        assert_eq!(titles.len(), 2 * 2 * 3);
+        assert_eq!(titles.len(), 5 * 3);
     }
 
     #[test]

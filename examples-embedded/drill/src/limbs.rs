@@ -5,8 +5,8 @@
 
 use ik_core::number::Number;
 use ik_core::{
-    Bend, Channel, Coarse, Dimensions, Fixed32, Float32, Foot, Leg, Limb, Limits, Mounting, RollHip,
-    ServoSpec, Side, Timer, Turns, YawHip,
+    Bend, Channel, Coarse, Curve, Dimensions, Fixed32, Float32, Foot, Leg, Limb, Limits, MeasuredServo,
+    Mounting, Parallelogram, RollHip, ServoSpec, Side, Timer, Turns, YawHip,
 };
 
 /// An impossible leg, range or servo does not compile: the message becomes a compile error.
@@ -28,6 +28,8 @@ pub(crate) trait InFlash: Number {
     const ORCHARD: Limb<RollHip, Self, [Channel<Self>; 3]>;
     /// The same leg with free joints.
     const ORCHARD_FREE: Leg<RollHip, Self>;
+    /// The same leg with bent servos, the knee's on the body.
+    const ORCHARD_BENT: Limb<RollHip, Self, Parallelogram<Channel<Self, 3>>>;
     /// Left front leg of the culvert walker.
     const CULVERT: Limb<YawHip, Self, [Channel<Self>; 3]>;
     /// The same leg with free joints.
@@ -52,6 +54,25 @@ const ORCHARD_SERVOS: [ServoSpec; 3] = [
     servo(72.5, Turns::Against, -7.0, [800.0, 2200.0]),
 ];
 
+/// A servo as it might be measured: up to five points, so that three bends are room enough.
+const fn bent(points: &[[f64; 2]], trim_us: f64) -> Curve {
+    possible!(MeasuredServo { points, trim_us, pulse_us: [650.0, 2350.0] }.curve())
+}
+
+/// Hip, thigh and shank, invented; the shank turns against its pulse.
+const BENT_SERVOS: [Curve; 3] = [
+    bent(&[[1000.0, -44.0], [1500.0, 0.5], [2000.0, 46.0]], -3.0),
+    bent(&[[700.0, -42.5], [1200.0, 2.0], [1800.0, 57.0], [2200.0, 94.5]], 12.0),
+    bent(&[[700.0, 117.0], [1000.0, 87.0], [1500.0, 42.0], [2000.0, -4.5], [2300.0, -34.0]], -7.0),
+];
+
+/// What the links stand, less what the servos of thigh and shank leave the thigh.
+const BENT_LIMITS: Limits = possible!(ORCHARD_LIMITS.through_parallelogram(
+    Bend::Forward,
+    BENT_SERVOS[1].joint_deg(),
+    BENT_SERVOS[2].joint_deg(),
+));
+
 const CULVERT_SERVOS: [ServoSpec; 3] = [
     servo(0.0, Turns::With, 0.0, [600.0, 2400.0]),
     servo(25.0, Turns::Against, 5.0, [600.0, 2400.0]),
@@ -73,6 +94,15 @@ macro_rules! in_flash {
             };
             const ORCHARD_FREE: Leg<RollHip, Self> =
                 possible!(Leg::<RollHip, Self>::new(ORCHARD_DIMENSIONS, Limits::FREE));
+            const ORCHARD_BENT: Limb<RollHip, Self, Parallelogram<Channel<Self, 3>>> = Limb {
+                leg: possible!(Leg::<RollHip, Self>::new(ORCHARD_DIMENSIONS, BENT_LIMITS)),
+                mounting: Self::ORCHARD.mounting,
+                servos: Parallelogram([
+                    possible!(Channel::<Self, 3>::of(&BENT_SERVOS[0], TIMER.counting())),
+                    possible!(Channel::<Self, 3>::of(&BENT_SERVOS[1], TIMER.counting())),
+                    possible!(Channel::<Self, 3>::of(&BENT_SERVOS[2], TIMER.counting())),
+                ]),
+            };
             const CULVERT: Limb<YawHip, Self, [Channel<Self>; 3]> = Limb {
                 leg: possible!(Leg::<YawHip, Self>::new(CULVERT_DIMENSIONS, CULVERT_LIMITS)),
                 mounting: Mounting::new(Foot::new($mm(95), $mm(58), $mm(0)), Side::Left),

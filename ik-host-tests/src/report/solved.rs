@@ -30,6 +30,12 @@ pub fn solved_text(solved: &Solved, source: &str) -> String {
         }
     }
     let _ = writeln!(out, "{}", table(solved));
+    if solved.parallelogram {
+        let _ = writeln!(
+            out,
+            "the knee is driven through a parallelogram: the pulse of its servo is the shank's"
+        );
+    }
     for answer in &solved.answers {
         let used = if answer.firmware { " (the firmware's)" } else { "" };
         let _ = writeln!(out, "{}{used}: {}", answer.number, answer.outcome);
