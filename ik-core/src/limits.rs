@@ -155,6 +155,21 @@ impl Limits {
 pub struct Range<N: Number> {
     pub(crate) least: Angle<N>,
     pub(crate) most: Angle<N>,
+    /// For [`Number::is_well_within`]: its middle, and how near to that an angle is sure to lie within, as twice the bits
+    /// of an `f32` in radians.
+    pub(crate) middle: N::Angle,
+    pub(crate) near: u32,
+}
+
+/// How far inside a range an angle must lie to be sure to be within whatever rounding does, turns.
+const SURE: f64 = 2e-7;
+
+/// The middle of a range, in turns, and how near to it an angle is sure to lie within: twice the bits of an `f32` in
+/// radians, 0 for never.
+pub(crate) const fn well_within([least, most]: [f64; 2]) -> (f64, u32) {
+    let near = (most - least) / 2.0 - SURE;
+    let bits = if near > 0.0 { ((near * core::f64::consts::TAU) as f32).to_bits() << 1 } else { 0 };
+    ((least + most) / 2.0, bits)
 }
 
 impl<N: Number> Range<N> {
@@ -168,7 +183,7 @@ impl<N: Number> Range<N> {
         self.most
     }
 
-    /// Whether an angle lies within; NaN does not.
+    /// Whether an angle lies within, by two comparisons; NaN does not.
     #[inline(always)]
     pub(crate) fn contains(&self, angle: N::Angle) -> bool {
         self.least.0 <= angle && angle <= self.most.0
@@ -215,13 +230,15 @@ impl<N: Number> Ranges<N> {
         self.knee
     }
 
-    /// Whether each joint lies within its range; NaN does not.
+    /// Whether each joint is sure to lie within its range; NaN is not.
     #[inline(always)]
     pub(crate) fn contain(&self, hip: N::Angle, thigh: N::Angle, knee: N::Angle) -> bool {
         if self.free {
             N::are_sound(hip, thigh)
         } else {
-            self.hip.contains(hip) && self.thigh.contains(thigh) && self.knee.contains(knee)
+            N::is_well_within(hip, &self.hip)
+                && N::is_well_within(thigh, &self.thigh)
+                && N::is_well_within(knee, &self.knee)
         }
     }
 
@@ -257,5 +274,44 @@ impl Held {
     /// Hip, thigh, knee.
     pub const fn as_array(&self) -> [Option<End>; 3] {
         [self.hip, self.thigh, self.knee]
+    }
+}
+
+#[cfg(all(test, feature = "float32"))]
+mod tests {
+    use super::*;
+    use crate::Float32;
+    use crate::leg::constants::range;
+
+    /// Floats a little to both sides of one.
+    fn around(angle: f32) -> impl Iterator<Item = f32> {
+        (-40i32..=40).map(move |step| f32::from_bits(angle.to_bits().wrapping_add_signed(step)))
+    }
+
+    #[test]
+    fn what_is_well_within_is_within() {
+        let mut looked_at = 0;
+        for least in (-1800..=1800).step_by(37) {
+            for width in [0, 1, 2, 15, 450, 1200, 1799, 3600] {
+                let (least, most) = (f64::from(least) / 10.0, f64::from(least + width) / 10.0);
+                let range = range!(Float32, [least, most.min(180.0)]);
+                let well = |angle| Float32::is_well_within(angle, &range);
+                for angle in around(range.least.0).chain(around(range.most.0)).chain(around(range.middle)) {
+                    assert!(!well(angle) || range.contains(angle), "{angle} in {least} to {most}");
+                }
+                // 2e-7 turns and what rounding adds.
+                let inside = 2.0e-6f32;
+                for angle in [range.least.0 + inside, range.most.0 - inside] {
+                    if range.most.0 - range.least.0 > 2.0 * inside {
+                        assert!(well(angle), "{angle} in {least} to {most}");
+                        looked_at += 1;
+                    }
+                }
+                for angle in [f32::NAN, -f32::NAN, f32::INFINITY, f32::NEG_INFINITY, f32::MAX] {
+                    assert!(!well(angle), "{angle} in {least} to {most}");
+                }
+            }
+        }
+        assert!(looked_at > 1000);
     }
 }

@@ -28,6 +28,7 @@ pub use float::Float32;
 #[cfg(any(feature = "fixed16", feature = "fixed32"))]
 pub use line::FixedLine;
 
+use crate::limits::Range;
 use core::fmt::Debug;
 use core::ops::{Add, Neg, Sub};
 
@@ -228,6 +229,13 @@ pub trait Number: Copy + Debug + PartialEq + 'static {
     #[inline(always)]
     fn are_sound(_: Self::Angle, _: Self::Angle) -> bool {
         true
+    }
+
+    /// Whether an angle lies within a range. A quick look, which may say no where an angle lies within 2e-7 turns of an end;
+    /// NaN does not lie within.
+    #[inline(always)]
+    fn is_well_within(angle: Self::Angle, range: &Range<Self>) -> bool {
+        range.contains(angle)
     }
 
     // --- forward ---------------------------------------------------------------------------------------

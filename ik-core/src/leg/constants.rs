@@ -123,8 +123,14 @@ pub(crate) use constants;
 macro_rules! range {
     ($number:ty, $degrees:expr) => {{
         let [least, most] = $degrees;
+        let (middle, near) = $crate::limits::well_within([least / 360.0, most / 360.0]);
         let [least, most] = <$number>::range_from_turns([least / 360.0, most / 360.0]);
-        $crate::limits::Range { least: $crate::angle::Angle(least), most: $crate::angle::Angle(most) }
+        $crate::limits::Range {
+            least: $crate::angle::Angle(least),
+            most: $crate::angle::Angle(most),
+            middle: <$number>::angle_from_turns(middle),
+            near,
+        }
     }};
 }
 pub(crate) use range;

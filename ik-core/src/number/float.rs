@@ -15,6 +15,7 @@ mod polynomial_maths;
 
 use super::{Knee, Number, Placed};
 use crate::const_math::{nearest, power_of_two};
+use crate::limits::Range;
 use core::f32::consts::{PI, TAU};
 use core::marker::PhantomData;
 use core::ops::{Add, Sub};
@@ -382,6 +383,13 @@ impl<M: FloatMaths> Number for Float<M> {
     #[inline(always)]
     fn are_sound(a: f32, b: f32) -> bool {
         !(a + b).is_nan()
+    }
+
+    /// One comparison of integers: comparing floats twice takes the FPU's flags across twice.
+    #[inline(always)]
+    fn is_well_within(angle: f32, range: &Range<Self>) -> bool {
+        // Shifted left, the bits are those of the size; NaN has more than any number.
+        (angle - range.middle).to_bits() << 1 < range.near
     }
 
     fn sin_cos(angle: f32) -> (f32, f32) {
