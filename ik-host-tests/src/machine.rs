@@ -262,23 +262,9 @@ pub fn judged_leg(kind: &LegKind) -> judged::Leg {
     }
 }
 
-/// The joint ranges of a kind's legs as the reference sees them. With a knee driven through a parallelogram, the thigh's
-/// is what its servo can take in every leg of the kind, and what leaves the shank's servo an angle of the knee's range.
+/// The joint ranges of a kind's legs as the reference sees them.
 pub fn judged_ranges(robot: &Robot, kind: usize) -> Ranges {
-    let sheet = &robot.kinds[kind];
-    let [hip, mut thigh, knee] = sheet.range_deg;
-    if sheet.knee_drive == KneeDrive::Parallelogram {
-        for trims in trims(robot, kind) {
-            let servo = |joint: usize| servo::range_deg(&sheet.servos[joint], trims[joint]);
-            let ([thigh_least, thigh_most], [shank_least, shank_most]) = (servo(1), servo(2));
-            let (shank_least, shank_most) = (shank_least.max(-180.0), shank_most.min(180.0));
-            let left = match sheet.bend {
-                Bend::Backward | Bend::Down => [shank_least - knee[1], shank_most - knee[0]],
-                Bend::Forward | Bend::Up => [knee[0] - shank_most, knee[1] - shank_least],
-            };
-            thigh = [thigh[0].max(thigh_least).max(left[0]), thigh[1].min(thigh_most).min(left[1])];
-        }
-    }
+    let [hip, thigh, knee] = robot.kinds[kind].kept_range_deg(trims(robot, kind));
     let range = |[least, most]: [f64; 2]| Range { min: least.to_radians(), max: most.to_radians() };
     Ranges { hip: range(hip), thigh: range(thigh), knee: range(knee) }
 }

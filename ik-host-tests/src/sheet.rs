@@ -35,6 +35,7 @@
 mod allowed;
 mod complaint;
 mod demos;
+mod drive;
 mod firmware;
 mod leg;
 mod leg_kind;

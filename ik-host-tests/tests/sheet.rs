@@ -161,6 +161,19 @@ fn a_measured_servo_and_a_parallelogram_are_read_as_they_are_written() {
 }
 
 #[test]
+fn a_parallelogram_must_leave_the_thigh_something() {
+    let text = altered(CULVERT, "knee_bends = \"up\"", "knee_bends = \"up\"\nknee_drive = \"parallelogram\"");
+    good(&text);
+    // A shank of at most -89 degrees and a knee of at least 15 would need the femur above 104.
+    let text = altered(&text, "knee = [15, 155]", "knee = [15, 20]");
+    let text = altered(&text, "joint_at_centre_deg = 85", "joint_at_centre_deg = -170");
+    let complaints = wrong(&text);
+    let shown = complaints.to_string();
+    assert!(shown.contains("leg_kind.walker: with a parallelogram, no angle of the femur suits"), "{shown}");
+    assert!(shown.contains("`servo.femur`"), "{shown}");
+}
+
+#[test]
 fn a_trim_must_leave_a_measured_servo_pulses_to_send() {
     let text = altered(CULVERT, HIP_CURVE, "measured = [[2000, 0], [2300, 30]]");
     let text = altered(&text, "hip = -7", "hip = 450");
@@ -472,7 +485,7 @@ const FAULTS: &[Fault] = faults![
     CULVERT: "joint_at_centre_deg = 0" => "joint_at_centre_deg = 270", at "= 270",
         "leg_kind.walker.servo.hip.joint_at_centre_deg": "from -180 to 180 degrees", "half a turn";
     CULVERT: "us_per_degree = 11.1" => "us_per_degree = 0", at "us_per_degree = 0",
-        "leg_kind.walker.servo.hip.us_per_degree": "above 0 and at most 100", "`turns` gives the sense";
+        "leg_kind.walker.servo.hip.us_per_degree": "from 0.1 to 90 us per degree", "`turns` gives the sense";
     CULVERT: "knee_bends = \"up\"" => "knee_bends = \"up\"\nknee_drive = \"paralelogram\"", at "paralelogram",
         "leg_kind.walker.knee_drive": "must be \"direct\" or \"parallelogram\"", "did you mean \"parallelogram\"?";
     // Measured servos.

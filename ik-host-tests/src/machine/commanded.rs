@@ -1,6 +1,6 @@
 //! Where counts really put the joints, in plain f64.
 
-use super::{Counter, Refused, servo, trims};
+use super::{Counter, Refused, trims};
 use crate::reference::Pose;
 use crate::sheet::{Bend, KneeDrive, LegKind, Robot};
 use ik_core::output::Output as _;
@@ -34,7 +34,7 @@ impl Commanded {
         let trims = &self.trims_us[leg % self.trims_us.len()];
         let [hip, thigh, last] = [0, 1, 2].map(|joint| {
             let pulse_us = f64::from(counts[joint]) * self.count_us;
-            servo::degrees_at(&self.kind.servos[joint], trims[joint], pulse_us).to_radians()
+            self.kind.servos[joint].degrees_at(trims[joint], pulse_us).to_radians()
         });
         let knee = match (self.kind.knee_drive, self.kind.bend) {
             (KneeDrive::Direct, _) => last,

@@ -1,4 +1,4 @@
-//! A servo of a sheet: as ik-core's curve, and in plain f64 from the sheet alone.
+//! A servo of a sheet as ik-core's curve.
 
 use crate::sheet::{Servo, ServoCurve, Turns};
 use ik_core::{Curve, MeasuredServo, ServoError, ServoSpec};
@@ -22,30 +22,6 @@ pub(super) fn curve(servo: &Servo, trim_us: f64) -> Result<Curve, ServoError> {
             MeasuredServo { points: measured, trim_us, pulse_us: servo.pulse_us }.curve()
         }
     }
-}
-
-/// The angle of an ideal servo at a pulse, degrees: straight beyond its ends.
-pub(super) fn degrees_at(servo: &Servo, trim_us: f64, pulse_us: f64) -> f64 {
-    let us = pulse_us - trim_us;
-    match &servo.curve {
-        ServoCurve::Straight { centre_us, joint_at_centre_deg, us_per_degree, turns } => {
-            let swing = (us - centre_us) / us_per_degree;
-            joint_at_centre_deg + if *turns == Turns::With { swing } else { -swing }
-        }
-        ServoCurve::Measured { measured } => {
-            // The last stretch whose start lies at or below the pulse, or the first one.
-            let stretches = measured.windows(2);
-            let at = stretches.clone().rposition(|pair| pair[0][0] <= us).unwrap_or(0);
-            let [[from_us, from_deg], [to_us, to_deg]] = [measured[at], measured[at + 1]];
-            from_deg + (us - from_us) * (to_deg - from_deg) / (to_us - from_us)
-        }
-    }
-}
-
-/// The angles that a servo can take, [least, most] in degrees.
-pub(super) fn range_deg(servo: &Servo, trim_us: f64) -> [f64; 2] {
-    let [a, b] = servo.sent_us(trim_us).map(|us| degrees_at(servo, trim_us, us));
-    [a.min(b), a.max(b)]
 }
 
 #[cfg(test)]
@@ -72,7 +48,7 @@ mod tests {
             for trim_us in [-90.0, 0.0, 12.5, 200.0] {
                 let curve = curve(&servo, trim_us).expect("a curve");
                 assert_eq!(curve.pulse_us(), servo.sent_us(trim_us));
-                let (core, plain) = (curve.joint_deg(), range_deg(&servo, trim_us));
+                let (core, plain) = (curve.joint_deg(), servo.range_deg(trim_us));
                 for (core, plain) in core.into_iter().zip(plain) {
                     assert!((core - plain).abs() < 1e-9, "{core} {plain}");
                 }

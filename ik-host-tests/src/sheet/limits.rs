@@ -86,9 +86,9 @@ pub(super) const PULSE_US: Bounds = Bounds::from(
     " us",
     "servo pulses are in microseconds, 500 to 2500 or less for nearly all",
 );
-pub(super) const US_PER_DEGREE: Bounds = Bounds::above(
-    0.0,
-    100.0,
+pub(super) const US_PER_DEGREE: Bounds = Bounds::from(
+    0.1,
+    90.0,
     " us per degree",
     "it is about 11.1 for a servo that takes 2000 us for 180 degrees; `turns` gives the sense",
 );

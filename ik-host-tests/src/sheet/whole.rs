@@ -6,7 +6,7 @@ use super::complaint::Complaint;
 use super::robot::Robot;
 use super::table::{Ledger, Table};
 use super::vocabulary::SHEET;
-use super::{allowed, firmware, leg, leg_kind, output};
+use super::{allowed, drive, firmware, leg, leg_kind, output};
 
 /// Reads and checks a sheet.
 pub(super) fn robot(text: &str) -> Result<Robot, Vec<Complaint>> {
@@ -31,6 +31,9 @@ fn checked<'s>(ledger: &'s Ledger<'s>, tree: &'s DeTable<'s>) -> Option<Robot> {
     let firmware = firmware::read(&sheet, output.as_ref());
     let kinds = leg_kind::read_all(&sheet, output.as_ref());
     let legs = leg::read_all(&sheet, &kinds);
+    if let Some(legs) = &legs {
+        drive::check(&kinds, legs);
+    }
     let allowed = allowed::read(&sheet);
     Some(Robot {
         name: name?.to_owned(),
