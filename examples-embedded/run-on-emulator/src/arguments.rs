@@ -31,6 +31,10 @@ pub struct Arguments {
     #[arg(long)]
     pub log: bool,
 
+    /// Write the golden files of the model images anew, from what they log
+    #[arg(long)]
+    pub rewrite_golden: bool,
+
     /// Check that faulty images and wrong answers are noticed (needs about a minute)
     #[arg(long, conflicts_with_all = ["go_wrong", "spoil", "log"])]
     pub self_test: bool,

@@ -55,12 +55,22 @@ impl Ending {
     }
 }
 
-pub fn run(chip: Chip, elf: &Path, time_limit: Duration) -> Result<Run, Trouble> {
+/// Which clock an emulated chip has.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Clock {
+    /// This PC's: as fast as it goes.
+    OfThisPc,
+    /// Its own: time goes by executed instructions, so that interrupts come at the same place in every run.
+    ByInstructions,
+}
+
+pub fn run(chip: Chip, elf: &Path, clock: Clock, time_limit: Duration) -> Result<Run, Trouble> {
     let (program, more) = chip.emulator();
     let failed = |source| Trouble::Io { what: format!("running {program}"), source };
     let mut emulator = Command::new(program)
         .args(["-machine", chip.machine()])
         .args(more)
+        .args(if clock == Clock::ByInstructions { &["-icount", "shift=4"][..] } else { &[] })
         // Nothing but the semihosting channel may write to standard output.
         .args(["-display", "none", "-serial", "none", "-monitor", "none"])
         .args(["-semihosting-config", "enable=on,target=native"])

@@ -11,14 +11,15 @@ use crate::{
     trouble::Trouble,
 };
 
-const IMAGE: &str = "leg-by-timer";
+/// The image that goes through the drill.
+pub const DRILL: &str = "leg-by-timer";
 
-pub fn build(way: Way, chip: Chip, go_wrong: Option<GoWrong>) -> Result<PathBuf, Trouble> {
+pub fn build(way: Way, chip: Chip, package: &str, go_wrong: Option<GoWrong>) -> Result<PathBuf, Trouble> {
     let failed = |source| Trouble::Io { what: "starting cargo".into(), source };
     let mut cargo = tools::cargo(way, chip);
     cargo
         .current_dir(tools::workspace())
-        .args(["build", "--quiet", "--locked", "--profile", "chip", "--package", IMAGE])
+        .args(["build", "--quiet", "--locked", "--profile", "chip", "--package", package])
         .args(["--target", chip.target()])
         // Messages for people go to standard error, where cargo was built: also on a pipe.
         .arg("--message-format=json-render-diagnostics")
@@ -34,7 +35,7 @@ pub fn build(way: Way, chip: Chip, go_wrong: Option<GoWrong>) -> Result<PathBuf,
     let mut image = None;
     for message in Message::parse_stream(BufReader::new(messages)) {
         if let Message::CompilerArtifact(artifact) = message.map_err(failed)?
-            && artifact.target.name == IMAGE
+            && artifact.target.name == package
         {
             image = artifact.executable.or(image);
         }
@@ -42,5 +43,5 @@ pub fn build(way: Way, chip: Chip, go_wrong: Option<GoWrong>) -> Result<PathBuf,
     if !running.wait().map_err(failed)?.success() {
         return Err(Trouble::ImageDidNotBuild);
     }
-    image.map(Into::into).ok_or(Trouble::NoImage(IMAGE))
+    image.map(Into::into).ok_or(Trouble::NoImage(package.into()))
 }

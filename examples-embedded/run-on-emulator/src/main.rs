@@ -1,5 +1,6 @@
 //! Builds the image `leg-by-timer` for each chip class, runs it on an emulated chip and compares
-//! every line that it logs with what the same code computes on the PC, bit for bit.
+//! every line that it logs with what the same code computes on the PC, bit for bit; then runs the models, whose logs must
+//! be those of their golden files.
 //!
 //! Exit codes: 0 all the same; 1 something differs, or an image did not build or end in good order;
 //! 2 wrong call; 3 a tool is missing and could not be installed.
@@ -11,6 +12,7 @@ mod emulator;
 mod expected;
 mod image;
 mod log;
+mod models;
 mod self_test;
 mod summary;
 mod tools;
@@ -46,7 +48,12 @@ fn drill_every_chip(arguments: &Arguments) -> Result<(), Trouble> {
     let rows: Vec<Row> = chips.iter().map(|&chip| drill_one_chip(arguments, chip, &expected)).collect();
     println!("{}", summary::table(&expected, &rows));
     match rows.iter().filter(|row| !row.same).count() {
-        0 => Ok(()),
+        // What goes wrong on purpose is the drill.
+        0 if arguments.go_wrong.is_some() || arguments.spoil.is_some() => Ok(()),
+        0 => match models::run(arguments)? {
+            failed if failed.is_empty() => Ok(()),
+            models => Err(Trouble::ModelsFailed { models }),
+        },
         failed => Err(Trouble::ChipsFailed { failed, of: chips.len() }),
     }
 }
@@ -67,9 +74,9 @@ fn run_and_compare(
     log: &mut Vec<String>,
 ) -> Result<(), Trouble> {
     eprintln!("{}: building the image", chip.class());
-    let elf = image::build(arguments.way, chip, arguments.go_wrong)?;
+    let elf = image::build(arguments.way, chip, image::DRILL, arguments.go_wrong)?;
     eprintln!("{}: running it on {}", chip.class(), chip.machine());
-    let run = emulator::run(chip, &elf, arguments.time_limit())?;
+    let run = emulator::run(chip, &elf, emulator::Clock::OfThisPc, arguments.time_limit())?;
     *log = log::decode(&elf, &run.output)?;
     if arguments.log {
         for line in &*log {

@@ -16,7 +16,7 @@ pub enum Trouble {
     ImageDidNotBuild,
 
     #[error("cargo built, but named no image `{0}`")]
-    NoImage(&'static str),
+    NoImage(String),
 
     #[error("{path}: {problem}", path = path.display())]
     BadImage { path: PathBuf, problem: String },
@@ -32,6 +32,9 @@ pub enum Trouble {
 
     #[error(transparent)]
     Difference(#[from] Difference),
+
+    #[error("failed: {}; if its log is meant to be another, `cargo on-target --rewrite-golden`", models.join(", "))]
+    ModelsFailed { models: Vec<&'static str> },
 
     #[error("{failed} of {of} chip classes failed")]
     ChipsFailed { failed: usize, of: usize },
