@@ -9,3 +9,5 @@ mod window;
 pub use digest::Digest;
 #[cfg(target_os = "none")]
 pub use window::call;
+#[cfg(all(target_os = "none", target_arch = "riscv32"))]
+pub use window::retired;

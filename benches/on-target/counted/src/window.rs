@@ -26,6 +26,15 @@ pub unsafe fn call<L, F, A>(entry: Entry<L, F, A>, leg: &L, foot: &F) -> A {
     unsafe { answer.assume_init() }
 }
 
+/// The chip's own count of instructions executed so far, the low word.
+#[cfg(target_arch = "riscv32")]
+pub fn retired() -> u32 {
+    let count;
+    // SAFETY: reading the counter changes nothing.
+    unsafe { core::arch::asm!("csrr {}, minstret", out(reg) count, options(nomem, nostack)) }
+    count
+}
+
 /// Calls `entry` with the first three arguments.
 ///
 /// The markers are Thumb hints 8 and 9, which do nothing on any Cortex-M. The word stored just before the first

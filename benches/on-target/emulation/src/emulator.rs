@@ -36,6 +36,8 @@ pub struct Setting<'a> {
     pub plugin: Option<&'a Path>,
     /// A file that is to lie in memory, at [`Chip::data_at`].
     pub data: Option<&'a Path>,
+    /// Whether the chip's own clock and counters go by executed instructions, one each.
+    pub by_instructions: bool,
     /// When a run that has not ended is stopped, and has failed.
     pub time_limit: Duration,
 }
@@ -54,7 +56,7 @@ pub struct Run {
 /// # Errors
 /// If it does not end in good order within its time, or if its log or its counts cannot be read.
 pub fn run(name: &str, elf: &Path, setting: Setting<'_>) -> Result<Run, Trouble> {
-    let Setting { chip, plugin, data, time_limit } = setting;
+    let Setting { chip, plugin, data, by_instructions, time_limit } = setting;
     let failed = || Trouble::io(format!("running {}", chip.emulator()));
     let counts = elf.with_extension("windows.jsonl");
     // What an earlier run left must not pass for this one's.
@@ -66,6 +68,9 @@ pub fn run(name: &str, elf: &Path, setting: Setting<'_>) -> Result<Run, Trouble>
     if let Some(plugin) = plugin {
         let (plugin, out) = (doubled_commas(plugin), doubled_commas(&counts));
         command.arg("-plugin").arg(format!("{plugin},core={},out={out}", chip.cycle_table()));
+    }
+    if by_instructions {
+        command.args(["-icount", "shift=0"]);
     }
     if let Some(data) = data {
         let (data, at) = (doubled_commas(data), chip.data_at());

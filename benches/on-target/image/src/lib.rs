@@ -31,8 +31,12 @@ pub fn run<C: Contender>(leg: &C::Leg) -> ! {
     let mut windows = 0u32;
     for &target in C::Hip::PUBLISHED.targets {
         let foot = core::hint::black_box(C::foot(target));
+        #[cfg(all(feature = "own-counter", target_arch = "riscv32"))]
+        let before = counted::retired();
         // SAFETY: `entry` writes the answer.
         let answer = unsafe { counted::call(entry::<C>, leg, &foot) };
+        #[cfg(all(feature = "own-counter", target_arch = "riscv32"))]
+        defmt::println!("counter {=u32}", counted::retired().wrapping_sub(before));
         digest = digest.with(C::bits(&answer));
         windows += 1;
     }

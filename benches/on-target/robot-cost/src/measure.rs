@@ -62,7 +62,13 @@ fn none(chip: Chip, cases: &[Case], trouble: &Trouble) -> Vec<Row> {
 
 fn on_chip(arguments: &Arguments, job: &Job, chip: Chip, plugin: &Path, cases: &[Case]) -> Vec<Row> {
     eprintln!("{}: building images", chip.class());
-    let setting = Setting { chip, plugin: Some(plugin), data: None, time_limit: arguments.time_limit() };
+    let setting = Setting {
+        chip,
+        plugin: Some(plugin),
+        data: None,
+        by_instructions: false,
+        time_limit: arguments.time_limit(),
+    };
     let built = emulation::set_up(arguments.way, &[chip]).and_then(|()| {
         Ok((images(arguments, job, chip, cases)?, Sizes::of(arguments, setting, &job.numbers)?))
     });

@@ -8,6 +8,7 @@ mod count;
 mod expected;
 mod goals;
 mod guard;
+mod own_counter;
 mod report;
 mod table;
 mod trouble;
@@ -104,7 +105,7 @@ fn count_on(
     let names: Vec<&str> = wanted.iter().map(|expected| expected.name).collect();
     let images = emulation::images(arguments.way, chip, "image", &names)?;
     let time_limit = arguments.time_limit();
-    let setting = Setting { chip, plugin: Some(plugin), data: None, time_limit };
+    let setting = Setting { chip, plugin: Some(plugin), data: None, by_instructions: false, time_limit };
     let (mut costs, mut call) = (Vec::new(), None);
     for expected in wanted {
         let image = images.get(expected.name).ok_or_else(|| not_named(expected.name))?;
@@ -114,6 +115,18 @@ fn count_on(
             let again = emulation::count_again(chip, expected.name, image, arguments.time_limit())?;
             count::compare(expected, &run.windows, &again)?;
             eprintln!("{}: {}: counted twice, {} windows alike", chip.class(), expected.name, again.len());
+            if chip == Chip::Rv32imc {
+                let name = expected.name;
+                let images =
+                    emulation::images_with(arguments.way, chip, "image", &[name], &["own-counter"], None)?;
+                let image = images.get(name).ok_or_else(|| not_named(name))?;
+                let own = emulation::run(name, image, Setting { by_instructions: true, ..setting })?;
+                let more = own_counter::compare(expected, &own)?;
+                eprintln!(
+                    "{}: {name}: by the chip's own counter as well, always {more} more around the window",
+                    chip.class()
+                );
+            }
         }
         let flash = emulation::flash_bytes(image)?;
         match (expected.to, call) {

@@ -27,6 +27,9 @@ pub enum Trouble {
     )]
     UnknownInstruction { name: String, address: u64 },
 
+    #[error("{name}: plugin and the chip's own counter do not agree: {problem}")]
+    OwnCounterDiffers { name: String, problem: String },
+
     #[error("{path}: {problem}; `cargo leg-cost --rewrite-guard` writes it anew", path = path.display())]
     Guard { path: std::path::PathBuf, problem: String },
 
