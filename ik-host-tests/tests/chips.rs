@@ -27,7 +27,7 @@ fn figures(demo: &str) -> Value {
     };
     let measured = json!({
         "state": "measured", "counted": 1000, "compared": 10000, "instructions": [201.0, 203.5, 1234.0],
-        "cycles": [301.0, 302.0], "most_cycles": [1500.0, 1600.0], "flash": 4321, "stack": 160,
+        "cycles": [301.0, 302.0], "most_cycles": [1500.0, 1600.0], "flash": 4321, "stack": 160, "stack_bound": 208,
         "times": {"leg_us": [4.1, 4.2], "most_leg_us": [20.0, 21.0], "frame_percent": [0.4, 0.5]}
     });
     let missing = json!({"state": "not-measured", "why": "the emulator is <missing>"});
@@ -61,6 +61,7 @@ fn figures_beside_the_report_become_a_section_of_it() {
         "What a leg costs on a chip",
         "<td>1234</td>",
         "<td>4321</td>",
+        "<td>208</td>",
         "<td>301-302</td>",
         "RV32IMC, fixed32: the emulator is &lt;missing&gt;",
         "Not measured: AVR: no core",

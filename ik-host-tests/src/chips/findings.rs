@@ -111,6 +111,8 @@ pub struct Measured {
     pub flash: Option<i64>,
     /// Deepest over the counted targets, bytes.
     pub stack: u64,
+    /// The deepest that it can come to, whatever it is given, from the linked code; none if no bound could be worked out.
+    pub stack_bound: Option<u64>,
 }
 
 /// Cycles at a clock; estimated as they are.
@@ -176,6 +178,7 @@ mod tests {
             most_cycles: [960.0, 1920.0],
             flash: None,
             stack: 0,
+            stack_bound: None,
         };
         // 20 ms frames: 6 legs of 20 us to 40 us.
         let times = Times::of(&measured, 48e6, 6, 50.0);

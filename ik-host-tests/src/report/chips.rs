@@ -76,20 +76,21 @@ fn table(chips: &Chips, kind: &KindOnChips) -> Table {
         "\nmost".to_owned(),
         format!("{} legs at most\n% of {} ms", kind.legs, significant(1e3 / chips.frame_hz)),
         "flash\nbytes".to_owned(),
-        "stack\nbytes".to_owned(),
+        "stack, bytes\ndeepest".to_owned(),
+        "\nbound".to_owned(),
         "bits".to_owned(),
     ]);
     for row in &kind.rows {
         table.add_row(cells(row));
     }
-    for column in table.column_iter_mut().skip(2).take(10) {
+    for column in table.column_iter_mut().skip(2).take(11) {
         column.set_cell_alignment(CellAlignment::Right);
     }
     table
 }
 
 /// The cells of a row; the figures are dashes where there are none.
-pub(super) fn cells(row: &Row) -> [String; 13] {
+pub(super) fn cells(row: &Row) -> [String; 14] {
     let clock = significant(row.clock_hz / 1e6);
     let number = if row.firmware { row.number.clone() } else { format!("({})", row.number) };
     let word = match &row.found {
@@ -99,11 +100,11 @@ pub(super) fn cells(row: &Row) -> [String; 13] {
         Found::NotMeasured { .. } => "not measured",
     };
     let mut cells = std::array::from_fn(|_| "-".to_owned());
-    (cells[0], cells[1], cells[6], cells[12]) = (row.class.clone(), number, clock, word.to_owned());
+    (cells[0], cells[1], cells[6], cells[13]) = (row.class.clone(), number, clock, word.to_owned());
     cells
 }
 
-fn measured_cells(row: &Row, measured: &Measured, number: String, clock: String) -> [String; 13] {
+fn measured_cells(row: &Row, measured: &Measured, number: String, clock: String) -> [String; 14] {
     let [least, mean, most] = measured.instructions;
     let range = |[from, to]: [f64; 2], show: fn(f64) -> String| {
         let (from, to) = (show(from), show(to));
@@ -125,6 +126,7 @@ fn measured_cells(row: &Row, measured: &Measured, number: String, clock: String)
         times(|times| times.frame_percent),
         measured.flash.map_or("-".into(), |flash| flash.to_string()),
         measured.stack.to_string(),
+        measured.stack_bound.map_or("-".into(), |bound| bound.to_string()),
         "the PC's".to_owned(),
     ]
 }
@@ -133,7 +135,8 @@ fn measured_cells(row: &Row, measured: &Measured, number: String, clock: String)
 pub(super) fn what_it_is_worth() -> [&'static str; 4] {
     [
         "Counted exactly in the emulator QEMU, from a foot on the body's frame to three counts: instructions and stack \
-         (least and most over edges too, mean over the work volume). Number systems in brackets are not the firmware's.",
+         (least, most and deepest over edges too, mean over the work volume). The stack's bound is worked out from the linked \
+         code and holds for every input. Number systems in brackets are not the firmware's.",
         "Flash: code, constants and tables of a linked image with a timer, less one without a solver; the same compiler \
          settings (opt-level 3, fat LTO).",
         "Estimated: cycles, and so times, from published tables with zero wait states. NO SILICON WAS MEASURED; flash with \

@@ -9,6 +9,7 @@
 //! | `emulator` | runs an image with the plugin, within a time limit |
 //! | `second_count` | counts the same run again, without the plugin |
 //! | `flash` | what an image takes of the flash |
+//! | `stack_bound` | the deepest that a function can go on the stack |
 #![forbid(unsafe_code)]
 
 mod build;
@@ -16,6 +17,7 @@ mod chip;
 mod emulator;
 mod flash;
 mod second_count;
+mod stack_bound;
 mod tools;
 mod trouble;
 
@@ -24,5 +26,6 @@ pub use chip::Chip;
 pub use emulator::{Run, Setting, run};
 pub use flash::bytes as flash_bytes;
 pub use second_count::instructions as count_again;
+pub use stack_bound::stack_bound;
 pub use tools::{Way, name_of, set_up, workspace};
 pub use trouble::Trouble;

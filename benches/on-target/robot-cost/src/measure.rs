@@ -150,6 +150,17 @@ fn one(
     }
     let mut measured = measured(&run.windows, typical, call);
     (measured.compared, measured.flash) = (compared.targets(), flash);
+    match emulation::stack_bound(image) {
+        Ok(bound) if measured.stack > bound => {
+            let why = format!(
+                "the stack went {} bytes deep, beyond its bound of {bound}: the bound is wrong",
+                measured.stack
+            );
+            return Ok(Found::NotMeasured { why });
+        }
+        Ok(bound) => measured.stack_bound = Some(bound),
+        Err(why) => eprintln!("{}: {}: no bound for the stack: {why}", counting.chip.class(), counted.image),
+    }
     Ok(Found::Measured(measured))
 }
 
@@ -173,6 +184,7 @@ fn measured(windows: &[Window], typical: usize, call: Call) -> Measured {
         cycles: [mean(from, call.cycles[0]), mean(to, call.cycles[1])],
         most_cycles: [most(from, call.cycles[0]), most(to, call.cycles[1])],
         flash: None,
+        stack_bound: None,
         stack: all(|window| window.stack).max().unwrap_or(0),
     }
 }

@@ -53,6 +53,8 @@ pub struct Measured {
     pub flash: Option<i64>,
     /// Deepest over the counted targets, bytes.
     pub stack: u64,
+    /// The deepest that it can come to, whatever it is given; none if no bound could be worked out.
+    pub stack_bound: Option<u64>,
 }
 
 impl Row {

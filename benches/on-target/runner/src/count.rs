@@ -31,6 +31,8 @@ pub struct Cost {
     pub flash: i64,
     /// Deepest, bytes below the caller's.
     pub stack: u64,
+    /// The deepest that it can come to, whatever it is given, if there is a bound.
+    pub stack_bound: Option<u64>,
     /// How far the foot is from where it was asked to be, at most, mm.
     pub largest_foot_error_mm: f64,
     /// The same as a share of thigh and shank together.
@@ -118,6 +120,7 @@ pub fn cost(expected: &Expected, windows: &[Window], flash: u64, call: CallAlone
         },
         cycles: [0, 1].map(|end| mean(&|window| window.cycles[end]) - call.cycles[end] as f64),
         flash: flash as i64 - call.flash as i64,
+        stack_bound: None,
         stack: windows.iter().map(|window| window.stack).max().unwrap_or(0),
         largest_foot_error_mm: expected.largest_foot_error_mm,
         largest_foot_error: expected.largest_foot_error,

@@ -90,6 +90,8 @@ fn beyond(table: &Table, chip: &str, cost: &Cost) -> Vec<Excess> {
     let Some(limits) = table.get(chip).and_then(|contenders| contenders.get(cost.name)) else {
         return vec![Excess(format!("{chip}, {}: not in the table", cost.name))];
     };
+    let unbounded = cost.stack_bound.is_none();
+    let unbounded = unbounded.then(|| Excess(format!("{chip}, {}: no bound for the stack", cost.name)));
     let figures = Limits::of(cost).figures().into_iter().zip(limits.figures());
     figures
         .filter(|((_, found), (_, limit))| *found > limit * (1.0 + HEADROOM))
@@ -97,6 +99,7 @@ fn beyond(table: &Table, chip: &str, cost: &Cost) -> Vec<Excess> {
             let more = (found / limit - 1.0) * 100.0;
             Excess(format!("{chip}, {}: {what}: {found}, {more:.1} % more than {limit}", cost.name))
         })
+        .chain(unbounded)
         .collect()
 }
 
@@ -136,6 +139,7 @@ mod tests {
             cycles: [300.0, 400.0],
             flash: 4000,
             stack: 160,
+            stack_bound: Some(200),
             largest_foot_error_mm: 1e-4,
             largest_foot_error: 5e-7,
             largest_joint_error_rad: 1e-6,
@@ -170,6 +174,7 @@ mod tests {
     fn what_is_not_in_the_table_does_not_pass() {
         assert_eq!(beyond(&table(), "m0", &cost(1.0)).len(), 1);
         assert_eq!(beyond(&table(), "m3", &Cost { name: "new-roll", ..cost(1.0) }).len(), 1);
+        assert_eq!(beyond(&table(), "m3", &Cost { stack_bound: None, ..cost(1.0) }).len(), 1);
     }
 
     #[test]

@@ -131,7 +131,11 @@ fn count_on(
         let flash = emulation::flash_bytes(image)?;
         match (expected.to, call) {
             (To::Nothing, _) => call = Some(count::call_alone(&run.windows, flash)),
-            (_, Some(call)) => costs.push(count::cost(expected, &run.windows, flash, call)),
+            (_, Some(call)) => {
+                let mut cost = count::cost(expected, &run.windows, flash, call);
+                cost.stack_bound = bound(chip, expected, image, cost.stack)?;
+                costs.push(cost);
+            }
             (_, None) => return Err(not_named("image of the call alone")),
         }
     }
@@ -140,4 +144,18 @@ fn count_on(
 
 fn not_named(what: &str) -> Trouble {
     emulation::Trouble::NotNamed(what.into()).into()
+}
+
+/// The bound of the stack, if there is one; what was measured must lie within.
+fn bound(chip: Chip, expected: &Expected, image: &Path, measured: u64) -> Result<Option<u64>, Trouble> {
+    match emulation::stack_bound(image) {
+        Ok(bound) if measured > bound => {
+            Err(Trouble::BeyondTheBound { name: expected.name.into(), measured, bound })
+        }
+        Ok(bound) => Ok(Some(bound)),
+        Err(why) => {
+            eprintln!("{}: {}: no bound for the stack: {why}", chip.class(), expected.name);
+            Ok(None)
+        }
+    }
 }

@@ -30,6 +30,9 @@ pub enum Trouble {
     #[error("{name}: plugin and the chip's own counter do not agree: {problem}")]
     OwnCounterDiffers { name: String, problem: String },
 
+    #[error("{name}: the stack went {measured} bytes deep, beyond its bound of {bound}: the bound is wrong")]
+    BeyondTheBound { name: String, measured: u64, bound: u64 },
+
     #[error("{path}: {problem}; `cargo leg-cost --rewrite-guard` writes it anew", path = path.display())]
     Guard { path: std::path::PathBuf, problem: String },
 
