@@ -37,10 +37,13 @@ const ENTRY: &str = "5entry";
 pub fn stack_bound(image: &Path) -> Result<u64, Trouble> {
     let bad = |problem: String| Trouble::BadFile { path: image.to_owned(), problem };
     let data = fs::read(image).map_err(|error| bad(error.to_string()))?;
-    let code = Code::of(&data).map_err(bad)?;
-    let root = code.named(ENTRY).ok_or_else(|| bad("has no function `entry`".into()))?;
-    let mut known = BTreeMap::new();
-    code.depth(root, &mut Vec::new(), &mut known).map_err(bad)
+    bound_of(&data).map_err(bad)
+}
+
+fn bound_of(image: &[u8]) -> Result<u64, String> {
+    let code = Code::of(image)?;
+    let root = code.named(ENTRY).ok_or("has no function `entry`")?;
+    code.depth(root, &mut Vec::new(), &mut BTreeMap::new())
 }
 
 struct Code<'d> {
@@ -163,7 +166,7 @@ impl<'d> Code<'d> {
         let arch = detail.arch_detail();
         let operands: Vec<ArmOperandType> =
             arch.arm().ok_or("no operands")?.operands().map(|operand| operand.op_type).collect();
-        let is_sp = |register: &RegId| register.0 as u32 == arm::ArmReg::ARM_REG_SP;
+        let is_sp = |register: &RegId| u32::from(register.0) == arm::ArmReg::ARM_REG_SP;
         let register = |operand: Option<&ArmOperandType>| match operand {
             Some(ArmOperandType::Reg(register)) => Some(*register),
             _ => None,
@@ -189,18 +192,16 @@ impl<'d> Code<'d> {
                     .and_then(|value| u64::try_from(value).ok())
                     .ok_or("moves the stack by what?")?;
             }
-            ARM_INS_ADD | ARM_INS_ADDW if first_is_sp => {
-                if immediate.is_none() {
-                    // Large frames of the small chip: the negative size comes from a literal.
-                    let by = register(operands.last()).and_then(|by| literals.get(&by.0));
-                    frame.bytes += by.ok_or("moves the stack by what?")?.min(&0).unsigned_abs();
-                }
+            ARM_INS_ADD if first_is_sp && immediate.is_none() => {
+                // Large frames of the small chip: the negative size comes from a literal.
+                let by = register(operands.last()).and_then(|by| literals.get(&by.0));
+                frame.bytes += by.ok_or("moves the stack by what?")?.min(&0).unsigned_abs();
             }
             ARM_INS_LDR => {
                 if let (Some(to), Some(ArmOperandType::Mem(from))) =
                     (register(operands.first()), operands.get(1))
                 {
-                    let value = (from.base().0 as u32 == arm::ArmReg::ARM_REG_PC)
+                    let value = (u32::from(from.base().0) == arm::ArmReg::ARM_REG_PC)
                         .then(|| ((instruction.address() + 4) & !3).wrapping_add_signed(from.disp().into()))
                         .and_then(|address| self.bytes(address, 4)?.first_chunk().copied())
                         .map(|bytes| i64::from(i32::from_le_bytes(bytes)));
@@ -220,14 +221,14 @@ impl<'d> Code<'d> {
                 frame.bytes += u64::from(down.unwrap_or(0));
             }
             ARM_INS_BL => {
-                frame.calls.insert(immediate.ok_or("calls whom?")? as u32 as u64);
+                frame.calls.insert(immediate.ok_or("calls whom?")? as u64 & 0xFFFF_FFFF);
             }
             ARM_INS_B => {
-                frame.calls.insert(immediate.ok_or("jumps where?")? as u32 as u64);
+                frame.calls.insert(immediate.ok_or("jumps where?")? as u64 & 0xFFFF_FFFF);
             }
             ARM_INS_BLX => return Err("a call through a register".into()),
             ARM_INS_BX
-                if register(operands.first()).map(|to| to.0 as u32) != Some(arm::ArmReg::ARM_REG_LR) =>
+                if register(operands.first()).map(|to| u32::from(to.0)) != Some(arm::ArmReg::ARM_REG_LR) =>
             {
                 return Err("a jump through a register".into());
             }
@@ -297,5 +298,77 @@ impl<'d> Code<'d> {
         }
         *far = None;
         Ok(())
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use object::write::{Object, StandardSection, Symbol, SymbolSection};
+    use object::{Architecture, BinaryFormat, Endianness, SymbolFlags, SymbolScope};
+
+    use super::*;
+
+    /// An object file with two functions, the second one called `leaf`. All code as LLVM's assembler encodes the text.
+    fn image(architecture: Architecture, entry: &[u8], leaf: &[u8]) -> Vec<u8> {
+        let mut object = Object::new(BinaryFormat::Elf, architecture, Endianness::Little);
+        let text = object.section_id(StandardSection::Text);
+        for (name, code) in [("_ZN5image5entry17h0E", entry), ("leaf", leaf)] {
+            let symbol = object.add_symbol(Symbol {
+                name: name.into(),
+                value: 0,
+                size: code.len() as u64,
+                kind: SymbolKind::Text,
+                scope: SymbolScope::Linkage,
+                weak: false,
+                section: SymbolSection::Undefined,
+                flags: SymbolFlags::None,
+            });
+            object.add_symbol_data(symbol, text, code, 2);
+        }
+        object.write().expect("a small object file")
+    }
+
+    fn thumb(entry: &[u16], leaf: &[u16]) -> Result<u64, String> {
+        let bytes =
+            |halfwords: &[u16]| halfwords.iter().flat_map(|half| half.to_le_bytes()).collect::<Vec<_>>();
+        bound_of(&image(Architecture::Arm, &bytes(entry), &bytes(leaf)))
+    }
+
+    /// push {r4, lr}; sub sp, #16; bl leaf; add sp, #16; pop {r4, pc}
+    const ENTRY_CODE: [u16; 6] = [0xb510, 0xb084, 0xf000, 0xf802, 0xb004, 0xbd10];
+
+    #[test]
+    fn frames_add_up_along_the_deepest_way() {
+        // push {r4, r5, r6, r7, lr}; pop {r4, r5, r6, r7, pc}
+        assert_eq!(thumb(&ENTRY_CODE, &[0xb5f0, 0xbdf0]), Ok(8 + 16 + 20));
+        // bx lr
+        assert_eq!(thumb(&ENTRY_CODE, &[0x4770]), Ok(8 + 16));
+        // vpush {d8, d9}; bx lr
+        assert_eq!(thumb(&ENTRY_CODE, &[0xed2d, 0x8b04, 0x4770]), Ok(8 + 16 + 16));
+    }
+
+    #[test]
+    fn what_has_no_bound_gets_none() {
+        // push {r4, lr}; bl entry; pop {r4, pc}
+        let recursive = thumb(&ENTRY_CODE, &[0xb510, 0xf7ff, 0xfff7, 0xbd10]);
+        assert!(recursive.is_err_and(|why| why.contains("calls itself")));
+        // blx r3; bx lr
+        let by_register = thumb(&ENTRY_CODE, &[0x4798, 0x4770]);
+        assert!(by_register.is_err_and(|why| why.contains("through a register")));
+        // mov sp, r4; bx lr
+        let moved = thumb(&ENTRY_CODE, &[0x46a5, 0x4770]);
+        assert!(moved.is_err_and(|why| why.contains("moves the stack")));
+        assert!(bound_of(&image(Architecture::Riscv32, &[], &[])).is_err());
+    }
+
+    #[test]
+    fn far_calls_of_risc_v_are_followed() {
+        // addi sp, sp, -32; auipc ra, 0; jalr 12(ra); addi sp, sp, 32; ret
+        let entry = [0x01, 0x11, 0x97, 0x00, 0x00, 0x00, 0xe7, 0x80, 0xc0, 0x00, 0x05, 0x61, 0x82, 0x80];
+        // addi sp, sp, -16; addi sp, sp, 16; ret
+        let leaf = [0x41, 0x11, 0x41, 0x01, 0x82, 0x80];
+        assert_eq!(bound_of(&image(Architecture::Riscv32, &entry, &leaf)), Ok(32 + 16));
+        // jalr a3: a call through a register that no `auipc` has filled.
+        assert!(bound_of(&image(Architecture::Riscv32, &[0x82, 0x96], &leaf)).is_err());
     }
 }
