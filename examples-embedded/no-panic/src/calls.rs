@@ -124,10 +124,15 @@ fn curve() -> Curve {
 
 fn counting() -> Counting {
     loop {
-        let counting = if truth() {
-            Timer::finest(word(), word() as u8, number()).map(|timer| timer.counting())
-        } else {
-            Expander::nearest(word(), word() as u8, number()).map(|expander| expander.counting())
+        let counting = match word() & 3 {
+            0 => Timer::finest(word(), word() as u8, number()).map(|timer| timer.counting()),
+            1 => {
+                let dividers = [word(), word(), word(), word()];
+                let dividers = dividers.get(..word() as usize).unwrap_or(&[]);
+                Timer::finest_of(dividers, word(), word() as u8, number()).map(|timer| timer.counting())
+            }
+            2 => Expander::nearest(word(), word() as u8, number()).map(|expander| expander.counting()),
+            _ => Counting::of_duty(word() as u16, word()),
         };
         if let Ok(counting) = counting {
             use_up((counting.counts_per_us(), counting.most_counts()));
@@ -202,6 +207,7 @@ fn legs<H: Hip, N: Opaque>(dimensions: Dimensions<H>, limits: Limits, servos: [S
     let ranges = leg.ranges();
     for range in [ranges.hip(), ranges.thigh(), ranges.knee()] {
         use_up((range.least(), range.most(), range.hold(angle())));
+        use_up(N::is_well_within(N::any_angle(), &range));
     }
     use_up(ranges.hold(joints()));
     answer(leg.solve(foot(), joints()));

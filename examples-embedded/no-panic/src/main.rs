@@ -7,6 +7,8 @@
 #![no_main]
 
 mod calls;
+#[cfg(feature = "hal")]
+mod hal;
 mod numbers;
 mod opaque;
 
@@ -37,6 +39,8 @@ pub extern "C" fn _start() -> ! {
     calls::all::<ik_core::Fixed32>();
     #[cfg(feature = "fixed16")]
     calls::all::<ik_core::Fixed16>();
+    #[cfg(feature = "hal")]
+    hal::all();
     #[cfg(feature = "deliberate")]
     opaque::use_up(deliberate(opaque::word()));
     loop {

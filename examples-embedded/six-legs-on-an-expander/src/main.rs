@@ -1,16 +1,16 @@
 //! Six legs in 32-bit fixed point, their eighteen servos on a 12-bit PWM expander behind an I2C bus.
 //!
 //! The robot is the culvert walker. Its feet go through some frames of a tripod gait: three on the ground move back while
-//! the other three swing forward. Each leg's counts go to the expander in one transfer.
+//! the other three swing forward. The counts of a frame go to the expander in one transaction.
 #![no_std]
 #![no_main]
 
 mod bus;
-mod expander;
 
 use board::end;
 use bus::LoggedBus;
 use fixed::types::I16F16;
+use ik_core::output::hal::{ExpanderWriter, Layout, WordOrder};
 use ik_core::robot::Robot;
 use ik_core::{
     Bend, Channel, Dimensions, Expander as Counter, Fixed32, Foot, Leg, Limb, Limits, Mounting, ServoSpec,
@@ -30,7 +30,10 @@ macro_rules! possible {
 type Channels = [Channel<Fixed32>; 3];
 
 const LEGS: usize = 6;
+const CHANNELS: usize = 3 * LEGS;
 const ADDRESS: u8 = 0x2A;
+/// Made up, as the emulator has no expander: take yours from its data sheet.
+const LAYOUT: Layout = Layout { first_register: 0x10, order: WordOrder::LowFirst, has_beginnings: false };
 
 /// 12 bits a frame of about 20 ms, from an oscillator of 25 MHz.
 const COUNTER: Counter = possible!(Counter::nearest(25_000_000, 12, 50.0));
@@ -104,18 +107,22 @@ fn feet(frame: i32) -> [Foot<Fixed32>; LEGS] {
 
 #[board::entry]
 fn main() -> ! {
-    let mut expander = expander::Expander::new(LoggedBus, ADDRESS);
+    let Ok(mut expander) = ExpanderWriter::<_, CHANNELS>::new(LoggedBus, ADDRESS, LAYOUT, COUNTER) else {
+        panic!("the channels' registers do not fit")
+    };
     let mut robot = Robot::<YawHip, Fixed32, LEGS, Channels>::new();
     for limb in LIMBS {
         // There is room for six.
         let _ = robot.add(limb);
     }
     for frame in 0..FRAMES {
+        let mut counts = [0; CHANNELS];
+        for (leg, command) in counts.chunks_exact_mut(3).zip(&robot.frame(&feet(frame))) {
+            leg.copy_from_slice(&command.counts());
+        }
         defmt::println!("frame {=i32}", frame);
-        for (leg, command) in (0..).zip(&robot.frame(&feet(frame))) {
-            if expander.write(3 * leg, command.counts()).is_err() {
-                defmt::println!("the bus failed: leg {=u8} keeps its pose", leg);
-            }
+        if expander.send(&counts).is_err() {
+            defmt::println!("the bus failed: the legs keep their poses");
         }
     }
     end::done()
