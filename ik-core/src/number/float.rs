@@ -217,8 +217,8 @@ const fn wrapped(angle: f32) -> f32 {
 /// be held within ±1.
 ///
 /// What makes it sure: lengths are rounded to whole steps, towards zero, before their squares are formed, which might
-/// make the norm of a vector of a few steps too small by half. So no depth is less than [`HAIR`], which is also added to a
-/// radius; and as much to the norm of a folded leg, too little to be seen in any other.
+/// make the norm of a vector of a few steps too small by half. So no depth and no radius is less than [`HAIR`]; and as much is
+/// added to the norm of a folded leg, too little to be seen in any other.
 #[inline(always)]
 fn open_angle<M: FloatMaths>(y: f32, x: f32, norm: f32) -> f32 {
     if x < 0.0 { obtuse::<M>(y, x, norm) } else { M::double_arc_tangent(y / (norm + x)) }

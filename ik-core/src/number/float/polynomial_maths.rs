@@ -1,4 +1,8 @@
-//! Minimax polynomials, as short as single precision is worth.
+//! Minimax polynomials and quotients of them, as short as single precision is worth.
+//!
+//! Every float is looked at, in three minutes, by
+//! `TOEHOLD_LONG=1 cargo test --release -p ik-core --lib -- float::polynomial --nocapture`, which prints the largest
+//! errors: 1.694e-7, 2.580e-7, 8.931e-8.
 
 use super::FloatMaths;
 use super::coefficients::{ARC_TANGENT, COSINE, KNEE_ARC_TANGENT, SINE};
@@ -28,19 +32,19 @@ impl FloatMaths for Polynomials {
         hardware_root::root_of_words(upper, lower)
     }
 
-    /// Within 3e-7.
+    /// Within 1.7e-7 on [−1, 1], found at every float there.
     #[inline(always)]
     fn double_arc_tangent(t: f32) -> f32 {
         ARC_TANGENT.odd_beyond_double(t)
     }
 
-    /// Within 2.5e-7.
+    /// Within 2.6e-7 on [0, tan 22.5°], found at every float there.
     #[inline(always)]
     fn quadruple_arc_tangent(t: f32) -> f32 {
         KNEE_ARC_TANGENT.odd(t)
     }
 
-    /// Within 1e-7.
+    /// Within 9e-8 on [−π, π], found at every float there.
     fn sin_cos(angle: f32) -> (f32, f32) {
         // The nearest quarter turn, and the rest within ±π/4.
         let turned = angle * FRAC_2_PI;
@@ -78,14 +82,14 @@ mod tests {
     #[test]
     fn double_arc_tangent_keeps_its_bound() {
         let error = |t| f64::from(Polynomials::double_arc_tangent(t)) - 2.0 * f64::from(t).atan();
-        worst(1.0, 97, |t| error(t).abs(), 2e-7);
+        worst(1.0, 97, |t| error(t).abs(), 1.7e-7);
     }
 
     #[test]
     fn quadruple_arc_tangent_keeps_its_bound() {
         let error =
             |t: f32| f64::from(Polynomials::quadruple_arc_tangent(t.abs())) - 4.0 * f64::from(t.abs()).atan();
-        worst(FRAC_PI_8.tan(), 97, |t| error(t).abs(), 3e-7);
+        worst(FRAC_PI_8.tan(), 97, |t| error(t).abs(), 2.6e-7);
     }
 
     #[test]
@@ -95,6 +99,6 @@ mod tests {
             let (want_sine, want_cosine) = f64::from(angle).sin_cos();
             (f64::from(sine) - want_sine).abs().max((f64::from(cosine) - want_cosine).abs())
         };
-        worst(PI, 97, error, 1e-7);
+        worst(PI, 97, error, 9e-8);
     }
 }
