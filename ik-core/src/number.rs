@@ -124,6 +124,11 @@ pub trait Number: Copy + Debug + PartialEq + 'static {
     fn square_from_mm2(mm2: f64, scale: Self::Scale) -> Self::Square;
     /// A pure number in (−8, 8), rounded.
     fn ratio_from(value: f64) -> Self::Ratio;
+    /// mm², rounded; or a hair less, for number systems that want a root of what is left with it taken off to be no
+    /// less than a hair.
+    fn cylinder_from_mm2(mm2: f64, scale: Self::Scale) -> Self::Square {
+        Self::square_from_mm2(mm2, scale)
+    }
     /// A ratio that goes with those of [`knee`](Number::knee).
     fn lean_from(value: f64, _scale: Self::Scale) -> Self::Ratio {
         Self::ratio_from(value)
@@ -183,9 +188,10 @@ pub trait Number: Copy + Debug + PartialEq + 'static {
     fn square(coord: Self::Coord, scale: Self::Scale) -> Self::Square;
     /// The root of a square ≥ 0.
     fn root(square: Self::Square, scale: Self::Scale) -> Self::Coord;
-    /// With R = √`radial_square`: (R − offset, (R − offset)²), the square kept as exact as squares are, or
-    /// the knee of a leg near straight would be limited to the root of the rounding error.
-    fn beyond(
+    /// R = √`radial_square`, no less than a hair if that is what [`yaw_angle`](Number::yaw_angle) wants, and
+    /// (R − offset)², kept as exact as squares are, or the knee of a leg near straight would be limited to the root of
+    /// the rounding error.
+    fn radial(
         radial_square: Self::Square,
         offset: Self::Coord,
         scale: Self::Scale,
@@ -207,6 +213,22 @@ pub trait Number: Copy + Debug + PartialEq + 'static {
             Self::area(y, offset) - Self::area(z, depth),
             Self::area(y, y) + Self::area(z, z),
         )
+    }
+    /// The hip of a yaw-hip leg: the angle of (y, x), whose norm is `radial`.
+    #[inline(always)]
+    fn yaw_angle([x, y]: [Self::Coord; 2], radial: Self::Coord) -> Self::Angle {
+        Self::angle(Self::widen(x), Self::widen(y), Self::widen(radial))
+    }
+    /// The ratio, or if it is to be negative its negative: the ratio times `sign`, which is 1 or −1.
+    #[inline(always)]
+    fn signed(ratio: Self::Ratio, _sign: Self::Ratio, negative: bool) -> Self::Ratio {
+        if negative { -ratio } else { ratio }
+    }
+    /// The knee's flexion: `acute`, or with the leg nearer to folded `end` less `acute`; `end` is the flexion at the nearer
+    /// end of the reach, and `sign` is 1 if that is folded and else −1.
+    #[inline(always)]
+    fn knee_angle(acute: Self::Angle, end: Self::Angle, _sign: Self::Ratio, folded: bool) -> Self::Angle {
+        if folded { Self::angle_difference(end, acute) } else { acute }
     }
     /// The thigh: the angle of (along·p − across·q, across·p + along·q), whose norm is known.
     #[inline(always)]
@@ -272,6 +294,13 @@ pub trait Number: Copy + Debug + PartialEq + 'static {
     fn on_line(line: Self::Line, angle: Self::Angle) -> i32;
 }
 
+/// Tells the compiler that where this is called is come by less often, so that it branches there instead of working
+/// out both ways and choosing. There is nothing left of it in the code.
+#[cfg(any(feature = "float32", feature = "coarse", feature = "fixed32"))]
+#[cold]
+#[inline(never)]
+const fn seldom() {}
+
 /// A foot in the leg's working range.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub enum Placed<N: Number> {
@@ -289,8 +318,8 @@ pub enum Placed<N: Number> {
 /// that end loses no digits near it.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct Knee<N: Number> {
-    /// Knee flexion, in [0, ½) turn; 0 is straight.
-    pub angle: N::Angle,
+    /// How far the knee is from its nearer end, straight or folded, in [0, ¼] turn.
+    pub acute: N::Angle,
     /// ½·sin of it, in [0, ½].
     pub half_sine: N::Ratio,
     /// Whether the leg is nearer to folded than to straight: m < n.

@@ -12,8 +12,10 @@ pub struct Constants<N: Number> {
     pub(crate) scale: N::Scale,
     /// Hip offset or coxa.
     pub(crate) offset: N::Coord,
-    /// Its square.
+    /// Roll-hip: its square, less a hair in some number systems.
     pub(crate) offset_square: N::Square,
+    /// Roll-hip: (L1 + L2)² + offset².
+    pub(crate) outer_square: N::Square,
     /// (L1 + L2)².
     pub(crate) reach_square: N::Square,
     /// 4·L1·L2: what n = (L1+L2)² − G² is when the leg is folded.
@@ -31,25 +33,30 @@ pub struct Constants<N: Number> {
     pub(crate) axis_corner: N::Coord,
     pub(crate) thigh: N::Coord,
     pub(crate) shank: N::Coord,
-    /// 2·L1.
-    pub(crate) twice_thigh: N::Coord,
     /// P/(4·L1·L2) and the norm of the thigh's vector of a straight leg: (L1+L2)/(2·L2), (L1+L2)²/(2·L2).
-    pub(crate) straight: ThighEnd<N>,
+    pub(crate) straight: KneeEnd<N>,
     /// The same of a folded leg: (L1−L2)/(2·L2), (L1−L2)²/(2·L2).
-    pub(crate) folded: ThighEnd<N>,
+    pub(crate) folded: KneeEnd<N>,
     /// The reciprocal of 2·√(L1·L2).
     pub(crate) unit: N::Unit,
     pub(crate) bends_back: bool,
+    /// −1 if it bends back, else 1.
+    pub(crate) side: N::Ratio,
     /// Whether the knee's range ends before straight, and before folded: else it is the links that end the reach.
     pub(crate) knee_stops: [bool; 2],
     pub(crate) ranges: Ranges<N>,
 }
 
-/// What the thigh's angle is worked out from, at an end of the reach of free links.
+/// What knee and thigh are worked out from, at an end of the reach of free links.
 #[derive(Debug, Clone, Copy, PartialEq)]
-pub(crate) struct ThighEnd<N: Number> {
+pub(crate) struct KneeEnd<N: Number> {
+    /// The knee's angle: 0 or half a turn.
+    pub(crate) knee: N::Angle,
     pub(crate) lean: N::Ratio,
     pub(crate) norm: N::Product,
+    /// What `lean` and `norm` change by, away from this end: −1 and −2·L1 from straight, 1 and 2·L1 from folded.
+    pub(crate) sign: N::Ratio,
+    pub(crate) swing: N::Coord,
 }
 
 /// The constants of a leg as an expression, so that one text serves `const fn` with a number system's own
@@ -80,7 +87,8 @@ macro_rules! constants {
                 Ok($crate::leg::constants::Constants {
                     scale,
                     offset: <$number>::coord_from_mm(offset, scale),
-                    offset_square: <$number>::square_from_mm2(offset * offset, scale),
+                    offset_square: <$number>::cylinder_from_mm2(offset * offset, scale),
+                    outer_square: <$number>::square_from_mm2(reach * reach + offset * offset, scale),
                     reach_square: <$number>::square_from_mm2(reach * reach, scale),
                     fold_square: <$number>::square_from_mm2(4.0 * product, scale),
                     straightest: <$number>::square_from_mm2(straightest, scale),
@@ -92,20 +100,26 @@ macro_rules! constants {
                     axis_corner: <$number>::coord_from_mm(root(corner), scale),
                     thigh: <$number>::coord_from_mm(thigh, scale),
                     shank: <$number>::coord_from_mm(shank, scale),
-                    twice_thigh: <$number>::coord_from_mm(2.0 * thigh, scale),
-                    straight: $crate::leg::constants::ThighEnd {
+                    straight: $crate::leg::constants::KneeEnd {
+                        knee: <$number as $crate::Number>::NO_ANGLE,
                         lean: <$number>::lean_from(reach / (2.0 * shank), scale),
                         norm: <$number>::product_from_mm(reach * reach / (2.0 * shank), scale),
+                        sign: <$number>::ratio_from(-1.0),
+                        swing: <$number>::coord_from_mm(-2.0 * thigh, scale),
                     },
-                    folded: $crate::leg::constants::ThighEnd {
+                    folded: $crate::leg::constants::KneeEnd {
+                        knee: <$number as $crate::Number>::MOST_ANGLE,
                         lean: <$number>::lean_from((thigh - shank) / (2.0 * shank), scale),
                         norm: <$number>::product_from_mm(
                             (thigh - shank) * (thigh - shank) / (2.0 * shank),
                             scale,
                         ),
+                        sign: <$number>::ratio_from(1.0),
+                        swing: <$number>::coord_from_mm(2.0 * thigh, scale),
                     },
                     unit: <$number>::unit_from_mm(2.0 * root(product), scale),
                     bends_back: dimensions.bends_back(),
+                    side: <$number>::ratio_from(if dimensions.bends_back() { -1.0 } else { 1.0 }),
                     knee_stops: [knee[0] > 0.0, knee[1] < 180.0],
                     ranges: $crate::limits::Ranges {
                         free: limits.are_free(),

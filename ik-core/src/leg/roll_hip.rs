@@ -25,16 +25,16 @@ impl Hip for RollHip {
 impl Stage for RollHip {
     #[inline(always)]
     fn plane<N: Number>(leg: &Constants<N>, [x, y, z]: [N::Coord; 3]) -> Result<Plane<N>, Beyond> {
-        let depth_square = N::square(y, leg.scale) + N::square(z, leg.scale) - leg.offset_square;
-        let n = leg.reach_square - depth_square - N::square(x, leg.scale);
-        if n < leg.straightest {
-            Err(Beyond::Outer)
-        } else if n > leg.most_folded {
-            Err(Beyond::Inner)
-        } else if depth_square < N::NO_SQUARE {
-            Err(Beyond::Cylinder)
-        } else {
-            Ok(at_depth(leg, [x, y, z], depth_square, n))
+        let axle_square = N::square(y, leg.scale) + N::square(z, leg.scale);
+        let depth_square = axle_square - leg.offset_square;
+        let n = || leg.outer_square - (axle_square + N::square(x, leg.scale));
+        if depth_square < N::NO_SQUARE {
+            return Err(beyond_a_sphere(leg, n()).unwrap_or(Beyond::Cylinder));
+        }
+        let n = n();
+        match beyond_a_sphere(leg, n) {
+            Some(beyond) => Err(beyond),
+            None => Ok(at_depth(leg, [x, y, z], depth_square, n)),
         }
     }
 
@@ -71,6 +71,18 @@ impl Stage for RollHip {
     }
 }
 
+/// Which sphere around the origin a foot lies beyond, if any: the reach ends there.
+#[inline(always)]
+fn beyond_a_sphere<N: Number>(leg: &Constants<N>, n: N::Square) -> Option<Beyond> {
+    if n < leg.straightest {
+        Some(Beyond::Outer)
+    } else if n > leg.most_folded {
+        Some(Beyond::Inner)
+    } else {
+        None
+    }
+}
+
 /// The plane through a foot that lies at √`depth_square` below the hip.
 #[inline(always)]
 fn at_depth<N: Number>(
@@ -100,7 +112,13 @@ fn scaled<N: Number>(
         return if leg.offset_square > N::NO_SQUARE { None } else { Some(down) };
     }
     let [x, y, z] = [x, y, z].map(|v| N::rescale(v, radius, norm));
-    let depth_square = N::square(y, leg.scale) + N::square(z, leg.scale) - leg.offset_square;
+    let (across_square, axle_square) =
+        (N::square(x, leg.scale), N::square(y, leg.scale) + N::square(z, leg.scale));
+    // The sphere's own square is known exactly: D² comes of whichever was rounded by less, because near the cylinder
+    // rounding is seen in its root.
+    let axle_square =
+        if across_square < axle_square { leg.outer_square - n - across_square } else { axle_square };
+    let depth_square = axle_square - leg.offset_square;
     if depth_square < N::NO_SQUARE {
         return None;
     }

@@ -10,15 +10,12 @@ use crate::number::Number;
 pub(super) fn angles<N: Number>(leg: &Constants<N>, plane: &Plane<N>) -> (N::Angle, N::Angle) {
     let knee = N::knee(plane.n, leg.fold_square - plane.n, leg.unit, leg.scale);
     // In the unit 4·L1·L2: P, q, and the norm 2·L1·G² of the thigh's vector, all from the nearer end of the reach.
-    let swing = N::stretch(leg.twice_thigh, knee.from_end);
-    let (p, norm) = if knee.folded {
-        (leg.folded.lean + knee.from_end, leg.folded.norm + swing)
-    } else {
-        (leg.straight.lean - knee.from_end, leg.straight.norm - swing)
-    };
-    let q = if leg.bends_back { -knee.half_sine } else { knee.half_sine };
+    let end = if knee.folded { &leg.folded } else { &leg.straight };
+    let p = end.lean + N::signed(knee.from_end, end.sign, !knee.folded);
+    let norm = end.norm + N::stretch(end.swing, knee.from_end);
+    let q = N::signed(knee.half_sine, leg.side, leg.bends_back);
     let thigh = N::thigh_angle(plane.along, plane.across, [p, q], norm);
-    (thigh, knee.angle)
+    (thigh, N::knee_angle(knee.acute, end.knee, end.sign, knee.folded))
 }
 
 /// (across, along) of the foot in the plane of the leg.

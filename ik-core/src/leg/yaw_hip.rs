@@ -25,14 +25,15 @@ impl Stage for YawHip {
     #[inline(always)]
     fn plane<N: Number>(leg: &Constants<N>, [x, y, z]: [N::Coord; 3]) -> Result<Plane<N>, Beyond> {
         let radial_square = N::square(x, leg.scale) + N::square(y, leg.scale);
-        let (along, along_square) = N::beyond(radial_square, leg.offset, leg.scale);
+        let (radial, along_square) = N::radial(radial_square, leg.offset, leg.scale);
         let n = leg.reach_square - along_square - N::square(z, leg.scale);
         if n < leg.straightest {
             Err(Beyond::Outer)
         } else if n > leg.most_folded {
             Err(Beyond::Inner)
         } else {
-            Ok(Plane { hip: yaw(x, y, along + leg.offset), across: z, along, n })
+            let hip = Angle(N::yaw_angle([x, y], radial));
+            Ok(Plane { hip, across: z, along: radial - leg.offset, n })
         }
     }
 
@@ -64,7 +65,9 @@ impl Stage for YawHip {
         } else {
             (along, across)
         };
-        (Plane { hip: yaw(x, y, radial), across, along, n }, Some(end))
+        // There may be no radius here.
+        let hip = Angle(N::angle(N::widen(x), N::widen(y), N::widen(radial)));
+        (Plane { hip, across, along, n }, Some(end))
     }
 
     fn foot<N: Number>(leg: &Constants<N>, joints: &Joints<N>) -> [N::Coord; 3] {
@@ -73,10 +76,4 @@ impl Stage for YawHip {
         let (sin, cos) = N::sin_cos(joints.hip.0);
         [N::narrow(N::stretch(radial, sin)), N::narrow(N::stretch(radial, cos)), z]
     }
-}
-
-/// The yaw that points the leg at (x, y).
-#[inline(always)]
-fn yaw<N: Number>(x: N::Coord, y: N::Coord, radial: N::Coord) -> Angle<N> {
-    Angle(N::angle(N::widen(x), N::widen(y), N::widen(radial)))
 }

@@ -113,6 +113,10 @@ impl Fixed16 {
         nearest_i32(mm2 * scale.units_per_mm() * scale.units_per_mm())
     }
 
+    pub(crate) const fn cylinder_from_mm2(mm2: f64, scale: Fixed16Scale) -> i32 {
+        Self::square_from_mm2(mm2, scale)
+    }
+
     pub(crate) const fn ratio_from(value: f64) -> i32 {
         nearest_i32(value * power_of_two(RATIO_BITS as i32))
     }
@@ -294,7 +298,7 @@ impl Number for Fixed16 {
     }
 
     #[inline(always)]
-    fn beyond(radial_square: i32, offset: i32, _: Fixed16Scale) -> (i32, i32) {
+    fn radial(radial_square: i32, offset: i32, _: Fixed16Scale) -> (i32, i32) {
         let root = root::root(radial_square as u32);
         let whole = (((root.wide >> (15 + root.halvings)) + 1) >> 1) as i32;
         let rest = radial_square.wrapping_sub(whole.wrapping_mul(whole));
@@ -302,7 +306,7 @@ impl Number for Fixed16 {
         let share = rest.wrapping_mul(root.reciprocal as i32) >> (15 - root.halvings);
         let correction = offset.wrapping_mul(share) >> 14;
         let along = whole - offset;
-        (along, along * along + rest - correction)
+        (whole, along * along + rest - correction)
     }
 
     #[inline(always)]
@@ -340,13 +344,17 @@ impl Number for Fixed16 {
         let root = root::root(least as u32);
         let sine = (root.wide >> 16).wrapping_mul(unit.reciprocal) >> ((unit.shift + root.halvings) & 31);
         let (knee, half_sine, from_end) = knee::of_half_sine(sine, scale.ratio_drop & 31);
-        let mut knee = knee as i32;
-        if folded {
-            knee = HALF_TURN - knee;
-            // Half a turn itself is one too many.
-            knee -= knee >> 15;
+        Knee { acute: I0F16::from_bits(knee as i16), half_sine, folded, from_end }
+    }
+
+    #[inline(always)]
+    fn knee_angle(acute: I0F16, _: I0F16, _: i32, folded: bool) -> I0F16 {
+        if !folded {
+            return acute;
         }
-        Knee { angle: I0F16::from_bits(knee as i16), half_sine, folded, from_end }
+        let knee = HALF_TURN - i32::from(acute.to_bits());
+        // Half a turn itself is one too many.
+        I0F16::from_bits((knee - (knee >> 15)) as i16)
     }
 
     #[inline(never)]

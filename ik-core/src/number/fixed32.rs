@@ -11,7 +11,7 @@ mod root;
 mod sine;
 
 use super::line::FixedLine;
-use super::{Knee, Number, Placed};
+use super::{Knee, Number, Placed, seldom};
 use crate::const_math::{inward, nearest, nearest_i32, power_of_two};
 use fixed::types::{I0F32, I16F16};
 
@@ -81,6 +81,10 @@ impl Fixed32 {
 
     pub(crate) const fn square_from_mm2(mm2: f64, scale: FixedScale) -> i64 {
         nearest(mm2 * scale.units_per_mm() * scale.units_per_mm())
+    }
+
+    pub(crate) const fn cylinder_from_mm2(mm2: f64, scale: FixedScale) -> i64 {
+        Self::square_from_mm2(mm2, scale)
     }
 
     pub(crate) const fn ratio_from(value: f64) -> i32 {
@@ -153,14 +157,14 @@ const fn upper(product: i64) -> i32 {
 const LEAST_UPPER: u32 = 1 << 22;
 
 /// The angle from the upper halves of products, 28 bits where the leg reaches far; `None` if the norm is so small that
-/// they are not enough.
+/// they are not enough, or the angle obtuse, which is seldom.
 #[inline(always)]
 fn angle_of_upper(y: i32, x: i32, norm: i32) -> Option<I0F32> {
-    let run = norm as u32 + x.unsigned_abs();
-    if run < LEAST_UPPER {
+    let run = (norm as u32).wrapping_add(x as u32);
+    if x < 0 || run < LEAST_UPPER {
         return None;
     }
-    Some(signed(arctangent::double_angle(y.unsigned_abs(), run), y < 0, x < 0))
+    Some(signed(arctangent::double_angle(y.unsigned_abs(), run), y < 0, false))
 }
 
 /// The angle with 2·arctan(|y| / (norm + |x|)) = `half`, in its quadrant.
@@ -187,14 +191,14 @@ fn angle_of_all(y: i64, x: i64, norm: i64) -> I0F32 {
 
 #[cold]
 #[inline(never)]
-fn hip_angle_near_the_axis([y, z]: [i32; 2], offset: i32, depth: i32) -> I0F32 {
+fn hip_angle_of_all([y, z]: [i32; 2], offset: i32, depth: i32) -> I0F32 {
     let area = Fixed32::area;
     angle_of_all(area(z, offset) + area(y, depth), area(y, offset) - area(z, depth), area(y, y) + area(z, z))
 }
 
 #[cold]
 #[inline(never)]
-fn thigh_angle_near_its_joint(along: i32, across: i32, [p, q]: [i32; 2], norm: i64) -> I0F32 {
+fn thigh_angle_of_all(along: i32, across: i32, [p, q]: [i32; 2], norm: i64) -> I0F32 {
     let area = Fixed32::area;
     angle_of_all(area(across, p) + area(along, q), area(along, p) - area(across, q), norm)
 }
@@ -308,7 +312,7 @@ impl Number for Fixed32 {
     }
 
     #[inline(always)]
-    fn beyond(radial_square: i64, offset: i32, _: FixedScale) -> (i32, i64) {
+    fn radial(radial_square: i64, offset: i32, _: FixedScale) -> (i32, i64) {
         let whole = root::root(radial_square as u64) as i32;
         // The root is off by a few at most, so the rest lies within ±2^36.
         let rest = radial_square - i64::from(whole) * i64::from(whole);
@@ -317,7 +321,7 @@ impl Number for Fixed32 {
         let quotient = ((rest >> 10) as i32).checked_div(whole >> 20).unwrap_or(0);
         let correction = (i64::from(offset) * i64::from(quotient)) >> 10;
         let along = whole - offset;
-        (along, i64::from(along) * i64::from(along) + rest - correction)
+        (whole, i64::from(along) * i64::from(along) + rest - correction)
     }
 
     #[inline(always)]
@@ -353,8 +357,14 @@ impl Number for Fixed32 {
             area(y, y) + area(z, z),
         ) {
             Some(angle) => angle,
-            None => hip_angle_near_the_axis([y, z], offset, depth),
+            None => hip_angle_of_all([y, z], offset, depth),
         }
+    }
+
+    #[inline(always)]
+    fn signed(ratio: i32, sign: i32, _: bool) -> i32 {
+        let mask = sign >> 31;
+        (ratio ^ mask) - mask
     }
 
     #[inline(always)]
@@ -363,22 +373,26 @@ impl Number for Fixed32 {
         match angle_of_upper(area(across, p) + area(along, q), area(along, p) - area(across, q), upper(norm))
         {
             Some(angle) => angle,
-            None => thigh_angle_near_its_joint(along, across, [p, q], norm),
+            None => thigh_angle_of_all(along, across, [p, q], norm),
         }
     }
 
     #[inline(always)]
     fn knee(n: i64, m: i64, unit: u32, _: FixedScale) -> Knee<Self> {
         // The smaller of n and m gives a half-angle of 45° at the most, whose sine is well known.
-        let folded = m < n;
-        let side = root::root(if folded { m } else { n } as u64);
+        let (less, folded) = if m < n {
+            seldom();
+            (m, true)
+        } else {
+            (n, false)
+        };
+        let side = root::root(less as u64);
         let sine = ((u64::from(side) * u64::from(unit)) >> UNIT_BITS) as u32;
         let (knee, half_sine) = knee::knee(sine);
-        let knee = if folded { i32::MAX - knee } else { knee };
         // sine² with 26 fraction bits is the upper half of that of four times the sine.
         let square = ((u64::from(4 * sine) * u64::from(4 * sine)) >> 32) as i32;
         Knee {
-            angle: I0F32::from_bits(knee),
+            acute: I0F32::from_bits(knee),
             half_sine,
             folded,
             from_end: square << (RATIO_BITS + 32 - 2 * (SINE_BITS + 2)),
@@ -405,8 +419,10 @@ impl Number for Fixed32 {
     }
 
     fn rescale(v: i32, to: i32, from: i32) -> i32 {
-        // |v| ≤ from but for rounding, so the result stays within |to| and a bit.
-        saturated((i64::from(v) * i64::from(to)).checked_div(i64::from(from)).unwrap_or(0))
+        let size =
+            (u64::from(fraction(v.unsigned_abs(), from.unsigned_abs())) * u64::from(to.unsigned_abs())) >> 31;
+        // |v| ≤ from but for rounding, so the result stays within |to|.
+        if v < 0 { -(size as i32) } else { size as i32 }
     }
 
     fn halve(coord: i32, times: u32) -> i32 {
@@ -419,7 +435,8 @@ impl Number for Fixed32 {
         // Each lies below 2^32: two bits of headroom keep the sum of squares within 64.
         let spare = if (x | y | z) >> 30 == 0 { 0 } else { 2 };
         let [x, y, z] = [x >> spare, y >> spare, z >> spare];
-        let steps = (x * x + y * y + z * z).isqrt() << spare;
+        // Below 2^31 and a half, shifted by two bits at the most.
+        let steps = u64::from(root::root(x * x + y * y + z * z)) << spare;
         I16F16::from_bits(steps.min(i32::MAX as u64) as i32)
     }
 
@@ -444,12 +461,32 @@ impl Number for Fixed32 {
 /// A foot beyond the working range, halved until it is within.
 #[cold]
 fn far(bits: [i32; 3], scale: FixedScale) -> Placed<Fixed32> {
-    let wide = bits.map(|v| i64::from(v) << scale.shift);
-    let mut times = 0;
-    while times < 31 && wide.iter().any(|v| (v >> times).unsigned_abs() >= COORD_LIMIT as u64) {
-        times += 1;
+    let [x, y, z] = bits.map(i32::unsigned_abs);
+    // Bits beyond those of the working range: one or more, or the foot would be within it.
+    let times = (u32::BITS - (x | y | z).leading_zeros()).saturating_sub(COORD_LIMIT.ilog2() - scale.shift);
+    let placed = bits
+        .map(|v| if times > scale.shift { v >> (times - scale.shift) } else { v << (scale.shift - times) });
+    Placed::Far(placed, times)
+}
+
+/// rise/run with 31 fraction bits, for run < 2^31; no more than 1, and 0 for a run of 0. By long division, which is short:
+/// only for feet out of reach.
+fn fraction(rise: u32, run: u32) -> u32 {
+    if run == 0 {
+        return 0;
     }
-    Placed::Far(wide.map(|v| (v >> times) as i32), times)
+    let (mut rest, mut quotient) = (rise.min(run), 0);
+    let mut bit = 0;
+    while bit < 32 {
+        quotient <<= 1;
+        if rest >= run {
+            rest -= run;
+            quotient |= 1;
+        }
+        rest <<= 1;
+        bit += 1;
+    }
+    quotient
 }
 
 #[cfg(test)]
@@ -457,7 +494,7 @@ mod tests {
     use super::*;
 
     #[test]
-    fn beyond_keeps_the_square_as_exact_as_squares_are() {
+    fn radial_keeps_the_square_as_exact_as_squares_are() {
         let scale = Fixed32::scale_for(1000.0).unwrap();
         let (mut worst, mut state) = (0u128, 1u64);
         for _ in 0..200_000 {
@@ -468,7 +505,7 @@ mod tests {
             if radial < 1 << 27 {
                 continue;
             }
-            let (_, square) = Fixed32::beyond(radial_square, offset, scale);
+            let (_, square) = Fixed32::radial(radial_square, offset, scale);
             // (R − c)² = R² + c² − 2·c·R, the root with 32 fraction bits.
             let root = ((radial_square as u128) << 64).isqrt();
             let twice = (2 * offset as u128 * root) >> 32;

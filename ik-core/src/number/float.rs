@@ -12,8 +12,10 @@ mod hardware_root;
 mod micromath_maths;
 #[cfg(feature = "float32")]
 mod polynomial_maths;
+#[cfg(feature = "float32")]
+mod quotient;
 
-use super::{Knee, Number, Placed};
+use super::{Knee, Number, Placed, seldom};
 use crate::const_math::{nearest, power_of_two};
 use crate::limits::Range;
 use core::f32::consts::{PI, TAU};
@@ -41,8 +43,15 @@ pub type Coarse = Float<micromath_maths::Micromath>;
 pub trait FloatMaths: Copy + core::fmt::Debug + PartialEq + 'static {
     /// The number system's name.
     const NAME: &'static str;
+    /// How many bits the difference between a square below 2^61 and that of its root, as whole number, has above 31.
+    const REST_BITS: u32;
     /// √v for v ≥ 0.
     fn root(v: f32) -> f32;
+    /// √(upper + lower/2^32) for upper ≥ 0, within a unit in the last place of what is under the root.
+    #[inline(always)]
+    fn root_of_words(upper: i32, lower: u32) -> f32 {
+        Self::root(upper as f32 + lower as f32 * (1.0 / 4_294_967_296.0))
+    }
     /// 2·arctan t for |t| ≤ 1.
     fn double_arc_tangent(t: f32) -> f32;
     /// 4·arctan t for 0 ≤ t ≤ tan 22.5°.
@@ -62,8 +71,8 @@ pub struct Float<M>(PhantomData<M>);
 pub struct FloatScale {
     /// Steps in a millimetre.
     steps_per_mm: f32,
-    /// Its reciprocal.
-    mm_per_step: f32,
+    /// Its reciprocal times [`STEPS_PER_ROOT`].
+    mm_per_root: f32,
     /// Feet of the working range are nearer than the root of this, mm².
     limit_square: f32,
 }
@@ -98,6 +107,9 @@ pub struct FloatLine {
     start: f32,
 }
 
+/// More than any leg's reach, and not so much that what is taken off it would wrap.
+const BEYOND_ANY_LEG: Steps2 = Steps2(1 << (2 * STEP_BITS + 1));
+
 /// Bits of the integers whose squares are exact.
 const STEP_BITS: i32 = 30;
 
@@ -113,7 +125,7 @@ impl<M: FloatMaths> Float<M> {
         }
         Some(FloatScale {
             steps_per_mm: power_of_two(STEP_BITS - exponent) as f32,
-            mm_per_step: power_of_two(exponent - STEP_BITS) as f32,
+            mm_per_root: power_of_two(exponent - STEP_BITS + 16) as f32,
             limit_square: power_of_two(2 * exponent) as f32,
         })
     }
@@ -130,6 +142,11 @@ impl<M: FloatMaths> Float<M> {
         Steps2(nearest(mm2 * scale.steps_per_mm as f64 * scale.steps_per_mm as f64))
     }
 
+    /// What is left of a square with this taken off it, and is not negative, has a root of [`HAIR`] or more.
+    pub(crate) const fn cylinder_from_mm2(mm2: f64, scale: FloatScale) -> Steps2 {
+        Steps2(Self::square_from_mm2(mm2, scale).0 - (HAIR * HAIR) as i64)
+    }
+
     pub(crate) const fn ratio_from(value: f64) -> f32 {
         value as f32
     }
@@ -138,12 +155,14 @@ impl<M: FloatMaths> Float<M> {
         Self::ratio_from(value)
     }
 
-    pub(crate) const fn product_from_mm(mm: f64, _: FloatScale) -> f32 {
-        mm as f32
+    /// A hair above: see [`open_angle`].
+    pub(crate) const fn product_from_mm(mm: f64, scale: FloatScale) -> f32 {
+        (mm + scale.mm_per_root as f64 * power_of_two(-12 - STEP_BITS)) as f32
     }
 
-    pub(crate) const fn unit_from_mm(unit_mm: f64, _: FloatScale) -> f32 {
-        (1.0 / unit_mm) as f32
+    /// Per unit of [`root`].
+    pub(crate) const fn unit_from_mm(unit_mm: f64, scale: FloatScale) -> f32 {
+        (scale.mm_per_root as f64 / unit_mm) as f32
     }
 
     pub(crate) const fn length_from_mm(mm: f64) -> f32 {
@@ -194,18 +213,35 @@ const fn wrapped(angle: f32) -> f32 {
     }
 }
 
-/// The angle whose cosine is the negative of another's, on the same side: ±π − angle. Legs seldom reach that way.
-#[cold]
-#[inline(never)]
-fn obtuse(acute: f32) -> f32 {
-    PI.copysign(acute) - acute
+/// The angle of (x, y) for a norm that is sure to be no less than the vector's but for rounding, so that nothing need
+/// be held within ±1.
+///
+/// What makes it sure: lengths are rounded to whole steps, towards zero, before their squares are formed, which might
+/// make the norm of a vector of a few steps too small by half. So no depth and no radius is less than [`HAIR`]; and as much is
+/// added to the norm of a folded leg, too little to be seen in any other.
+#[inline(always)]
+fn open_angle<M: FloatMaths>(y: f32, x: f32, norm: f32) -> f32 {
+    if x < 0.0 { obtuse::<M>(y, x, norm) } else { M::double_arc_tangent(y / (norm + x)) }
 }
 
-/// An integer as a float, within one unit in the last place; without the library call that exact rounding would take.
-#[inline(always)]
-fn nearly(square: Steps2) -> f32 {
-    ((square.0 >> 32) as i32) as f32 * 4_294_967_296.0 + (square.0 as u32) as f32
+/// Legs seldom reach that way.
+#[cold]
+#[inline(never)]
+fn obtuse<M: FloatMaths>(y: f32, x: f32, norm: f32) -> f32 {
+    PI.copysign(y) - M::double_arc_tangent(y / (norm - x))
 }
+
+/// Steps; see [`open_angle`].
+const HAIR: f32 = 4.0;
+
+/// The root of a square, in [`STEPS_PER_ROOT`].
+#[inline(always)]
+fn root<M: FloatMaths>(square: Steps2) -> f32 {
+    M::root_of_words((square.0 >> 32) as i32, square.0 as u32)
+}
+
+/// The root of the upper word alone, if the lower is 0, has this unit.
+const STEPS_PER_ROOT: f32 = 65_536.0;
 
 /// A coordinate as an integer of the exact squares.
 #[inline(always)]
@@ -246,6 +282,9 @@ impl<M: FloatMaths> Number for Float<M> {
     }
     fn square_from_mm2(mm2: f64, scale: FloatScale) -> Steps2 {
         Self::square_from_mm2(mm2, scale)
+    }
+    fn cylinder_from_mm2(mm2: f64, scale: FloatScale) -> Steps2 {
+        Self::cylinder_from_mm2(mm2, scale)
     }
     fn ratio_from(value: f64) -> f32 {
         Self::ratio_from(value)
@@ -325,19 +364,27 @@ impl<M: FloatMaths> Number for Float<M> {
 
     #[inline(always)]
     fn root(square: Steps2, scale: FloatScale) -> f32 {
-        M::root(nearly(square)) * scale.mm_per_step
+        root::<M>(square) * scale.mm_per_root
     }
 
     #[inline(always)]
-    fn beyond(radial_square: Steps2, offset: f32, scale: FloatScale) -> (f32, Steps2) {
-        let radial = M::root(nearly(radial_square));
-        let (whole, inner) = (radial as i64, (offset * scale.steps_per_mm) as i64);
-        let rest = radial_square.0.wrapping_sub(whole.wrapping_mul(whole));
-        // R = whole + rest / (2·whole) to second order, so (R − c)² = (whole − c)² + rest − c·rest / whole.
-        let correction = if whole > 0 { inner as f32 * rest as f32 / radial } else { 0.0 };
-        let along = whole - inner;
-        let square = along.wrapping_mul(along).wrapping_add(rest).wrapping_sub(correction as i64);
-        (radial * scale.mm_per_step - offset, Steps2(square))
+    fn radial(radial_square: Steps2, offset: f32, scale: FloatScale) -> (f32, Steps2) {
+        if radial_square.0 as u64 >= 1 << (2 * STEP_BITS + 1) {
+            seldom();
+            return (0.0, BEYOND_ANY_LEG);
+        }
+        // No less than a hair.
+        let root = root::<M>(Steps2(radial_square.0 | (HAIR * HAIR) as i64));
+        let radial = root * scale.mm_per_root;
+        let whole = i64::from((root * STEPS_PER_ROOT) as i32);
+        let inner = (offset * scale.steps_per_mm) as i32;
+        let rest = radial_square.0 - whole * whole;
+        // R = whole + rest / (2·whole) to second order, so (R − c)² = R² + c² − 2·c·whole − c·rest / whole.
+        let share = (rest >> M::REST_BITS) as i32 as f32 * offset / radial;
+        let correction = i64::from(share as i32) << M::REST_BITS;
+        let inner_square = i64::from(inner) * i64::from(inner);
+        let square = radial_square.0 + inner_square - correction - i64::from(2 * inner) * whole;
+        (radial, Steps2(square))
     }
 
     #[inline(always)]
@@ -355,29 +402,53 @@ impl<M: FloatMaths> Number for Float<M> {
         coord
     }
 
-    #[inline(always)]
     fn angle(y: f32, x: f32, norm: f32) -> f32 {
         // A hair, so that the zero vector has an angle: 0. Rounding may leave |y| a last bit above the norm, which costs
         // no more than that bit.
         let acute = M::double_arc_tangent((y / (norm + x.abs() + f32::MIN_POSITIVE)).clamp(-1.0, 1.0));
-        if x < 0.0 { obtuse(acute) } else { acute }
+        if x < 0.0 { PI.copysign(acute) - acute } else { acute }
     }
 
     #[inline(always)]
-    fn knee(n: Steps2, m: Steps2, unit: f32, scale: FloatScale) -> Knee<Self> {
+    fn hip_angle([y, z]: [f32; 2], offset: f32, depth: f32) -> f32 {
+        open_angle::<M>(z * offset + y * depth, y * offset - z * depth, depth * depth + offset * offset)
+    }
+
+    #[inline(always)]
+    fn yaw_angle([x, y]: [f32; 2], radial: f32) -> f32 {
+        open_angle::<M>(x, y, radial)
+    }
+
+    #[inline(always)]
+    fn thigh_angle(along: f32, across: f32, [p, q]: [f32; 2], norm: f32) -> f32 {
+        open_angle::<M>(across * p + along * q, along * p - across * q, norm)
+    }
+
+    #[inline(always)]
+    fn knee_angle(acute: f32, end: f32, sign: f32, _: bool) -> f32 {
+        end - acute * sign
+    }
+
+    #[inline(always)]
+    fn signed(ratio: f32, sign: f32, _: bool) -> f32 {
+        ratio * sign
+    }
+
+    #[inline(always)]
+    fn knee(n: Steps2, m: Steps2, unit: f32, _: FloatScale) -> Knee<Self> {
         // The smaller of n and m gives a half-angle of 45° at the most, whose sine is well known.
-        let folded = m < n;
-        let sine = Self::root(if folded { m } else { n }, scale) * unit;
+        let (less, folded) = if m < n {
+            seldom();
+            (m, true)
+        } else {
+            (n, false)
+        };
+        let sine = root::<M>(less) * unit;
         let square = sine * sine;
         let cosine = M::root(1.0 - square);
         // 2·arctan(s / (1 + c)) is half the knee.
         let knee = M::quadruple_arc_tangent(sine / (1.0 + cosine));
-        Knee {
-            angle: if folded { PI - knee } else { knee },
-            half_sine: sine * cosine,
-            folded,
-            from_end: square,
-        }
+        Knee { acute: knee, half_sine: sine * cosine, folded, from_end: square }
     }
 
     #[inline(always)]

@@ -117,9 +117,9 @@ impl Number for Float64 {
     fn root(square: f64, _: f64) -> f64 {
         square.max(0.0).sqrt()
     }
-    fn beyond(radial_square: f64, offset: f64, _: f64) -> (f64, f64) {
-        let along = radial_square.max(0.0).sqrt() - offset;
-        (along, along * along)
+    fn radial(radial_square: f64, offset: f64, _: f64) -> (f64, f64) {
+        let radial = radial_square.max(0.0).sqrt();
+        (radial, (radial - offset) * (radial - offset))
     }
     fn area(a: f64, b: f64) -> f64 {
         a * b
@@ -145,12 +145,7 @@ impl Number for Float64 {
         let sine = (Self::root(if folded { m } else { n }, scale) * unit).min(1.0);
         let square = sine * sine;
         let knee = 2.0 * sine.asin();
-        Knee {
-            angle: if folded { PI - knee } else { knee },
-            half_sine: sine * (1.0 - square).sqrt(),
-            folded,
-            from_end: square,
-        }
+        Knee { acute: knee, half_sine: sine * (1.0 - square).sqrt(), folded, from_end: square }
     }
 
     fn sin_cos(angle: f64) -> (f64, f64) {

@@ -7,7 +7,7 @@
 //!
 //! | | own foot | foot | angle, rad |
 //! | --- | --- | --- | --- |
-//! | float32 | 8.7e-7 | 7.5e-7 | 6.0e-7 |
+//! | float32 | 8.7e-7 | 7.5e-7 | 5.9e-7 |
 //! | coarse | 2.2e-2 | 2.0e-2 | 1.8e-2 |
 //! | fixed32 | 5.3e-7 | 7.5e-7 | 1.1e-6 |
 //! | float64 | 1.3e-15 | 1.5e-15 | 1.4e-14 |
@@ -53,7 +53,7 @@ impl NumberSystem {
                 foot: 9e-7,
                 folded_below: 0.0,
                 moved: 1.5e-6,
-                angle: 7e-7,
+                angle: 6.5e-7,
                 distance: 2.4e-7,
                 servo: 9e-7,
             },

@@ -24,9 +24,12 @@ const fn starts() -> [NonZeroU16; 128] {
 #[inline(always)]
 pub(super) fn root(value: u64) -> u32 {
     let upper = (value >> 32) as u32;
-    if upper == 0 {
-        return small(value as u32);
-    }
+    if upper == 0 { small(value as u32) } else { root_of_words(value, upper) }
+}
+
+/// For an upper word that is not 0.
+#[inline(always)]
+fn root_of_words(value: u64, upper: u32) -> u32 {
     // The upper half in [2^28, 2^30); an even shift leaves a shift of half as much in the root.
     let even = (upper << 2).leading_zeros() & 30;
     let top = ((value << even) >> 32) as u32;
@@ -44,7 +47,11 @@ pub(super) fn root(value: u64) -> u32 {
 #[cold]
 #[inline(never)]
 fn small(value: u32) -> u32 {
-    value.isqrt()
+    if value < 4 {
+        return u32::from(value > 0);
+    }
+    let wide = u64::from(value) << 30;
+    root_of_words(wide, (wide >> 32) as u32) >> 15
 }
 
 #[cfg(test)]

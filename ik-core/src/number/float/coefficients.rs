@@ -1,30 +1,36 @@
-//! Coefficients of minimax polynomials, by Remez's exchange algorithm.
+//! Coefficients of minimax polynomials and quotients of polynomials, by Remez's exchange algorithm.
 //!
-//! Made by `cargo run -p ik-host-tests --example float-coefficients`; a test there compares. The errors are those of
-//! the polynomials before their coefficients are rounded to `f32`.
+//! Made by `cargo run -p ik-host-tests --example float-coefficients`; a test there compares. The errors are those
+//! before the coefficients are rounded to `f32`.
 
-/// 2·arctan t ≈ t·Σ c·t^2k on [0, 1], within 7.5e-8.
-#[rustfmt::skip]
-pub(super) const ARC_TANGENT: [f32; 8] = [
-    1.9999987,
-    -0.6665972,
-    0.39893132,
-    -0.27817258,
-    0.19284394,
-    -0.111824654,
-    0.043725915,
-    -0.008109135,
-];
+use super::quotient::Quotient;
 
-/// 4·arctan t ≈ t·Σ c·t^2k on [0, tan π/8], within 1.4e-8.
+/// 2·arctan t − 2·t on [0, 1], within 2.9e-8; rounded and in `f32`, within 1.4e-7.
 #[rustfmt::skip]
-pub(super) const KNEE_ARC_TANGENT: [f32; 5] = [
-    3.9999995,
-    -1.3332878,
-    0.79847056,
-    -0.5501205,
-    0.30917174,
-];
+pub(super) const ARC_TANGENT: Quotient<3, 2> = Quotient {
+    above: [
+        -2.4500623,
+        -1.3533605,
+        -0.020641811,
+    ],
+    below: [
+        3.6751297,
+        4.2345433,
+    ],
+};
+
+/// 4·arctan t on [0, tan π/8], within 2.3e-8; rounded and in `f32`, within 2.1e-7.
+#[rustfmt::skip]
+pub(super) const KNEE_ARC_TANGENT: Quotient<2, 2> = Quotient {
+    above: [
+        51.16494,
+        25.607006,
+    ],
+    below: [
+        12.791237,
+        10.665359,
+    ],
+};
 
 /// sin t ≈ t·Σ c·t^2k on [0, π/4], within 1.2e-9.
 #[rustfmt::skip]

@@ -10,6 +10,7 @@ pub struct Micromath;
 
 impl FloatMaths for Micromath {
     const NAME: &'static str = "coarse";
+    const REST_BITS: u32 = 24;
 
     #[inline(always)]
     fn root(v: f32) -> f32 {

@@ -1,8 +1,13 @@
-//! Minimax polynomials, as short as single precision is worth.
+//! Minimax polynomials and quotients of them, as short as single precision is worth.
+//!
+//! Every float is looked at, in three minutes, by
+//! `TOEHOLD_LONG=1 cargo test --release -p ik-core --lib -- float::polynomial --nocapture`, which prints the largest
+//! errors: 1.694e-7, 2.580e-7, 8.931e-8.
 
 use super::FloatMaths;
 use super::coefficients::{ARC_TANGENT, COSINE, KNEE_ARC_TANGENT, SINE};
 use super::hardware_root;
+use super::quotient::polynomial;
 use core::f32::consts::{FRAC_2_PI, FRAC_PI_2};
 
 /// Functions of our own over minimax polynomials: the same bits on every machine.
@@ -13,33 +18,33 @@ pub struct Polynomials;
 /// What the `f32` nearest to π/2 leaves of it.
 const FRAC_PI_2_REST: f32 = -4.371_139e-8;
 
-/// Σ c·u^k by Horner's rule.
-#[inline(always)]
-fn polynomial<const N: usize>(coefficients: &[f32; N], u: f32) -> f32 {
-    coefficients.iter().rev().fold(0.0, |sum, c| sum * u + c)
-}
-
 impl FloatMaths for Polynomials {
     const NAME: &'static str = "float32";
+    const REST_BITS: u32 = 8;
 
     #[inline(always)]
     fn root(v: f32) -> f32 {
         hardware_root::root(v)
     }
 
-    /// Within 3e-7.
+    #[inline(always)]
+    fn root_of_words(upper: i32, lower: u32) -> f32 {
+        hardware_root::root_of_words(upper, lower)
+    }
+
+    /// Within 1.7e-7 on [−1, 1], found at every float there.
     #[inline(always)]
     fn double_arc_tangent(t: f32) -> f32 {
-        t * polynomial(&ARC_TANGENT, t * t)
+        ARC_TANGENT.odd_beyond_double(t)
     }
 
-    /// Within 2.5e-7.
+    /// Within 2.6e-7 on [0, tan 22.5°], found at every float there.
     #[inline(always)]
     fn quadruple_arc_tangent(t: f32) -> f32 {
-        t * polynomial(&KNEE_ARC_TANGENT, t * t)
+        KNEE_ARC_TANGENT.odd(t)
     }
 
-    /// Within 1e-7.
+    /// Within 9e-8 on [−π, π], found at every float there.
     fn sin_cos(angle: f32) -> (f32, f32) {
         // The nearest quarter turn, and the rest within ±π/4.
         let turned = angle * FRAC_2_PI;
@@ -61,28 +66,30 @@ mod tests {
     use super::*;
     use core::f32::consts::{FRAC_PI_8, PI};
 
-    /// The largest error over every `step`th float of [0, end] and its negative; and that it is no less than half of
-    /// the bound, which would be a bound with too much slack.
+    /// The largest error over every `step`th float of [0, end] and its negative, or over each if `TOEHOLD_LONG` is set;
+    /// and that it is no less than half of the bound, which would be a bound with too much slack.
     fn worst(end: f32, step: usize, error: impl Fn(f32) -> f64, bound: f64) {
+        let step = if std::env::var_os("TOEHOLD_LONG").is_some() { 1 } else { step };
         let mut worst = 0.0f64;
         for bits in (0..=end.to_bits()).step_by(step) {
             let t = f32::from_bits(bits);
             worst = worst.max(error(t)).max(error(-t));
         }
+        std::println!("{worst:e}");
         assert!(worst <= bound && worst > bound / 2.0, "{worst:e} for {bound:e}");
     }
 
     #[test]
     fn double_arc_tangent_keeps_its_bound() {
         let error = |t| f64::from(Polynomials::double_arc_tangent(t)) - 2.0 * f64::from(t).atan();
-        worst(1.0, 97, |t| error(t).abs(), 3e-7);
+        worst(1.0, 97, |t| error(t).abs(), 1.7e-7);
     }
 
     #[test]
     fn quadruple_arc_tangent_keeps_its_bound() {
         let error =
             |t: f32| f64::from(Polynomials::quadruple_arc_tangent(t.abs())) - 4.0 * f64::from(t.abs()).atan();
-        worst(FRAC_PI_8.tan(), 97, |t| error(t).abs(), 3e-7);
+        worst(FRAC_PI_8.tan(), 97, |t| error(t).abs(), 2.6e-7);
     }
 
     #[test]
@@ -92,6 +99,6 @@ mod tests {
             let (want_sine, want_cosine) = f64::from(angle).sin_cos();
             (f64::from(sine) - want_sine).abs().max((f64::from(cosine) - want_cosine).abs())
         };
-        worst(PI, 97, error, 1e-7);
+        worst(PI, 97, error, 9e-8);
     }
 }
