@@ -218,6 +218,7 @@ macro_rules! channel_while_compiling {
 channel_while_compiling! {
     #[cfg(feature = "fixed16")] [] crate::Fixed16;
     #[cfg(feature = "fixed32")] [] crate::Fixed32;
+    #[cfg(feature = "short32")] [] crate::Short32;
     #[cfg(any(feature = "float32", feature = "coarse"))]
     [M: crate::number::float::FloatMaths,] crate::number::float::Float<M>;
 }

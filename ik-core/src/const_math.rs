@@ -39,7 +39,7 @@ pub(crate) const fn nearest_i32(v: f64) -> i32 {
 }
 
 /// The least and the largest integer within a range; if it holds none, the nearest to its lower end twice.
-#[cfg(any(feature = "fixed16", feature = "fixed32"))]
+#[cfg(any(feature = "fixed16", feature = "fixed32", feature = "short32"))]
 pub(crate) const fn inward(least: f64, most: f64) -> [i32; 2] {
     let (mut low, mut high) = (nearest_i32(least), nearest_i32(most));
     if (low as f64) < least {
@@ -52,7 +52,13 @@ pub(crate) const fn inward(least: f64, most: f64) -> [i32; 2] {
 }
 
 /// 2^exponent.
-#[cfg(any(feature = "float32", feature = "coarse", feature = "fixed16", feature = "fixed32"))]
+#[cfg(any(
+    feature = "float32",
+    feature = "coarse",
+    feature = "fixed16",
+    feature = "fixed32",
+    feature = "short32"
+))]
 pub(crate) const fn power_of_two(exponent: i32) -> f64 {
     let mut value = 1.0;
     let mut left = exponent;
@@ -68,7 +74,7 @@ pub(crate) const fn power_of_two(exponent: i32) -> f64 {
 }
 
 /// arctan t for 0 ≤ t ≤ 2, by two halvings of the angle and its power series; within 1e-15.
-#[cfg(any(feature = "fixed16", feature = "fixed32"))]
+#[cfg(any(feature = "fixed16", feature = "fixed32", feature = "short32"))]
 pub(crate) const fn arc_tangent(t: f64) -> f64 {
     let half = t / (1.0 + square_root(1.0 + t * t));
     let quarter = half / (1.0 + square_root(1.0 + half * half));
@@ -117,7 +123,7 @@ mod tests {
         assert_eq!(square_root(-1.0), 0.0);
     }
 
-    #[cfg(any(feature = "fixed16", feature = "fixed32"))]
+    #[cfg(any(feature = "fixed16", feature = "fixed32", feature = "short32"))]
     #[test]
     fn arc_tangent_agrees_with_the_standard_library() {
         for i in 0..=2000 {
@@ -136,7 +142,7 @@ mod tests {
         assert_eq!(half_sine_square(0.0), 0.0);
     }
 
-    #[cfg(any(feature = "fixed16", feature = "fixed32"))]
+    #[cfg(any(feature = "fixed16", feature = "fixed32", feature = "short32"))]
     #[test]
     fn ends_of_a_range_are_rounded_inward() {
         assert_eq!(inward(-2.6, 2.6), [-2, 2]);

@@ -58,6 +58,7 @@
 //! | `Float32` | `float32` | `f32`, polynomials made for legs | chips with an FPU |
 //! | `Coarse` | `coarse` | `f32`, micromath's functions | a yardstick; where millimetres do not matter |
 //! | `Fixed32` | `fixed32` | `fixed`'s `I16F16` mm and `I0F32` turns | chips without an FPU |
+//! | `Short32` | `short32` | the same | chips without a divider or a long multiplication (Cortex-M0, M0+) |
 //! | `Fixed16` | `fixed16` | `fixed`'s `I10F6` mm and `I0F16` turns | chips without a divider or a long multiplication (Cortex-M0, M0+) |
 //!
 //! Same input, same bits, on every machine: no function of the standard library's maths is used.
@@ -66,7 +67,7 @@
 //!
 //! | feature | what it adds |
 //! | --- | --- |
-//! | `float32`, `fixed32` (on by default), `fixed16`, `coarse` | a number system each |
+//! | `float32`, `fixed32` (on by default), `short32`, `fixed16`, `coarse` | a number system each |
 //! | `heapless` | `robot`: the legs of a robot without allocation |
 //! | `queue` | `queue`: foot targets from the main loop to the frame interrupt; needs atomic loads and stores (on RV32IMC switch on one of heapless's `portable-atomic` features) |
 //! | `hal` | [`output::hal`]: servos through embedded-hal 1.0, on any PWM channel or an expander behind I²C |
@@ -125,5 +126,7 @@ pub use number::Fixed32;
 #[cfg(feature = "float32")]
 pub use number::Float32;
 pub use number::Number;
+#[cfg(feature = "short32")]
+pub use number::Short32;
 pub use output::{Counting, Expander, OutputError, Timer};
 pub use servo::{Command, Curve, MeasuredServo, Pulse, Servo, ServoError, ServoSpec, Turns};

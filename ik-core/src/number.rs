@@ -12,10 +12,14 @@ mod fixed16;
 mod fixed32;
 #[cfg(any(feature = "float32", feature = "coarse"))]
 pub mod float;
-#[cfg(any(feature = "fixed16", feature = "fixed32"))]
+#[cfg(any(feature = "fixed16", feature = "fixed32", feature = "short32"))]
 mod line;
-#[cfg(feature = "fixed16")]
+#[cfg(any(feature = "fixed16", feature = "short32"))]
 mod narrow;
+#[cfg(any(feature = "fixed32", feature = "short32"))]
+mod series;
+#[cfg(feature = "short32")]
+mod short32;
 
 #[cfg(feature = "fixed16")]
 pub use fixed16::{Fixed16, Fixed16Scale, Fixed16Unit};
@@ -27,6 +31,8 @@ pub use float::Coarse;
 pub use float::Float32;
 #[cfg(any(feature = "fixed16", feature = "fixed32"))]
 pub use line::FixedLine;
+#[cfg(feature = "short32")]
+pub use short32::{Short32, ShortScale, ShortUnit};
 
 use crate::limits::Range;
 use core::fmt::Debug;
@@ -111,9 +117,9 @@ pub trait Number: Copy + Debug + PartialEq + 'static {
 
     /// The scale for a leg that reaches `radius_mm` from its origin; `None` if it is too long or too short.
     fn scale_for(radius_mm: f64) -> Option<Self::Scale>;
-    /// The scale for a leg that reaches `radius_mm` from its origin and whose thigh's vector has a norm of up to
-    /// `norm_mm`; for number systems that spend the bits which a short norm leaves on ratios.
-    fn scale_for_links(radius_mm: f64, _norm_mm: f64) -> Option<Self::Scale> {
+    /// The scale for a leg that reaches `radius_mm` from its origin, whose thigh's vector has a norm of up to `norm_mm` and
+    /// whose ratios are `lean` at the most; for number systems that spend the bits which these leave on ratios.
+    fn scale_for_links(radius_mm: f64, _norm_mm: f64, _lean: f64) -> Option<Self::Scale> {
         Self::scale_for(radius_mm)
     }
     /// mm, rounded.

@@ -16,7 +16,7 @@ use ik_core::output::Output as _;
 use ik_core::servo::MOST_POINTS;
 use ik_core::{
     Channel, Coarse, Counts, Curve, Dimensions, Fixed16, Fixed32, Float32, Foot, Hip, Joints, Leg, Limits,
-    Number, Outcome, Parallelogram, RollHip, YawHip,
+    Number, Outcome, Parallelogram, RollHip, Short32, YawHip,
 };
 use std::fmt;
 
@@ -68,10 +68,11 @@ impl fmt::Display for Refused {
 impl std::error::Error for Refused {}
 
 /// The number systems, in the order of reports: those of firmware, then the yardstick of the method.
-pub const NUMBERS: [&str; 5] = [
+pub const NUMBERS: [&str; 6] = [
     NumberSystem::Float32.name(),
     NumberSystem::Coarse.name(),
     NumberSystem::Fixed32.name(),
+    NumberSystem::Short32.name(),
     NumberSystem::Fixed16.name(),
     Float64::NAME,
 ];
@@ -89,6 +90,7 @@ pub fn in_every_number(robot: &Robot, kind: usize) -> Result<Vec<Box<dyn Machine
         of_kind::<Float32>(robot, kind),
         of_kind::<Coarse>(robot, kind),
         of_kind::<Fixed32>(robot, kind),
+        of_kind::<Short32>(robot, kind),
         of_kind::<Fixed16>(robot, kind),
         of_kind::<Float64>(robot, kind),
     ];

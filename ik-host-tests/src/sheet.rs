@@ -5,7 +5,7 @@
 //! | table | keys |
 //! | --- | --- |
 //! | (top) | `name`; `about` (optional) |
-//! | `[firmware]` | `numbers`: which of `float32`, `coarse`, `fixed32`, `fixed16` the firmware uses; `frame_hz` (optional, as `output.frame_hz`) |
+//! | `[firmware]` | `numbers`: which of `float32`, `coarse`, `fixed32`, `short32`, `fixed16` the firmware uses; `frame_hz` (optional, as `output.frame_hz`) |
 //! | `[output]`, `kind = "timer"` | `clock_hz`, `frame_hz`; optional `counter_bits` (16), `prescaler` (the finest that fits a frame) |
 //! | `[output]`, `kind = "expander"` | `oscillator_hz`, `resolution_bits`, `frame_hz` |
 //! | `[leg_kind.NAME]` | `hip = "yaw"` with `coxa_mm`, `femur_mm`, `tibia_mm`, or `hip = "roll"` with `hip_offset_mm`, `thigh_mm`, `shank_mm`; `knee_bends`; optional `knee_drive` (`"direct"`, or `"parallelogram"`) |

@@ -410,7 +410,7 @@ const FAULTS: &[Fault] = faults![
     CULVERT: "numbers = [\"fixed32\"]" => "numbers = \"fixed32\"", at "numbers = \"",
         "firmware.numbers": "must be a list", "numbers = [\"fixed32\"]";
     CULVERT: "numbers = [\"fixed32\"]" => "numbers = [\"fixed23\"]", at "fixed23",
-        "firmware.numbers": "must be \"float32\" or \"coarse\" or \"fixed32\" or \"fixed16\"", "did you mean \"fixed32\"?";
+        "firmware.numbers": "must be \"float32\" or \"coarse\" or \"fixed32\" or \"short32\" or \"fixed16\"", "did you mean \"fixed32\"?";
     CULVERT: "numbers = [\"fixed32\"]" => "numbers = [\"coarse\", \"coarse\"]", at "\"coarse\", ",
         "firmware.numbers": "named twice", "once";
     CULVERT: "frame_hz = 50" => "frame_hz = 5", at "frame_hz = 5\n",

@@ -67,7 +67,7 @@ macro_rules! constants {
         let (offset, thigh, shank) = (dimensions.offset_mm(), dimensions.thigh_mm(), dimensions.shank_mm());
         let radius = dimensions.radius_mm();
         let reach = thigh + shank;
-        match <$number>::scale_for_links(radius, reach * reach / (2.0 * shank)) {
+        match <$number>::scale_for_links(radius, reach * reach / (2.0 * shank), reach / (2.0 * shank)) {
             None => Err(if radius < 1.0 {
                 $crate::geometry::GeometryError::TooShort
             } else {

@@ -85,10 +85,10 @@ const SWING_BITS: u32 = 30;
 impl Fixed16 {
     /// For links of 8:1.
     pub(crate) const fn scale_for(radius_mm: f64) -> Option<Fixed16Scale> {
-        Self::scale_for_links(radius_mm, 4.5 * radius_mm)
+        Self::scale_for_links(radius_mm, 4.5 * radius_mm, 4.5)
     }
 
-    pub(crate) const fn scale_for_links(radius_mm: f64, norm_mm: f64) -> Option<Fixed16Scale> {
+    pub(crate) const fn scale_for_links(radius_mm: f64, norm_mm: f64, _: f64) -> Option<Fixed16Scale> {
         // Negated so that NaN is refused.
         if !(radius_mm >= 1.0 && radius_mm <= 453.0) {
             return None;
@@ -206,8 +206,8 @@ impl Number for Fixed16 {
     fn scale_for(radius_mm: f64) -> Option<Fixed16Scale> {
         Fixed16::scale_for(radius_mm)
     }
-    fn scale_for_links(radius_mm: f64, norm_mm: f64) -> Option<Fixed16Scale> {
-        Fixed16::scale_for_links(radius_mm, norm_mm)
+    fn scale_for_links(radius_mm: f64, norm_mm: f64, lean: f64) -> Option<Fixed16Scale> {
+        Fixed16::scale_for_links(radius_mm, norm_mm, lean)
     }
     fn lean_from(value: f64, scale: Fixed16Scale) -> i32 {
         Fixed16::lean_from(value, scale)
@@ -480,7 +480,7 @@ mod tests {
     use crate::{Bend, Dimensions, GeometryError, Leg, Limits, RollHip, YawHip};
 
     fn scale() -> Fixed16Scale {
-        Fixed16::scale_for_links(232.5, 188.8).expect("a scale")
+        Fixed16::scale_for_links(232.5, 188.8, 0.9).expect("a scale")
     }
 
     #[test]

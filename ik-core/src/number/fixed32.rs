@@ -71,7 +71,7 @@ impl Fixed32 {
         Some(FixedScale { shift, factor: 1 << shift, limit: COORD_LIMIT >> shift })
     }
 
-    pub(crate) const fn scale_for_links(radius_mm: f64, _: f64) -> Option<FixedScale> {
+    pub(crate) const fn scale_for_links(radius_mm: f64, _: f64, _: f64) -> Option<FixedScale> {
         Self::scale_for(radius_mm)
     }
 

@@ -130,7 +130,7 @@ impl<M: FloatMaths> Float<M> {
         })
     }
 
-    pub(crate) const fn scale_for_links(radius_mm: f64, _: f64) -> Option<FloatScale> {
+    pub(crate) const fn scale_for_links(radius_mm: f64, _: f64, _: f64) -> Option<FloatScale> {
         Self::scale_for(radius_mm)
     }
 

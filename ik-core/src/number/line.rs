@@ -38,6 +38,18 @@ impl FixedLine {
         rise.wrapping_add(self.start).wrapping_shr(self.shift)
     }
 
+    /// Where there is none, from halves; `angle` is in 2^-32 turns. Up to three of the line's smallest parts less than
+    /// [`at`](Self::at).
+    #[cfg(feature = "short32")]
+    #[inline(always)]
+    pub(super) const fn at_halves(self, angle: i32) -> i32 {
+        let ([whole, rest], [high, low]) =
+            ([self.slope >> 16, self.slope & 0xFFFF], [angle >> 16, angle & 0xFFFF]);
+        let crosses = (high.wrapping_mul(rest) >> 16).wrapping_add(low.wrapping_mul(whole) >> 16);
+        let rise = high.wrapping_mul(whole).wrapping_add(crosses);
+        rise.wrapping_add(self.start).wrapping_shr(self.shift)
+    }
+
     /// Where there is none; `angle` is in 2^-16 turns. The same number as [`at`](Self::at) of it.
     #[cfg(feature = "fixed16")]
     #[inline(always)]

@@ -1,4 +1,4 @@
-//! What [`Fixed16`](super::Fixed16) and [`Lean32`](super::Lean32) share: arithmetic for chips that multiply 32 bits by
+//! What [`Fixed16`](super::Fixed16) and [`Short32`](super::Short32) share: arithmetic for chips that multiply 32 bits by
 //! 32 bits into 32, and have neither a divider nor a count of leading zeros (Cortex-M0 and M0+).
 
 pub(super) mod chord;

@@ -40,13 +40,15 @@ pub enum NumberSystem {
     Coarse,
     /// 32-bit fixed point.
     Fixed32,
+    /// 32-bit fixed point without long multiplication or division.
+    Short32,
     /// 16-bit fixed point, for legs of up to 453 mm.
     Fixed16,
 }
 
 impl NumberSystem {
     /// Every number system, in the order in which help lists them.
-    pub const ALL: [Self; 4] = [Self::Float32, Self::Coarse, Self::Fixed32, Self::Fixed16];
+    pub const ALL: [Self; 5] = [Self::Float32, Self::Coarse, Self::Fixed32, Self::Short32, Self::Fixed16];
 
     /// Its name in a sheet.
     pub const fn name(self) -> &'static str {
@@ -54,6 +56,7 @@ impl NumberSystem {
             Self::Float32 => "float32",
             Self::Coarse => "coarse",
             Self::Fixed32 => "fixed32",
+            Self::Short32 => "short32",
             Self::Fixed16 => "fixed16",
         }
     }

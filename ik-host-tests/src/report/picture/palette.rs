@@ -43,16 +43,17 @@ pub(super) const SCALE: [RGBColor; 8] = [
 ];
 
 /// By number system, in the order of [`crate::machine::NUMBERS`].
-pub(super) const NUMBERS: [RGBColor; 5] = [
+pub(super) const NUMBERS: [RGBColor; 6] = [
     RGBColor(0x00, 0x72, 0xb2),
     RGBColor(0xd5, 0x5e, 0x00),
     RGBColor(0x00, 0x9e, 0x73),
+    RGBColor(0x7a, 0x68, 0x00),
     RGBColor(0x8a, 0x4f, 0x9e),
     RGBColor(0xb9, 0xbe, 0xc4),
 ];
 
 /// What stands for a colour where the screen is dark.
-const DARK: [(RGBColor, &str); 31] = [
+const DARK: [(RGBColor, &str); 32] = [
     (INK, "#d5dbe1"),
     (AXIS, "#8b949e"),
     (GRID, "#2b3138"),
@@ -82,19 +83,21 @@ const DARK: [(RGBColor, &str); 31] = [
     (NUMBERS[0], "#56b4e9"),
     (NUMBERS[1], "#f08a4b"),
     (NUMBERS[2], "#2fc79b"),
-    (NUMBERS[3], "#c79bd6"),
-    (NUMBERS[4], "#5c646d"),
+    (NUMBERS[3], "#cdbb4a"),
+    (NUMBERS[4], "#c79bd6"),
+    (NUMBERS[5], "#5c646d"),
 ];
 
 /// Lines that are dashed, in drawing units.
-const DASHED: [(RGBColor, &str); 7] = [
+const DASHED: [(RGBColor, &str); 8] = [
     (LINKS_REACH, "28 18"),
     (KNEE_REACH, "6 14"),
     (HIP_AXIS, "44 12 8 12"),
     (ALLOWED, "20 14"),
     (NUMBERS[1], "40 14 8 14"),
     (NUMBERS[0], "22 16"),
-    (NUMBERS[3], "10 10"),
+    (NUMBERS[3], "30 8 8 8 8 8"),
+    (NUMBERS[4], "10 10"),
 ];
 
 /// A colour as plotters writes it into a drawing.
