@@ -15,7 +15,7 @@ mod numbers;
 mod targets;
 
 use ik_core::drive::Drive;
-use ik_core::{Coarse, Counts, End, Fixed32, Float32, Hip, Joints, Limb, Outcome};
+use ik_core::{Coarse, Counts, End, Fixed16, Fixed32, Float32, Hip, Joints, Limb, Outcome, Short32};
 
 use limbs::InFlash;
 use numbers::Bits;
@@ -62,6 +62,8 @@ pub enum Event {
 pub fn go_through(tell: &mut dyn FnMut(Event)) {
     both_legs::<Float32>(tell);
     both_legs::<Fixed32>(tell);
+    both_legs::<Short32>(tell);
+    both_legs::<Fixed16>(tell);
     both_legs::<Coarse>(tell);
 }
 
@@ -135,10 +137,10 @@ mod tests {
     }
 
     #[test]
-    fn five_legs_in_three_number_systems() {
+    fn five_legs_in_five_number_systems() {
         let titles: std::collections::BTreeSet<_> =
             runs().iter().map(|&(leg, numbers, _)| (leg, numbers)).collect();
-        assert_eq!(titles.len(), 5 * 3);
+        assert_eq!(titles.len(), 5 * 5);
     }
 
     #[test]
@@ -162,7 +164,8 @@ mod tests {
                 assert!(held >= 80, "{leg}, {numbers}: {held} held");
             }
             // Infinity and NaN: five targets; fixed point has neither.
-            assert_eq!(not_finite, if numbers == Fixed32::NAME { 0 } else { 5 }, "{leg}, {numbers}");
+            let fixed = [Fixed32::NAME, Short32::NAME, Fixed16::NAME].contains(&numbers);
+            assert_eq!(not_finite, if fixed { 0 } else { 5 }, "{leg}, {numbers}");
         }
     }
 

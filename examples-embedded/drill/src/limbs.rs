@@ -5,8 +5,8 @@
 
 use ik_core::number::Number;
 use ik_core::{
-    Bend, Channel, Coarse, Curve, Dimensions, Fixed32, Float32, Foot, Leg, Limb, Limits, MeasuredServo,
-    Mounting, Parallelogram, RollHip, ServoSpec, Side, Timer, Turns, YawHip,
+    Bend, Channel, Coarse, Curve, Dimensions, Fixed16, Fixed32, Float32, Foot, Leg, Limb, Limits, MeasuredServo,
+    Mounting, Parallelogram, RollHip, ServoSpec, Short32, Side, Timer, Turns, YawHip,
 };
 
 /// An impossible leg, range or servo does not compile: the message becomes a compile error.
@@ -122,6 +122,10 @@ const fn float_mm(mm: i32) -> f32 {
     mm as f32
 }
 
+const fn short_mm(mm: i32) -> <Fixed16 as Number>::Length {
+    <Fixed16 as Number>::Length::from_bits((mm * 64) as i16)
+}
+
 const fn fixed_mm(mm: i32) -> <Fixed32 as Number>::Length {
     <Fixed32 as Number>::Length::from_bits(mm << 16)
 }
@@ -129,3 +133,5 @@ const fn fixed_mm(mm: i32) -> <Fixed32 as Number>::Length {
 in_flash!(Float32, float_mm);
 in_flash!(Coarse, float_mm);
 in_flash!(Fixed32, fixed_mm);
+in_flash!(Short32, fixed_mm);
+in_flash!(Fixed16, short_mm);

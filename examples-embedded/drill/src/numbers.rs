@@ -1,7 +1,7 @@
 //! A number system's lengths and angles as bits, so that "the same" means the same bits.
 
 use ik_core::number::float::{Float, FloatMaths};
-use ik_core::{Fixed32, Number};
+use ik_core::{Fixed16, Fixed32, Number, Short32};
 
 use crate::targets::Coordinate;
 
@@ -41,6 +41,47 @@ impl Bits for Fixed32 {
         match coordinate {
             Coordinate::Steps(steps) => {
                 Self::Length::from_bits(steps * ((1 << 16) / Coordinate::STEPS_PER_MM))
+            }
+            Coordinate::Greatest | Coordinate::Infinite => Self::Length::MAX,
+            Coordinate::Least | Coordinate::NotANumber => Self::Length::MIN,
+        }
+    }
+
+    fn length_bits(length: Self::Length) -> u32 {
+        length.to_bits() as u32
+    }
+
+    fn angle_bits(angle: Self::Angle) -> u32 {
+        angle.to_bits() as u32
+    }
+}
+
+impl Bits for Short32 {
+    fn coordinate(coordinate: Coordinate) -> Self::Length {
+        match coordinate {
+            Coordinate::Steps(steps) => {
+                Self::Length::from_bits(steps * ((1 << 16) / Coordinate::STEPS_PER_MM))
+            }
+            Coordinate::Greatest | Coordinate::Infinite => Self::Length::MAX,
+            Coordinate::Least | Coordinate::NotANumber => Self::Length::MIN,
+        }
+    }
+
+    fn length_bits(length: Self::Length) -> u32 {
+        length.to_bits() as u32
+    }
+
+    fn angle_bits(angle: Self::Angle) -> u32 {
+        angle.to_bits() as u32
+    }
+}
+
+impl Bits for Fixed16 {
+    fn coordinate(coordinate: Coordinate) -> Self::Length {
+        match coordinate {
+            Coordinate::Steps(steps) => {
+                // Its own step; what is beyond ±512 mm is at the end of the range.
+                Self::Length::from_bits(steps.clamp(i16::MIN.into(), i16::MAX.into()) as i16)
             }
             Coordinate::Greatest | Coordinate::Infinite => Self::Length::MAX,
             Coordinate::Least | Coordinate::NotANumber => Self::Length::MIN,

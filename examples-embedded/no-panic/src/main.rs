@@ -37,6 +37,8 @@ pub extern "C" fn _start() -> ! {
     calls::all::<ik_core::Coarse>();
     #[cfg(feature = "fixed32")]
     calls::all::<ik_core::Fixed32>();
+    #[cfg(feature = "short32")]
+    calls::all::<ik_core::Short32>();
     #[cfg(feature = "fixed16")]
     calls::all::<ik_core::Fixed16>();
     #[cfg(feature = "hal")]

@@ -69,6 +69,8 @@ opaque! {
 }
 #[cfg(feature = "fixed32")]
 opaque! { [] ik_core::Fixed32, {}; }
+#[cfg(feature = "short32")]
+opaque! { [] ik_core::Short32, {}; }
 #[cfg(feature = "fixed16")]
 opaque! { [] ik_core::Fixed16, {}; }
 
@@ -76,7 +78,7 @@ opaque! { [] ik_core::Fixed16, {}; }
 pub fn every_primitive<N: Opaque>() {
     N::own();
     use_up(N::scale_for(number()));
-    let Some(scale) = N::scale_for_links(number(), number()) else { return };
+    let Some(scale) = N::scale_for_links(number(), number(), number()) else { return };
     let ratio = || N::ratio_from(number());
     let product = || N::product_from_mm(number(), scale);
     let square = || N::square_from_mm2(number(), scale);

@@ -1,8 +1,8 @@
 //! ik-core's legs as constants, one line per number system.
 
 use ik_core::{
-    Bend, Channel, Coarse, Dimensions, Fixed32, Float32, Foot, Hip, Leg, Limb, Limits, Mounting, Number,
-    RollHip, ServoSpec, Side, Timer, Turns, YawHip,
+    Bend, Channel, Coarse, Dimensions, Fixed16, Fixed32, Float32, Foot, Hip, Leg, Limb, Limits, Mounting,
+    Number, RollHip, ServoSpec, Short32, Side, Timer, Turns, YawHip,
 };
 use targets::{PublishedLeg, ROLL_HIP, STEPS_PER_MM, YAW_HIP};
 
@@ -103,6 +103,8 @@ macro_rules! in_flash {
 in_flash!(Float32, float_length, f32::to_bits);
 in_flash!(Coarse, float_length, f32::to_bits);
 in_flash!(Fixed32, fixed32_length, |angle: fixed::types::I0F32| angle.to_bits() as u32);
+in_flash!(Short32, fixed32_length, |angle: fixed::types::I0F32| angle.to_bits() as u32);
+in_flash!(Fixed16, fixed16_length, |angle: fixed::types::I0F16| angle.to_bits() as u32);
 
 const fn float_length(steps: i32) -> f32 {
     steps as f32 / STEPS_PER_MM as f32
@@ -110,4 +112,9 @@ const fn float_length(steps: i32) -> f32 {
 
 const fn fixed32_length(steps: i32) -> fixed::types::I16F16 {
     fixed::types::I16F16::from_bits(steps * ((1 << 16) / STEPS_PER_MM))
+}
+
+const fn fixed16_length(steps: i32) -> fixed::types::I10F6 {
+    // A step is the same 1/64 mm; every target lies within ±512 mm.
+    fixed::types::I10F6::from_bits((steps * (64 / STEPS_PER_MM)) as i16)
 }

@@ -24,7 +24,7 @@ pub use ours::Ours;
 pub use ours_to_ticks::OursToTicks;
 pub use textbook::{OnCordic, OnLibm, OnMicromath, Textbook};
 
-use ik_core::{Coarse, Fixed32, Float32, RollHip, YawHip};
+use ik_core::{Coarse, Fixed16, Fixed32, Float32, RollHip, Short32, YawHip};
 
 /// Something that is done with every contender.
 pub trait Visit {
@@ -53,6 +53,10 @@ contenders! {
     Ours<YawHip, Float32> => "float32-yaw",
     Ours<RollHip, Fixed32> => "fixed32-roll",
     Ours<YawHip, Fixed32> => "fixed32-yaw",
+    Ours<RollHip, Short32> => "short32-roll",
+    Ours<YawHip, Short32> => "short32-yaw",
+    Ours<RollHip, Fixed16> => "fixed16-roll",
+    Ours<YawHip, Fixed16> => "fixed16-yaw",
     Ours<RollHip, Coarse> => "coarse-roll",
     Ours<YawHip, Coarse> => "coarse-yaw",
     Textbook<RollHip, OnLibm> => "textbook-libm-roll",
@@ -67,6 +71,10 @@ contenders! {
     OursToTicks<YawHip, Float32> => "float32-yaw-ticks",
     OursToTicks<RollHip, Fixed32> => "fixed32-roll-ticks",
     OursToTicks<YawHip, Fixed32> => "fixed32-yaw-ticks",
+    OursToTicks<RollHip, Short32> => "short32-roll-ticks",
+    OursToTicks<YawHip, Short32> => "short32-yaw-ticks",
+    OursToTicks<RollHip, Fixed16> => "fixed16-roll-ticks",
+    OursToTicks<YawHip, Fixed16> => "fixed16-yaw-ticks",
     OursToTicks<RollHip, Coarse> => "coarse-roll-ticks",
     OursToTicks<YawHip, Coarse> => "coarse-yaw-ticks",
 }
@@ -78,9 +86,11 @@ mod tests {
 
     /// How far a contender's foot may be off over the published targets, mm: by the first part of its name. What
     /// ik-core is worth is the survey's business; here it only must not be nonsense.
-    const OFF_MM: [(&str, f64); 7] = [
+    const OFF_MM: [(&str, f64); 9] = [
         ("float32-", 1e-3),
         ("fixed32-", 1e-3),
+        ("short32-", 1e-3),
+        ("fixed16-", 0.05),
         ("coarse-", 3.0),
         ("textbook-libm-", 7e-5),
         // Its root is off by up to 6 %.

@@ -1,6 +1,6 @@
 //! What an image has to log about a leg, computed here by the same code; and the words that go into its memory.
 
-use ik_core::{Channel, Coarse, Fixed16, Fixed32, Float32, Foot, Parallelogram, RollHip, YawHip};
+use ik_core::{Channel, Coarse, Fixed16, Fixed32, Float32, Foot, Parallelogram, RollHip, Short32, YawHip};
 use robot::{Bits, Blocks, BuildDrive, BuildHip, Header, TARGETS_AT, WORDS, Writer, answer, ask};
 
 use crate::job::{Hip, Leg};
@@ -34,6 +34,7 @@ pub fn expected(leg: &Leg, number: &str, targets: &[[f64; 3]]) -> Result<Expecte
         "float32" => in_number::<Float32>(leg, number, targets),
         "coarse" => in_number::<Coarse>(leg, number, targets),
         "fixed32" => in_number::<Fixed32>(leg, number, targets),
+        "short32" => in_number::<Short32>(leg, number, targets),
         "fixed16" => in_number::<Fixed16>(leg, number, targets),
         _ => Err(format!("robot-cost knows no number system {number}")),
     }

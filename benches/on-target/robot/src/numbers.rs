@@ -2,7 +2,7 @@
 
 use fixed::types::{I10F6, I16F16};
 use ik_core::number::float::{Float, FloatMaths};
-use ik_core::{Fixed16, Fixed32, Number};
+use ik_core::{Fixed16, Fixed32, Number, Short32};
 
 /// A number system whose values can be told bit for bit.
 pub trait Bits: Number {
@@ -29,6 +29,20 @@ impl<M: FloatMaths> Bits for Float<M> {
 }
 
 impl Bits for Fixed32 {
+    fn length_from(bits: u32) -> I16F16 {
+        I16F16::from_bits(bits as i32)
+    }
+
+    fn length_bits(length: I16F16) -> u32 {
+        length.to_bits() as u32
+    }
+
+    fn angle_bits(angle: Self::Angle) -> u32 {
+        angle.to_bits() as u32
+    }
+}
+
+impl Bits for Short32 {
     fn length_from(bits: u32) -> I16F16 {
         I16F16::from_bits(bits as i32)
     }

@@ -1,0 +1,5 @@
+//! ik-core, Fixed16, yaw-hip leg, to timer ticks.
+#![no_std]
+#![no_main]
+
+image::measure!(contenders::OursToTicks<ik_core::YawHip, ik_core::Fixed16>);
