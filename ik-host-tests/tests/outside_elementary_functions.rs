@@ -6,7 +6,7 @@
 mod common;
 
 use common::published::Table;
-use ik_core::{Coarse, Fixed32, Float32, Number};
+use ik_core::{Coarse, Fixed32, Float32, Number, Short32};
 use ik_host_tests::numbers::Float64;
 use std::f64::consts::TAU;
 
@@ -72,6 +72,11 @@ fn every_row_holds_in_single_precision() {
 #[test]
 fn every_row_holds_in_fixed_point() {
     table_holds::<Fixed32>(3e-7, 6e-9);
+}
+
+#[test]
+fn every_row_holds_in_short_fixed_point() {
+    table_holds::<Short32>(3e-7, 1.2e-8);
 }
 
 #[test]

@@ -10,7 +10,7 @@ use common::effort::rounds;
 use common::legs::Sweep;
 use ik_core::{
     Angle, Channel, Coarse, Counting, Curve, Fixed16, Fixed32, Float32, MeasuredServo, Number, Servo,
-    ServoError, ServoSpec, Timer, Turns,
+    ServoError, ServoSpec, Short32, Timer, Turns,
 };
 use ik_host_tests::numbers::Float64;
 
@@ -94,6 +94,7 @@ fn pulses_of_measured_servos_are_right_too() {
         check::<Float32>(&servo, &mut sweep, 3e-7);
         check::<Coarse>(&servo, &mut sweep, 3e-7);
         check::<Fixed32>(&servo, &mut sweep, 3e-8);
+        check::<Short32>(&servo, &mut sweep, 3e-8);
         check::<Fixed16>(&servo, &mut sweep, 1.0 / 65_536.0);
         check::<Float64>(&servo, &mut sweep, 1e-14);
     }
@@ -161,6 +162,7 @@ fn room_to_spare_changes_no_count_and_no_angle() {
     }
     check::<Float32>();
     check::<Fixed32>();
+    check::<Short32>();
     check::<Fixed16>();
 }
 
@@ -197,6 +199,7 @@ fn constant_channels_are_the_same() {
     }
     check!(Float32);
     check!(Fixed32);
+    check!(Short32);
     check!(Fixed16);
 }
 
@@ -226,6 +229,7 @@ fn two_points_are_a_straight_servo() {
     }
     check::<Float32>(1);
     check::<Fixed32>(1);
+    check::<Short32>(1);
     check::<Fixed16>(1);
 }
 

@@ -8,7 +8,7 @@ use common::legs::Sweep;
 use ik_core::drive::Drive;
 use ik_core::{
     Bend, Channel, Coarse, Dimensions, Fixed16, Fixed32, Float32, Foot, Hip, Joints, Leg, Limb, Limits,
-    Mounting, Number, Outcome, Servo, ServoSpec, Side, Timer, Turns,
+    Mounting, Number, Outcome, Servo, ServoSpec, Short32, Side, Timer, Turns,
 };
 use ik_host_tests::numbers::Float64;
 
@@ -93,7 +93,7 @@ fn a_limb_answers_as_its_leg_and_servos_do() {
                 check::<_, $number>(yaw, limits, &mut sweep, &mut met);
             )*};
         }
-        both!(Float32, Coarse, Fixed32, Fixed16, Float64);
+        both!(Float32, Coarse, Fixed32, Short32, Fixed16, Float64);
     }
     println!("{met:?}");
     let Met { reached, moved, held, not_finite, pulse_held } = met;

@@ -11,7 +11,7 @@ use ik_core::drive::{Drive, Sent};
 use ik_core::limits::LimitsError;
 use ik_core::{
     Angle, Bend, Channel, Coarse, Counts, Dimensions, Fixed16, Fixed32, Float32, Foot, Hip, Joints, Leg,
-    Limb, Limits, Mounting, Number, Outcome, Parallelogram, RollHip, Side, YawHip,
+    Limb, Limits, Mounting, Number, Outcome, Parallelogram, RollHip, Short32, Side, YawHip,
 };
 use ik_host_tests::numbers::Float64;
 use ik_host_tests::reference::leg::distance;
@@ -163,6 +163,7 @@ fn every_number(case: &Case, limits: Limits, foot: [f64; 3]) -> Result<bool, Str
     case.check::<Coarse>(limits, foot)?;
     case.check::<Fixed16>(limits, foot)?;
     case.check::<Fixed32>(limits, foot)?;
+    case.check::<Short32>(limits, foot)?;
     case.check::<Float64>(limits, foot)?;
     case.check::<Float32>(limits, foot)
 }
@@ -234,6 +235,7 @@ fn the_shank_is_counted_as_the_knee_is_and_never_wraps() {
     check::<Float32>(1e-4);
     check::<Coarse>(1e-4);
     check::<Fixed32>(1e-4);
+    check::<Short32>(1e-4);
     check::<Fixed16>(0.02);
     check::<Float64>(1e-9);
 }

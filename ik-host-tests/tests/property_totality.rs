@@ -17,7 +17,7 @@ use std::f64::consts::PI;
 fn length(number: NumberSystem, bits: u64) -> f64 {
     match number {
         NumberSystem::Float32 | NumberSystem::Coarse => f64::from(f32::from_bits((bits >> 32) as u32)),
-        NumberSystem::Fixed32 => f64::from((bits >> 32) as i32) / 65_536.0,
+        NumberSystem::Fixed32 | NumberSystem::Short32 => f64::from((bits >> 32) as i32) / 65_536.0,
         NumberSystem::Float64 => f64::from_bits(bits),
     }
 }

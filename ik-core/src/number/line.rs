@@ -98,12 +98,14 @@ mod tests {
         for (per_turn, at_zero) in LINES {
             let line = FixedLine::from(per_turn, at_zero);
             for step in -32_768..32_768i64 {
-                let angle = (step * 65_536 + (step * step) % 65_536) as i32;
-                let exact = per_turn * f64::from(angle) / 4_294_967_296.0 + at_zero;
-                let off = f64::from(line.at_halves(angle)) - exact;
-                let slack = 0.5 + 3.75 / power_of_two(line.shift as i32);
-                assert!(off.abs() <= slack, "{per_turn} {at_zero} {angle}: off by {off}");
-                most = most.max((off.abs() - 0.5) * power_of_two(line.shift as i32));
+                for rest in [(step * step) % 65_536, 65_535] {
+                    let angle = (step * 65_536 + rest) as i32;
+                    let exact = per_turn * f64::from(angle) / 4_294_967_296.0 + at_zero;
+                    let off = f64::from(line.at_halves(angle)) - exact;
+                    let slack = 0.5 + 3.75 / power_of_two(line.shift as i32);
+                    assert!(off.abs() <= slack, "{per_turn} {at_zero} {angle}: off by {off}");
+                    most = most.max((off.abs() - 0.5) * power_of_two(line.shift as i32));
+                }
             }
         }
         assert!(most > 1.875, "{most}");

@@ -2,8 +2,8 @@
 //! zeros (Cortex-M0 and M0+).
 //!
 //! Lengths and angles are those of [`Fixed32`](super::Fixed32): `fixed`'s `I16F16` mm and `I0F32` fractions of a turn.
-//! Within the solver a length is an `i32` scaled by a power of two, so that the leg's radius comes to 2^28 to 2^29; a
-//! square keeps the upper bits of it, 2^28 of them to the square of the radius or more, and a product is put together
+//! Within the solver a length is an `i32` scaled by a power of two, so that the leg's radius comes to 2.2·10^8 to
+//! 4.4·10^8; a square keeps the upper bits of it, down to 2^-27 of the radius's or less, and a product is put together
 //! from its halves ([`halves`]). Nothing here divides, multiplies into 64 bits or shifts by more than 31 on the way of a
 //! foot in reach.
 //!
@@ -29,7 +29,7 @@ use halves::{Halves, difference_of_products, product, square, sum_of_products, t
 /// | length | `fixed::types::I16F16`, mm |
 /// | angle | `fixed::types::I0F32`, turns; ±180° saturates just inside |
 /// | largest joint error | see the survey of your own leg; below 1.5e-6 rad with knee from 0.1 to 2.6 rad and the foot clear of the hip's axis |
-/// | legs | reach from 1 mm to 8 191 mm |
+/// | legs | reach from 1 mm to 6 683 mm |
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 #[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct Short32;
@@ -42,8 +42,8 @@ pub struct ShortScale {
     shift: u32,
     /// 2^shift.
     factor: i32,
-    /// `I16F16` bits of the working range lie below this.
-    limit: i32,
+    /// `I16F16` bits of the working range lie within ± this.
+    limit: u32,
     /// 30 less the fraction bits of the ratios of the triangle.
     drop: u32,
 }
@@ -65,8 +65,11 @@ impl ShortScale {
 
 /// Fraction bits of `I16F16`.
 const LENGTH_BITS: i32 = 16;
-/// Bits of a coordinate of the working range.
-const COORD_BITS: i32 = 29;
+/// Coordinates of the working range lie within this: three squares of it, of which each lacks 2^28, stay below 2^31, so
+/// that no difference of them overflows.
+const COORD_LIMIT: f64 = 438_000_000.0;
+/// Bits of a ratio of the triangle at the most.
+const LEAN_BITS: i32 = 29;
 /// What a square lacks of the product of a coordinate with itself.
 const SQUARE_DROP: i32 = 28;
 /// What a product of a coordinate and another or a ratio lacks.
@@ -84,22 +87,22 @@ impl Short32 {
 
     pub(crate) const fn scale_for_links(radius_mm: f64, _: f64, lean: f64) -> Option<ShortScale> {
         // Negated so that NaN is refused.
-        if !(radius_mm >= 1.0 && radius_mm <= 8_191.0) {
+        if !(radius_mm >= 1.0 && radius_mm <= 6_683.0) {
             return None;
         }
         let mut shift = 0;
-        while radius_mm * power_of_two(LENGTH_BITS + shift + 1) < power_of_two(COORD_BITS) {
+        while radius_mm * power_of_two(LENGTH_BITS + shift + 1) < COORD_LIMIT {
             shift += 1;
         }
         // The largest ratio of the triangle has 29 bits, as a coordinate has.
         let mut drop = 1;
-        while drop < 4 && lean * power_of_two(30 - drop) > power_of_two(COORD_BITS) {
+        while drop < 4 && lean * power_of_two(30 - drop) > power_of_two(LEAN_BITS) {
             drop += 1;
         }
         Some(ShortScale {
             shift: shift as u32,
             factor: 1 << shift,
-            limit: (1 << COORD_BITS) >> shift,
+            limit: (COORD_LIMIT as u32) >> shift,
             drop: drop as u32,
         })
     }
@@ -266,15 +269,12 @@ impl Number for Short32 {
     #[inline(always)]
     fn near(foot: [I16F16; 3], scale: ShortScale) -> Option<[i32; 3]> {
         let [x, y, z] = foot.map(I16F16::to_bits);
-        // The limit is a power of two: together they lie below it if each does.
-        let outermost = (x ^ (x >> 31)) | (y ^ (y >> 31)) | (z ^ (z >> 31));
-        if outermost >= scale.limit {
-            return None;
+        let within = |v: i32| (v as u32).wrapping_add(scale.limit) <= 2 * scale.limit;
+        if within(x) && within(y) && within(z) {
+            Some([x, y, z].map(|v| v.wrapping_mul(scale.factor)))
+        } else {
+            None
         }
-        let point = [x, y, z].map(|v| v.wrapping_mul(scale.factor));
-        // Three squares of less than 2^30 each; with their sum below 2^31 no difference overflows.
-        let sum = point.iter().fold(0u32, |sum, v| sum.wrapping_add(square(*v) as u32));
-        (sum >> 31 == 0).then_some(point)
     }
 
     fn place(foot: [I16F16; 3], scale: ShortScale) -> Placed<Self> {
@@ -400,7 +400,7 @@ impl Number for Short32 {
         let [x, y, z] = vector;
         let longest = x.unsigned_abs().max(y.unsigned_abs()).max(z.unsigned_abs());
         if longest >= 1 << 28 {
-            // So that three squares add up.
+            // So that three squares add up, whatever they are.
             return vector.map(|v| v >> 2);
         }
         let (mut vector, mut left) = (vector, if longest == 0 { 0 } else { 28 });
@@ -475,14 +475,15 @@ fn quotient(a: u64, b: u32) -> u32 {
     quotient
 }
 
-/// A foot beyond the working range, halved until three squares of it add up.
+/// A foot beyond the working range, halved until it is within.
 #[cold]
 fn far(bits: [i32; 3], scale: ShortScale) -> Placed<Short32> {
     let mut point = bits;
     let mut times = 0;
-    while times < 31 && point.iter().any(|v| v.unsigned_abs() >= scale.limit as u32 >> 1) {
+    while times < 31 && point.iter().any(|v| v.unsigned_abs() > scale.limit) {
         point = point.map(|v| v >> 1);
         times += 1;
     }
     Placed::Far(point.map(|v| v.wrapping_mul(scale.factor)), times)
 }
+

@@ -75,6 +75,15 @@ impl NumberSystem {
                 distance: 1e-7,
                 servo: 8e-8,
             },
+            Self::Short32 => Bounds {
+                own_foot: 6.5e-7,
+                foot: 8.5e-7,
+                folded_below: 0.03,
+                moved: 9e-7,
+                angle: 1.5e-6,
+                distance: 1e-7,
+                servo: 8e-8,
+            },
             Self::Float64 => Bounds {
                 own_foot: 2e-15,
                 foot: 2e-15,

@@ -6,7 +6,7 @@ use ik_core::output::Output;
 use ik_core::servo::MOST_POINTS;
 use ik_core::{
     Angle, Channel, Coarse, Counting, Curve, End, Expander, Fixed16, Fixed32, Float32, MeasuredServo, Number,
-    Servo, ServoError, Timer,
+    Servo, ServoError, Short32, Timer,
 };
 use ik_host_tests::numbers::Float64;
 
@@ -191,10 +191,13 @@ pub fn in_every_number(
     output: AnyOutput,
 ) -> Result<Vec<Box<dyn ChannelModel>>, ServoError> {
     let (float, fixed) = (2f64.powi(-23), 0.75 * 2f64.powi(-30));
+    // What the halves of a product lose.
+    let short = 3.75 * 2f64.powi(-30);
     [
         core::<Float32>(servo, output, float),
         core::<Coarse>(servo, output, float),
         core::<Fixed32>(servo, output, fixed),
+        core::<Short32>(servo, output, short),
         core::<Fixed16>(servo, output, fixed),
         core::<Float64>(servo, output, 1e-14),
     ]

@@ -1,7 +1,7 @@
 //! ik-core's servo behind plain `f64`, so that a wrong one can take its place.
 
 use super::solver::{NumberSystem, angle};
-use ik_core::{Angle, Coarse, End, Fixed32, Float32, Number, Pulse, Servo, ServoError, ServoSpec};
+use ik_core::{Angle, Coarse, End, Fixed32, Float32, Number, Pulse, Servo, ServoError, ServoSpec, Short32};
 use ik_host_tests::numbers::Float64;
 
 /// A servo: ik-core's, or a wrong one that must be found out.
@@ -21,6 +21,7 @@ pub fn core(number: NumberSystem, spec: ServoSpec) -> Result<Box<dyn ServoModel>
         NumberSystem::Float32 => Box::new(Core::<Float32>::new(number, spec)?),
         NumberSystem::Coarse => Box::new(Core::<Coarse>::new(number, spec)?),
         NumberSystem::Fixed32 => Box::new(Core::<Fixed32>::new(number, spec)?),
+        NumberSystem::Short32 => Box::new(Core::<Short32>::new(number, spec)?),
         NumberSystem::Float64 => Box::new(Core::<Float64>::new(number, spec)?),
     })
 }

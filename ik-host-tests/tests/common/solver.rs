@@ -3,7 +3,7 @@
 //! `f64` holds every value of every number system here, so nothing is lost on the way; a foot is rounded to the
 //! number system first ([`Solver::quantised`]), and it is the rounded one that references are asked about.
 
-use ik_core::{Angle, Coarse, Fixed32, Float32, RollHip, YawHip};
+use ik_core::{Angle, Coarse, Fixed32, Float32, RollHip, Short32, YawHip};
 use ik_core::{Bend, Dimensions, Foot, GeometryError, Hip, Joints, Limits, Mounting, Number, Outcome, Side};
 use ik_host_tests::numbers::Float64;
 use ik_host_tests::reference::{self, Leg, Pose, Range, Ranges, Shape};
@@ -15,29 +15,30 @@ pub enum NumberSystem {
     Float32,
     Coarse,
     Fixed32,
+    Short32,
     Float64,
 }
 
 impl NumberSystem {
-    pub const ALL: [Self; 4] = [Self::Float32, Self::Coarse, Self::Fixed32, Self::Float64];
+    pub const ALL: [Self; 5] = [Self::Float32, Self::Coarse, Self::Fixed32, Self::Short32, Self::Float64];
 
     /// The farthest coordinate that a foot can have, mm.
     pub fn farthest(self) -> f64 {
         match self {
             Self::Float32 | Self::Coarse => f64::from(f32::MAX),
-            Self::Fixed32 => f64::from(i32::MAX) / 65_536.0,
+            Self::Fixed32 | Self::Short32 => f64::from(i32::MAX) / 65_536.0,
             Self::Float64 => f64::MAX,
         }
     }
 
     /// The step between lengths, mm; 0 if it shrinks with them.
     pub fn step(self) -> f64 {
-        if self == Self::Fixed32 { 1.0 / 65_536.0 } else { 0.0 }
+        if self.floats() { 0.0 } else { 1.0 / 65_536.0 }
     }
 
     /// Whether it has NaN and infinity.
     pub fn floats(self) -> bool {
-        self != Self::Fixed32
+        !matches!(self, Self::Fixed32 | Self::Short32)
     }
 }
 
@@ -79,6 +80,7 @@ pub fn core(
         NumberSystem::Float32 => core_in::<Float32>(number, leg, ranges),
         NumberSystem::Coarse => core_in::<Coarse>(number, leg, ranges),
         NumberSystem::Fixed32 => core_in::<Fixed32>(number, leg, ranges),
+        NumberSystem::Short32 => core_in::<Short32>(number, leg, ranges),
         NumberSystem::Float64 => core_in::<Float64>(number, leg, ranges),
     }
 }

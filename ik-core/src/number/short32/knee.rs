@@ -25,7 +25,7 @@ const KNEE_BOUND: f64 = 4.5e-7;
 const HALF_SINE_BOUND: f64 = 2.3e-7;
 /// The largest error of the square of the sine.
 #[cfg(test)]
-const FROM_END_BOUND: f64 = 7e-9;
+const FROM_END_BOUND: f64 = 5e-9;
 
 #[derive(Clone, Copy)]
 struct Node {
@@ -77,7 +77,7 @@ const fn nodes() -> [Node; NODES] {
 /// (angle in 2^-32 turn, half of its sine, the square of s) of the knee whose half has the sine s, with 28 fraction bits
 /// and at most sin 45° and a hair; ratios with 30 − `drop` fraction bits.
 ///
-/// The angle within 4.5e-7 rad, half of its sine within 2.3e-7, the square within 7e-9.
+/// The angle within 4.5e-7 rad, half of its sine within 2.3e-7, the square within 5e-9.
 #[inline(always)]
 pub(super) fn of_half_sine(sine: u32, drop: u32) -> (u32, i32, i32) {
     let Some(near) = NODES_OF_KNEE.get((sine >> WITHIN_BITS) as usize) else {
