@@ -202,6 +202,26 @@ pub trait Number: Copy + Debug + PartialEq + 'static {
         offset: Self::Coord,
         scale: Self::Scale,
     ) -> (Self::Coord, Self::Square);
+    /// √`depth_square`, which is y² + z² − offset²; for number systems whose squares are too coarse for a small one.
+    #[inline(always)]
+    fn depth(
+        _foot: [Self::Coord; 2],
+        _offset: Self::Coord,
+        depth_square: Self::Square,
+        scale: Self::Scale,
+    ) -> Self::Coord {
+        Self::root(depth_square, scale)
+    }
+    /// [`radial`](Number::radial) of x² + y²; for number systems whose squares are too coarse for a small one.
+    #[inline(always)]
+    fn radial_of(
+        _foot: [Self::Coord; 2],
+        radial_square: Self::Square,
+        offset: Self::Coord,
+        scale: Self::Scale,
+    ) -> (Self::Coord, Self::Square) {
+        Self::radial(radial_square, offset, scale)
+    }
     /// a·b.
     fn area(a: Self::Coord, b: Self::Coord) -> Self::Product;
     /// coord·ratio.

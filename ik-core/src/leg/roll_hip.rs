@@ -91,7 +91,7 @@ fn at_depth<N: Number>(
     depth_square: N::Square,
     n: N::Square,
 ) -> Plane<N> {
-    let depth = N::root(depth_square, leg.scale);
+    let depth = N::depth([y, z], leg.offset, depth_square, leg.scale);
     let hip = N::hip_angle([y, z], leg.offset, depth);
     Plane { hip: Angle(hip), across: x, along: depth, n }
 }

@@ -25,7 +25,7 @@ impl Stage for YawHip {
     #[inline(always)]
     fn plane<N: Number>(leg: &Constants<N>, [x, y, z]: [N::Coord; 3]) -> Result<Plane<N>, Beyond> {
         let radial_square = N::square(x, leg.scale) + N::square(y, leg.scale);
-        let (radial, along_square) = N::radial(radial_square, leg.offset, leg.scale);
+        let (radial, along_square) = N::radial_of([x, y], radial_square, leg.offset, leg.scale);
         let n = leg.reach_square - along_square - N::square(z, leg.scale);
         if n < leg.straightest {
             Err(Beyond::Outer)
@@ -44,7 +44,8 @@ impl Stage for YawHip {
         beyond: Beyond,
         halvings: u32,
     ) -> (Plane<N>, Option<End>) {
-        let radial = N::root(N::square(x, leg.scale) + N::square(y, leg.scale), leg.scale);
+        let radial_square = N::square(x, leg.scale) + N::square(y, leg.scale);
+        let (radial, _) = N::radial_of([x, y], radial_square, N::NO_COORD, leg.scale);
         let along = radial - N::halve(leg.offset, halvings);
         let [along, z, _] = N::enlarged([along, z, N::NO_COORD]);
         let gap = N::root(N::square(along, leg.scale) + N::square(z, leg.scale), leg.scale);

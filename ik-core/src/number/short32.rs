@@ -115,6 +115,10 @@ impl Short32 {
         nearest_i32(mm2 * scale.units_per_mm() * scale.units_per_mm() * power_of_two(-SQUARE_DROP))
     }
 
+    pub(crate) const fn cylinder_from_mm2(mm2: f64, scale: ShortScale) -> i32 {
+        Self::square_from_mm2(mm2, scale)
+    }
+
     pub(crate) const fn ratio_from(value: f64) -> i32 {
         nearest_i32(value * power_of_two(RATIO_BITS as i32))
     }
@@ -174,10 +178,21 @@ const fn saturated(value: i64) -> i32 {
     }
 }
 
-/// The angle of a vector whose norm is known, in its quadrant.
+/// Norms, and squares of a radius or depth, that are less than this of 2^30 are worked out anew from what they came of.
+const LEAST_RUN: u32 = 1 << 24;
+const LEAST_SQUARE: i32 = 1 << 16;
+
+/// The angle of a vector whose norm is known, in its quadrant; or what `again` says of one that is too short.
 #[inline(always)]
-fn angle_of(y: i32, x: i32, norm: i32) -> I0F32 {
-    let (rise, run) = (y.unsigned_abs(), (norm as u32).wrapping_add(x.unsigned_abs()));
+fn angle_of(y: i32, x: i32, norm: i32, again: impl FnOnce() -> I0F32) -> I0F32 {
+    let run = (norm as u32).wrapping_add(x.unsigned_abs());
+    if run < LEAST_RUN { again() } else { quadrant(y, x, run) }
+}
+
+/// The angle with 2·arctan(|y| / run), in the quadrant of (x, y).
+#[inline(always)]
+fn quadrant(y: i32, x: i32, run: u32) -> I0F32 {
+    let rise = y.unsigned_abs();
     let mut size = half_angle::double_angle(rise, run) as i32;
     if x < 0 {
         size = from_behind(size);
@@ -192,6 +207,64 @@ fn angle_of(y: i32, x: i32, norm: i32) -> I0F32 {
 #[inline(never)]
 fn from_behind(size: i32) -> i32 {
     i32::MAX - size
+}
+
+/// How often a coordinate can be doubled until it has 28 bits; 0 for 0.
+fn spare(longest: u32) -> u32 {
+    if longest == 0 { 0 } else { longest.leading_zeros().saturating_sub(4) & 31 }
+}
+
+/// The angle of a short vector that is known exactly.
+#[cold]
+#[inline(never)]
+fn angle_of_short(y: i32, x: i32) -> I0F32 {
+    let spare = spare(y.unsigned_abs().max(x.unsigned_abs()));
+    let (y, x) = (y << spare, x << spare);
+    let norm = root_of(square(y).wrapping_add(square(x)) as u32);
+    quadrant(y, x, (norm as u32).wrapping_add(x.unsigned_abs()))
+}
+
+/// The hip of a foot near its axis.
+#[cold]
+#[inline(never)]
+fn hip_angle_near_the_axis([y, z]: [i32; 2], offset: i32, depth: i32) -> I0F32 {
+    // Offset and depth are no longer than the vector (y, z), but for rounding.
+    let spare = spare(y.unsigned_abs().max(z.unsigned_abs()).max(offset as u32).max(depth as u32));
+    let [y, z, offset, depth] = [y, z, offset, depth].map(|v| v << spare);
+    let norm = square(y).wrapping_add(square(z)) >> (PRODUCT_DROP - SQUARE_DROP);
+    let [hy, hz, offset, depth] = [y, z, offset, depth].map(Halves::of);
+    let (rise, along) =
+        (sum_of_products(hz, offset, hy, depth), difference_of_products(hy, offset, hz, depth));
+    quadrant(rise, along, (norm as u32).wrapping_add(along.unsigned_abs()))
+}
+
+/// The thigh of a foot near its joint.
+#[cold]
+#[inline(never)]
+fn thigh_angle_near_its_joint(along: i32, across: i32, [p, q]: [i32; 2], norm: i32) -> I0F32 {
+    let spare = spare(along.unsigned_abs().max(across.unsigned_abs()));
+    // The norm lies below 2^24, and is no longer in proportion.
+    let norm = (norm as u32) << spare.min(6);
+    let [along, across] = [along, across].map(|v| Halves::of(v << spare.min(6)));
+    let (p, q) = (Halves::of(p), Halves::of(q));
+    let (rise, straight) =
+        (sum_of_products(across, p, along, q), difference_of_products(along, p, across, q));
+    quadrant(rise, straight, norm.wrapping_add(straight.unsigned_abs()))
+}
+
+/// √(y² + z² − offset²) of a square that is too coarse.
+#[cold]
+#[inline(never)]
+fn little_depth([y, z]: [i32; 2], offset: i32) -> i32 {
+    let exact = |v: i32| i64::from(v) * i64::from(v);
+    root_of_exact(exact(y) + exact(z) - exact(offset))
+}
+
+/// The root of a sum of squares of coordinates; 0 below 0.
+fn root_of_exact(square: i64) -> i32 {
+    let square = square.max(0) as u64;
+    let up = square.leading_zeros() & 62;
+    if square == 0 { 0 } else { (root::root(((square << up) >> 32) as u32) >> (up / 2)) as i32 }
 }
 
 /// √(4^-14 · `square`): what a coordinate is to a square.
@@ -320,11 +393,30 @@ impl Number for Short32 {
     }
 
     #[inline(always)]
-    fn beyond(radial_square: i32, offset: i32, _: ShortScale) -> (i32, i32) {
+    fn depth([y, z]: [i32; 2], offset: i32, depth_square: i32, scale: ShortScale) -> i32 {
+        if depth_square < LEAST_SQUARE {
+            little_depth([y, z], offset)
+        } else {
+            Self::root(depth_square, scale)
+        }
+    }
+
+    #[inline(always)]
+    fn radial_of([x, y]: [i32; 2], radial_square: i32, offset: i32, scale: ShortScale) -> (i32, i32) {
+        if radial_square < LEAST_SQUARE {
+            let radial = little_depth([x, y], 0);
+            (radial, square(radial - offset))
+        } else {
+            Self::radial(radial_square, offset, scale)
+        }
+    }
+
+    #[inline(always)]
+    fn radial(radial_square: i32, offset: i32, _: ShortScale) -> (i32, i32) {
         let radial = root_of(radial_square as u32);
         // (R − c)² = R² − c·(2·R − c): the error of the root counts c/R times.
         let less = product(Halves::of(offset), Halves::of(radial.wrapping_mul(2).wrapping_sub(offset)));
-        (radial - offset, radial_square.wrapping_sub(less.wrapping_mul(1 << (PRODUCT_DROP - SQUARE_DROP))))
+        (radial, radial_square.wrapping_sub(less.wrapping_mul(1 << (PRODUCT_DROP - SQUARE_DROP))))
     }
 
     #[inline(always)]
@@ -345,20 +437,24 @@ impl Number for Short32 {
 
     #[inline(always)]
     fn angle(y: i32, x: i32, norm: i32) -> I0F32 {
-        angle_of(y, x, norm)
+        angle_of(y, x, norm, || angle_of_short(y, x))
     }
 
     #[inline(always)]
     fn hip_angle([y, z]: [i32; 2], offset: i32, depth: i32) -> I0F32 {
         let norm = square(y).wrapping_add(square(z)) >> (PRODUCT_DROP - SQUARE_DROP);
-        let (y, z, offset, depth) = (Halves::of(y), Halves::of(z), Halves::of(offset), Halves::of(depth));
-        angle_of(sum_of_products(z, offset, y, depth), difference_of_products(y, offset, z, depth), norm)
+        let [hy, hz, a, d] = [y, z, offset, depth].map(Halves::of);
+        angle_of(sum_of_products(hz, a, hy, d), difference_of_products(hy, a, hz, d), norm, || {
+            hip_angle_near_the_axis([y, z], offset, depth)
+        })
     }
 
     #[inline(always)]
     fn thigh_angle(along: i32, across: i32, [p, q]: [i32; 2], norm: i32) -> I0F32 {
-        let (along, across, p, q) = (Halves::of(along), Halves::of(across), Halves::of(p), Halves::of(q));
-        angle_of(sum_of_products(across, p, along, q), difference_of_products(along, p, across, q), norm)
+        let [ha, hx, hp, hq] = [along, across, p, q].map(Halves::of);
+        angle_of(sum_of_products(hx, hp, ha, hq), difference_of_products(ha, hp, hx, hq), norm, || {
+            thigh_angle_near_its_joint(along, across, [p, q], norm)
+        })
     }
 
     #[inline(always)]
@@ -370,9 +466,7 @@ impl Number for Short32 {
         let (value, fours) = normal::by_fours((least as u32) << 2);
         let sine = upper(root::root(value), unit.reciprocal) >> ((unit.shift + fours) & 31);
         let (knee, half_sine, from_end) = knee::of_half_sine(sine, scale.drop & 3);
-        let knee = knee as i32;
-        let knee = if folded { i32::MAX - knee } else { knee };
-        Knee { angle: I0F32::from_bits(knee), half_sine, folded, from_end }
+        Knee { acute: I0F32::from_bits(knee as i32), half_sine, folded, from_end }
     }
 
     #[inline(never)]
@@ -486,4 +580,3 @@ fn far(bits: [i32; 3], scale: ShortScale) -> Placed<Short32> {
     }
     Placed::Far(point.map(|v| v.wrapping_mul(scale.factor)), times)
 }
-
