@@ -14,7 +14,7 @@
 //! | --- | --- |
 //! | `Float32`, `Coarse` | ½ + 2⁻²³ · w |
 //! | `Fixed32`, `Fixed16` | ½ + ¾ · 2⁻³⁰ · w |
-//! | `Short32` | ½ + 3¾ · 2⁻³⁰ · w |
+//! | `Short32` | ½ + 1¾ · 2⁻³⁰ · w |
 //!
 //! of the exact line at the angle as the number system holds it (½ + 2⁻²² if that is more); w is the number of counts in a
 //! turn of the servo, and in its pulse at the joint's zero, together. For a servo of 4000 µs a turn on a timer of 0.3125 µs,

@@ -28,8 +28,8 @@ fn arctangents<N: Number>(t: f64) -> [f64; 4] {
 /// (sin, cos) of an angle in radians and the angle that the number system really took.
 fn sine_and_cosine<N: Number>(angle: f64) -> (f64, [f64; 2]) {
     // The largest leg makes the finest steps of a ratio visible in a length.
-    const FAR: f64 = 8192.0;
-    let scale = N::scale_for(16_000.0).expect("a scale");
+    const FAR: f64 = 4096.0;
+    let scale = N::scale_for(6_000.0).expect("a scale");
     let taken = N::angle_from_turns(angle / TAU);
     let (sin, cos) = N::sin_cos(taken);
     let far = N::coord_from_mm(FAR, scale);

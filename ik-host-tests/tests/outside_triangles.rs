@@ -69,7 +69,7 @@ fn needle_triangles_have_their_knees() {
             for number in NumberSystem::ALL {
                 let case = format!("{number:?}: row {}: {a}, {b}, {c}", row.text("no"));
                 let mut shrink = 1.0;
-                while (a + b) / shrink > 16_383.0 {
+                while (a + b) / shrink > number.longest() {
                     shrink *= 2.0;
                 }
                 let [a, b, c] = [a, b, c].map(|side| side / shrink);
@@ -98,7 +98,9 @@ fn needle_triangles_have_their_knees() {
                 let rounded_by = (x.hypot(y).hypot(z) - c).abs() + 2e-16 * (a + b);
                 let by_rounding =
                     (rounded_by / a.min(b)).sqrt().min(rounded_by / (a.min(b) * knee.sin().abs()));
-                let allowed = number.bounds().angle + 2.0 * by_rounding;
+                let near_an_end = !(0.1..=2.6).contains(&knee);
+                let bound = if near_an_end { number.bounds().straight } else { number.bounds().angle };
+                let allowed = bound + 2.0 * by_rounding;
                 let off = (found - knee).abs();
                 assert!(
                     off <= allowed,
@@ -111,6 +113,6 @@ fn needle_triangles_have_their_knees() {
         }
     }
     // Row 2; rows 6, 9, 11 and 12; all others; and most of those to better than 1e-4 rad.
-    assert_eq!(seen[..3], [16, 64, 112]);
+    assert_eq!(seen[..3], [4, 16, 28].map(|rows| rows * NumberSystem::ALL.len()));
     assert!(seen[3] >= 40, "{seen:?}");
 }

@@ -98,7 +98,7 @@ fn every_picture_is_drawn_and_says_what_it_shows() {
             assert!(shapes.iter().sum::<usize>() > 2 && body.matches("<text").count() > 4, "{head}");
             assert!(!body.contains("NaN") && !body.contains("inf"), "{head}");
         }
-        // A map shows more than one colour of the scale; a spread a curve for each of four number systems.
+        // A map shows more than one colour of the scale; a spread a curve for each number system.
         for map in pictures.iter().filter(|picture| picture.contains("Map of the foot error")) {
             let scale = ["EAF3F8", "CFE2EF", "AFCDE3", "8BB5D5", "6699C2", "467BA9", "2B5C89", "14375A"];
             let cells = map.lines().filter(|line| line.starts_with("<path") && line.matches('M').count() > 1);
@@ -106,7 +106,7 @@ fn every_picture_is_drawn_and_says_what_it_shows() {
             assert!(scale.iter().filter(|colour| cells.contains(*colour)).count() >= 2, "a flat map");
         }
         for spread in pictures.iter().filter(|picture| picture.contains("Curves of the share")) {
-            for colour in ["0072B2", "D55E00", "009E73", "B9BEC4"] {
+            for colour in ["0072B2", "D55E00", "009E73", "7A6800", "8A4F9E", "B9BEC4"] {
                 assert!(spread.contains(&format!("stroke=\"#{colour}\"")), "{colour}");
             }
         }

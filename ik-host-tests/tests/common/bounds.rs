@@ -10,6 +10,7 @@
 //! | float32 | 8.7e-7 | 7.5e-7 | 5.9e-7 |
 //! | coarse | 2.2e-2 | 2.0e-2 | 1.8e-2 |
 //! | fixed32 | 5.3e-7 | 7.5e-7 | 1.1e-6 |
+//! | short32 | 1.25e-6 | 1.58e-6 | 8.4e-6 |
 //! | float64 | 1.3e-15 | 1.5e-15 | 1.4e-14 |
 //!
 //! The largest come of legs whose offset is longer than their links.
@@ -31,6 +32,8 @@ pub struct Bounds {
     pub moved: f64,
     /// A joint against the reference, away from singular places, rad.
     pub angle: f64,
+    /// A knee near straight or folded, rad: what `angle` does not cover.
+    pub straight: f64,
     /// A distance against `f64`, fraction of itself.
     pub distance: f64,
     /// A pulse against `f64`, fraction of the µs that the servo has in a radian.
@@ -54,6 +57,7 @@ impl NumberSystem {
                 folded_below: 0.0,
                 moved: 1.5e-6,
                 angle: 6.5e-7,
+                straight: 7e-7,
                 distance: 2.4e-7,
                 servo: 9e-7,
             },
@@ -63,6 +67,7 @@ impl NumberSystem {
                 folded_below: 0.0,
                 moved: 3e-2,
                 angle: 2e-2,
+                straight: 2e-2,
                 distance: 4e-3,
                 servo: 9e-7,
             },
@@ -72,15 +77,17 @@ impl NumberSystem {
                 folded_below: 0.03,
                 moved: 9e-7,
                 angle: 1.3e-6,
+                straight: 1.3e-6,
                 distance: 1e-7,
                 servo: 8e-8,
             },
             Self::Short32 => Bounds {
-                own_foot: 6.5e-7,
-                foot: 8.5e-7,
-                folded_below: 0.03,
+                own_foot: 1.4e-6,
+                foot: 1.7e-6,
+                folded_below: 0.5,
                 moved: 9e-7,
-                angle: 1.5e-6,
+                angle: 9e-6,
+                straight: 3e-4,
                 distance: 1e-7,
                 servo: 8e-8,
             },
@@ -90,6 +97,7 @@ impl NumberSystem {
                 folded_below: 0.25,
                 moved: 2e-15,
                 angle: 2.4e-14,
+                straight: 2.4e-14,
                 distance: 1e-15,
                 servo: 1e-15,
             },

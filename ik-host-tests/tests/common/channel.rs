@@ -192,7 +192,7 @@ pub fn in_every_number(
 ) -> Result<Vec<Box<dyn ChannelModel>>, ServoError> {
     let (float, fixed) = (2f64.powi(-23), 0.75 * 2f64.powi(-30));
     // What the halves of a product lose.
-    let short = 3.75 * 2f64.powi(-30);
+    let short = 1.75 * 2f64.powi(-30);
     [
         core::<Float32>(servo, output, float),
         core::<Coarse>(servo, output, float),

@@ -31,6 +31,11 @@ impl NumberSystem {
         }
     }
 
+    /// The longest leg that it holds, mm.
+    pub fn longest(self) -> f64 {
+        if self == Self::Short32 { 6_683.0 } else { 16_383.0 }
+    }
+
     /// The step between lengths, mm; 0 if it shrinks with them.
     pub fn step(self) -> f64 {
         if self.floats() { 0.0 } else { 1.0 / 65_536.0 }

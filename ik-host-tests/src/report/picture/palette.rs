@@ -170,6 +170,7 @@ mod tests {
             .into_iter()
             .chain([(LINKS_REACH, 3.0), (WORK, 3.0), (WORST, 3.0), (ALLOWED, 3.0), (SERVO_USED, 3.0)])
             .chain([(NUMBERS[0], 3.0), (NUMBERS[1], 3.0), (NUMBERS[2], 3.0), (NUMBERS[3], 3.0)])
+            .chain([(NUMBERS[4], 3.0)])
         {
             assert!(contrast(&hex(colour), &white) >= least, "{} on light", hex(colour));
             assert!(contrast(dark(colour), black) >= least, "{} on dark", dark(colour));

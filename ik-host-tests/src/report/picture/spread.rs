@@ -15,11 +15,11 @@ const LEAST_EXPONENT: i32 = -12;
 const LEAST_SHARE: f64 = 1.0;
 const PLOT_HEIGHT: u32 = 240;
 /// In this order, so that thin dashes come over broad lines where curves coincide.
-const ORDER: [usize; 5] = [4, 2, 0, 1, 3];
+const ORDER: [usize; 6] = [5, 2, 3, 0, 1, 4];
 /// Nominal pixels, in the order of [`crate::machine::NUMBERS`].
-const LINE_WIDTHS: [u32; 5] = [2, 2, 3, 2, 7];
+const LINE_WIDTHS: [u32; 6] = [2, 2, 3, 2, 2, 7];
 /// The number system that is drawn as a bar.
-const YARDSTICK: usize = 4;
+const YARDSTICK: usize = 5;
 
 /// One of the arithmetic error, one of the error with the pulse.
 pub(super) fn pictures(subject: &Subject<'_>) -> [Picture; 2] {
