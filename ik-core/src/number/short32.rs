@@ -181,15 +181,14 @@ const fn saturated(value: i64) -> i32 {
 }
 
 /// Norms, and squares of a radius or depth, that are less than this of 2^30 are worked out anew from what they came of.
-const LEAST_RUN: i32 = 1 << 24;
+const LEAST_NORM_BITS: u32 = 23;
 const LEAST_SQUARE: i32 = 1 << 16;
 
-/// The angle of a vector whose norm is known, in its quadrant; or what `again` says of one that is too short.
+/// Whether a norm is so small that what was cut off from it tells; 0 and below, which the square of next to nothing may come
+/// out as, are.
 #[inline(always)]
-fn angle_of(y: i32, x: i32, norm: i32, again: impl FnOnce() -> I0F32) -> I0F32 {
-    let run = (norm as u32).wrapping_add(x.unsigned_abs());
-    // With its sign: the square of next to nothing may come out below 0.
-    if (run as i32) < LEAST_RUN { again() } else { quadrant(y, x, run) }
+const fn is_little(norm: i32) -> bool {
+    norm >> LEAST_NORM_BITS <= 0
 }
 
 /// The angle with 2·arctan(|y| / run), in the quadrant of (x, y).
@@ -246,7 +245,7 @@ fn hip_angle_near_the_axis([y, z]: [i32; 2], offset: i32, depth: i32) -> I0F32 {
 #[inline(never)]
 fn thigh_angle_near_its_joint(along: i32, across: i32, [p, q]: [i32; 2], norm: i32) -> I0F32 {
     let spare = spare(along.unsigned_abs().max(across.unsigned_abs()));
-    // The norm lies below 2^24, and is no longer in proportion.
+    // The norm lies below 2^23: so much room there is at least.
     let norm = (norm as u32) << spare.min(6);
     let [along, across] = [along, across].map(|v| Halves::of(v << spare.min(6)));
     let (p, q) = (Halves::of(p), Halves::of(q));
@@ -443,24 +442,39 @@ impl Number for Short32 {
 
     #[inline(always)]
     fn angle(y: i32, x: i32, norm: i32) -> I0F32 {
-        angle_of(y, x, norm, || angle_of_short(y, x))
+        if is_little(norm) {
+            return angle_of_short(y, x);
+        }
+        quadrant(y, x, (norm as u32).wrapping_add(x.unsigned_abs()))
     }
 
     #[inline(always)]
     fn hip_angle([y, z]: [i32; 2], offset: i32, depth: i32) -> I0F32 {
         let norm = square(y).wrapping_add(square(z)) >> (PRODUCT_DROP - SQUARE_DROP);
-        let [hy, hz, a, d] = [y, z, offset, depth].map(Halves::of);
-        angle_of(sum_of_products(hz, a, hy, d), difference_of_products(hy, a, hz, d), norm, || {
-            hip_angle_near_the_axis([y, z], offset, depth)
-        })
+        if is_little(norm) {
+            return hip_angle_near_the_axis([y, z], offset, depth);
+        }
+        let [y, z, offset, depth] = [y, z, offset, depth].map(Halves::of);
+        let along = difference_of_products(y, offset, z, depth);
+        quadrant(
+            sum_of_products(z, offset, y, depth),
+            along,
+            (norm as u32).wrapping_add(along.unsigned_abs()),
+        )
     }
 
     #[inline(always)]
     fn thigh_angle(along: i32, across: i32, [p, q]: [i32; 2], norm: i32) -> I0F32 {
-        let [ha, hx, hp, hq] = [along, across, p, q].map(Halves::of);
-        angle_of(sum_of_products(hx, hp, ha, hq), difference_of_products(ha, hp, hx, hq), norm, || {
-            thigh_angle_near_its_joint(along, across, [p, q], norm)
-        })
+        if is_little(norm) {
+            return thigh_angle_near_its_joint(along, across, [p, q], norm);
+        }
+        let [along, across, p, q] = [along, across, p, q].map(Halves::of);
+        let straight = difference_of_products(along, p, across, q);
+        quadrant(
+            sum_of_products(across, p, along, q),
+            straight,
+            (norm as u32).wrapping_add(straight.unsigned_abs()),
+        )
     }
 
     #[inline(always)]

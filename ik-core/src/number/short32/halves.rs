@@ -82,7 +82,7 @@ mod tests {
     fn a_square_keeps_its_bound() {
         let mut most = 0;
         for v in numbers(29) {
-            let short = (i64::from(v) * i64::from(v) >> 28) - i64::from(square(v));
+            let short = ((i64::from(v) * i64::from(v)) >> 28) - i64::from(square(v));
             assert!((0..=2).contains(&short), "{v}: {short}");
             most = most.max(short);
         }
@@ -121,11 +121,11 @@ mod tests {
     fn upper_halves_keep_their_bound() {
         for (a, b) in numbers(31).zip(numbers(31).skip(5)) {
             let (a, b) = (a as u32, b as u32);
-            let short = (u64::from(a) * u64::from(b) >> 32) as i64 - i64::from(upper(a, b));
+            let short = ((u64::from(a) * u64::from(b)) >> 32) as i64 - i64::from(upper(a, b));
             assert!((0..=3).contains(&short), "{a} {b}: {short}");
         }
         for (a, b) in numbers(30).zip(numbers(30).skip(5)) {
-            let off = (i64::from(a) * i64::from(b) >> 30) - i64::from(times(a, b));
+            let off = ((i64::from(a) * i64::from(b)) >> 30) - i64::from(times(a, b));
             assert!(off.abs() <= 3, "{a} {b}: {off}");
         }
     }
