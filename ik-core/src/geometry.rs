@@ -49,8 +49,8 @@ pub enum GeometryError {
     BendOfTheOtherHip,
     /// The foot reaches less than 1 mm from the leg's origin.
     TooShort,
-    /// The foot reaches farther from the leg's origin than the number system can hold: 16 383 mm, 453 mm in
-    /// [`Fixed16`](crate::number).
+    /// The foot reaches farther from the leg's origin than the number system can hold: 16 383 mm, 6 683 mm in
+    /// `Short32`, 453 mm in `Fixed16`.
     TooLong,
 }
 
@@ -76,7 +76,7 @@ impl GeometryError {
             }
             Self::TooShort => "the foot must reach at least 1 mm from the leg's origin",
             Self::TooLong => {
-                "the foot reaches farther than the number system holds, 16383 mm (453 mm in fixed16)"
+                "the foot reaches farther than the number system holds, 16383 mm (6683 mm in short32, 453 mm in fixed16)"
             }
         }
     }

@@ -1,7 +1,8 @@
 //! Leg inverse kinematics for machines whose limbs are moved by position servos.
 //!
 //! A foot position in millimetres goes in; joint angles, servo pulses and timer ticks come out, every frame,
-//! on a chip with or without an FPU. No allocation, no `unsafe`, no panic, and an answer for every input.
+//! on a chip with or without an FPU. No allocation, no panic, no `unsafe` but the square root instruction, and an answer
+//! for every input.
 //!
 //! ```
 //! # #[cfg(feature = "fixed32")] {
@@ -59,7 +60,7 @@
 //! | `Coarse` | `coarse` | `f32`, micromath's functions | a yardstick; where millimetres do not matter |
 //! | `Fixed32` | `fixed32` | `fixed`'s `I16F16` mm and `I0F32` turns | chips without an FPU |
 //! | `Short32` | `short32` | the same | chips without a divider or a long multiplication (Cortex-M0, M0+) |
-//! | `Fixed16` | `fixed16` | `fixed`'s `I10F6` mm and `I0F16` turns | chips without a divider or a long multiplication (Cortex-M0, M0+) |
+//! | `Fixed16` | `fixed16` | `fixed`'s `I10F6` mm and `I0F16` turns | the smallest chips, for legs up to 453 mm |
 //!
 //! Same input, same bits, on every machine: no function of the standard library's maths is used.
 //!
