@@ -5,8 +5,8 @@
 
 use ik_core::number::Number;
 use ik_core::{
-    Bend, Channel, Coarse, Curve, Dimensions, Fixed16, Fixed32, Float32, Foot, Leg, Limb, Limits, MeasuredServo,
-    Mounting, Parallelogram, RollHip, ServoSpec, Short32, Side, Timer, Turns, YawHip,
+    Bend, Channel, Coarse, Curve, Dimensions, Fixed16, Fixed32, Float32, Foot, Leg, Limb, Limits,
+    MeasuredServo, Mounting, Parallelogram, RollHip, ServoSpec, Short32, Side, Timer, Turns, YawHip,
 };
 
 /// An impossible leg, range or servo does not compile: the message becomes a compile error.

@@ -62,6 +62,7 @@ macro_rules! opaque {
 opaque! {
     [M: FloatMaths] Float<M>, {
         use_up(M::root(Raw::raw()));
+        use_up(M::root_of_words(word() as i32, word()));
         use_up(M::double_arc_tangent(Raw::raw()));
         use_up(M::quadruple_arc_tangent(Raw::raw()));
         use_up(M::sin_cos(Raw::raw()));
@@ -101,12 +102,18 @@ pub fn every_primitive<N: Opaque>() {
 
     use_up(N::square(coord(), scale));
     use_up(N::root(square(), scale));
-    use_up(N::beyond(square(), coord(), scale));
+    use_up(N::cylinder_from_mm2(number(), scale));
+    use_up(N::radial(square(), coord(), scale));
+    use_up(N::radial_of([coord(), coord()], square(), coord(), scale));
+    use_up(N::depth([coord(), coord()], coord(), square(), scale));
     use_up(N::area(coord(), coord()));
     use_up(N::stretch(coord(), ratio()));
     use_up(N::widen(coord()));
     use_up(N::angle(product(), product(), product()));
     use_up(N::hip_angle([coord(), coord()], coord(), coord()));
+    use_up(N::yaw_angle([coord(), coord()], coord()));
+    use_up(N::signed(ratio(), ratio(), truth()));
+    use_up(N::knee_angle(N::any_angle(), N::any_angle(), ratio(), truth()));
     use_up(N::thigh_angle(coord(), coord(), [ratio(), ratio()], product()));
     use_up(N::knee(square(), square(), N::unit_from_mm(number(), scale), scale));
     use_up(N::are_sound(N::any_angle(), N::any_angle()));
