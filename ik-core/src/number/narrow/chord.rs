@@ -15,6 +15,7 @@ impl Chord {
     /// The chord through the function's values at the start, the middle and the end of an interval of
     /// 2^`fraction_bits` steps, shifted by half of its greatest distance from the function, so that the error is the
     /// same at the middle as at the ends (chord-balanced linear interpolation).
+    #[cfg(feature = "fixed16")]
     pub(in crate::number) const fn through(start: f64, middle: f64, end: f64, fraction_bits: u32) -> Self {
         let balance = (middle - (start + end) / 2.0) / 2.0;
         let slope = clamped(nearest((end - start) / (1u64 << fraction_bits) as f64));
@@ -29,6 +30,7 @@ impl Chord {
     }
 
     /// The value so many steps after the start of the interval.
+    #[cfg(feature = "fixed16")]
     #[inline(always)]
     pub(in crate::number) const fn after(self, steps: u32) -> u32 {
         self.0.wrapping_add(self.slope().wrapping_mul(steps))
