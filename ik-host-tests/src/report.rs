@@ -78,7 +78,7 @@ pub fn chips_place(folder: &Path, stem: &str) -> PathBuf {
     folder.join(format!("{stem}.chips.json"))
 }
 
-/// Writes `STEM.chips.json` into a folder, as [`write`] does.
+/// Writes `STEM.chips.json` into a folder, as [`write()`] does.
 ///
 /// # Errors
 /// Names the file or folder and the cause.
