@@ -5,7 +5,9 @@ use crate::limits::Held;
 use crate::number::Number;
 
 /// Joint angles, and whether they put the foot where it was asked to be.
+// In whole words, or a 16-bit number system's answer is copied by a call of memcpy, which costs more than an angle.
 #[derive(Debug, Clone, Copy, PartialEq)]
+#[repr(align(4))]
 pub struct Answer<N: Number> {
     /// The joint angles, always within the leg's joint ranges.
     pub joints: Joints<N>,
