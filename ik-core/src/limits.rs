@@ -155,21 +155,9 @@ impl Limits {
 pub struct Range<N: Number> {
     pub(crate) least: Angle<N>,
     pub(crate) most: Angle<N>,
-    /// For [`Number::is_well_within`]: its middle, and how near to that an angle is sure to lie within, as twice the bits
-    /// of an `f32` in radians.
+    /// For [`Number::is_well_within`], if the number system wants them: its middle, and its [`Number::extent`].
     pub(crate) middle: N::Angle,
-    pub(crate) near: u32,
-}
-
-/// How far inside a range an angle must lie to be sure to be within whatever rounding does, turns.
-const SURE: f64 = 2e-7;
-
-/// The middle of a range, in turns, and how near to it an angle is sure to lie within: twice the bits of an `f32` in
-/// radians, 0 for never.
-pub(crate) const fn well_within([least, most]: [f64; 2]) -> (f64, u32) {
-    let near = (most - least) / 2.0 - SURE;
-    let bits = if near > 0.0 { ((near * core::f64::consts::TAU) as f32).to_bits() << 1 } else { 0 };
-    ((least + most) / 2.0, bits)
+    pub(crate) extent: u32,
 }
 
 impl<N: Number> Range<N> {

@@ -150,6 +150,11 @@ pub trait Number: Copy + Debug + PartialEq + 'static {
     fn range_from_turns(range: [f64; 2]) -> [Self::Angle; 2] {
         range.map(Self::angle_from_turns)
     }
+    /// How far a range extends, which is given as its ends and in turns: what [`is_well_within`](Number::is_well_within)
+    /// wants to know of it, if anything.
+    fn extent(_ends: [Self::Angle; 2], _turns: [f64; 2]) -> u32 {
+        0
+    }
     /// µs per turn, rounded.
     fn gain_from(us_per_turn: f64) -> Self::Gain;
     /// Turns per µs, rounded.

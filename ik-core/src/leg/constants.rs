@@ -137,13 +137,13 @@ pub(crate) use constants;
 macro_rules! range {
     ($number:ty, $degrees:expr) => {{
         let [least, most] = $degrees;
-        let (middle, near) = $crate::limits::well_within([least / 360.0, most / 360.0]);
-        let [least, most] = <$number>::range_from_turns([least / 360.0, most / 360.0]);
+        let turns = [least / 360.0, most / 360.0];
+        let [least, most] = <$number>::range_from_turns(turns);
         $crate::limits::Range {
             least: $crate::angle::Angle(least),
             most: $crate::angle::Angle(most),
-            middle: <$number>::angle_from_turns(middle),
-            near,
+            middle: <$number>::angle_from_turns((turns[0] + turns[1]) / 2.0),
+            extent: <$number>::extent([least, most], turns),
         }
     }};
 }

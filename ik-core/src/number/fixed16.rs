@@ -18,6 +18,7 @@ mod sine;
 use super::line::FixedLine;
 use super::{Knee, Number, Placed};
 use crate::const_math::{inward, nearest_i32, power_of_two};
+use crate::limits::Range;
 use fixed::types::{I0F16, I10F6};
 
 /// 16-bit fixed point.
@@ -152,6 +153,11 @@ impl Fixed16 {
         [I0F16::from_bits(nearest_i16(low as f64)), I0F16::from_bits(nearest_i16(high as f64))]
     }
 
+    /// In steps of an angle.
+    pub(crate) const fn extent([least, most]: [I0F16; 2], _: [f64; 2]) -> u32 {
+        most.to_bits().wrapping_sub(least.to_bits()) as u16 as u32
+    }
+
     pub(crate) const fn gain_from(us_per_turn: f64) -> i32 {
         nearest_i32(us_per_turn * power_of_two(GAIN_BITS as i32))
     }
@@ -235,6 +241,9 @@ impl Number for Fixed16 {
     }
     fn range_from_turns(range: [f64; 2]) -> [I0F16; 2] {
         Fixed16::range_from_turns(range)
+    }
+    fn extent(ends: [I0F16; 2], turns: [f64; 2]) -> u32 {
+        Fixed16::extent(ends, turns)
     }
     fn gain_from(us_per_turn: f64) -> i32 {
         Fixed16::gain_from(us_per_turn)
@@ -355,6 +364,12 @@ impl Number for Fixed16 {
         let knee = HALF_TURN - i32::from(acute.to_bits());
         // Half a turn itself is one too many.
         I0F16::from_bits((knee - (knee >> 15)) as i16)
+    }
+
+    #[inline(always)]
+    fn is_well_within(angle: I0F16, range: &Range<Self>) -> bool {
+        // Below the least, this wraps far above.
+        u32::from(angle.to_bits().wrapping_sub(range.least.0.to_bits()) as u16) <= range.extent
     }
 
     #[inline(never)]

@@ -13,6 +13,7 @@ mod sine;
 use super::line::FixedLine;
 use super::{Knee, Number, Placed, seldom};
 use crate::const_math::{inward, nearest, nearest_i32, power_of_two};
+use crate::limits::Range;
 use fixed::types::{I0F32, I16F16};
 
 /// 32-bit fixed point.
@@ -115,6 +116,11 @@ impl Fixed32 {
     pub(crate) const fn range_from_turns([least, most]: [f64; 2]) -> [I0F32; 2] {
         let [low, high] = inward(least * power_of_two(32), most * power_of_two(32));
         [I0F32::from_bits(low), I0F32::from_bits(high)]
+    }
+
+    /// In steps of an angle.
+    pub(crate) const fn extent([least, most]: [I0F32; 2], _: [f64; 2]) -> u32 {
+        most.to_bits().wrapping_sub(least.to_bits()) as u32
     }
 
     pub(crate) const fn gain_from(us_per_turn: f64) -> i32 {
@@ -251,6 +257,9 @@ impl Number for Fixed32 {
     }
     fn range_from_turns(range: [f64; 2]) -> [I0F32; 2] {
         Fixed32::range_from_turns(range)
+    }
+    fn extent(ends: [I0F32; 2], turns: [f64; 2]) -> u32 {
+        Fixed32::extent(ends, turns)
     }
     fn gain_from(us_per_turn: f64) -> i32 {
         Fixed32::gain_from(us_per_turn)
@@ -397,6 +406,12 @@ impl Number for Fixed32 {
             folded,
             from_end: square << (RATIO_BITS + 32 - 2 * (SINE_BITS + 2)),
         }
+    }
+
+    #[inline(always)]
+    fn is_well_within(angle: I0F32, range: &Range<Self>) -> bool {
+        // Below the least, this wraps far above.
+        angle.to_bits().wrapping_sub(range.least.0.to_bits()) as u32 <= range.extent
     }
 
     fn sin_cos(angle: I0F32) -> (i32, i32) {

@@ -113,6 +113,9 @@ const BEYOND_ANY_LEG: Steps2 = Steps2(1 << (2 * STEP_BITS + 1));
 /// Bits of the integers whose squares are exact.
 const STEP_BITS: i32 = 30;
 
+/// How far inside a range an angle must lie to be sure to be within whatever rounding does, turns.
+const SURE: f64 = 2e-7;
+
 impl<M: FloatMaths> Float<M> {
     pub(crate) const fn scale_for(radius_mm: f64) -> Option<FloatScale> {
         if !(radius_mm >= 1.0 && radius_mm <= 16_383.0) {
@@ -185,6 +188,12 @@ impl<M: FloatMaths> Float<M> {
             high = high.next_down();
         }
         if low <= high { [low, high] } else { [Self::angle_from_turns(least); 2] }
+    }
+
+    /// How near to its middle an angle is sure to lie within: twice the bits of an `f32` in radians, 0 for never.
+    pub(crate) const fn extent(_: [f32; 2], [least, most]: [f64; 2]) -> u32 {
+        let near = (most - least) / 2.0 - SURE;
+        if near > 0.0 { ((near * core::f64::consts::TAU) as f32).to_bits() << 1 } else { 0 }
     }
 
     pub(crate) const fn gain_from(us_per_turn: f64) -> f32 {
@@ -300,6 +309,9 @@ impl<M: FloatMaths> Number for Float<M> {
     }
     fn range_from_turns(range: [f64; 2]) -> [f32; 2] {
         Self::range_from_turns(range)
+    }
+    fn extent(ends: [f32; 2], turns: [f64; 2]) -> u32 {
+        Self::extent(ends, turns)
     }
     fn gain_from(us_per_turn: f64) -> f32 {
         Self::gain_from(us_per_turn)
@@ -460,7 +472,7 @@ impl<M: FloatMaths> Number for Float<M> {
     #[inline(always)]
     fn is_well_within(angle: f32, range: &Range<Self>) -> bool {
         // Shifted left, the bits are those of the size; NaN has more than any number.
-        (angle - range.middle).to_bits() << 1 < range.near
+        (angle - range.middle).to_bits() << 1 < range.extent
     }
 
     fn sin_cos(angle: f32) -> (f32, f32) {

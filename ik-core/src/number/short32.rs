@@ -19,6 +19,7 @@ use super::line::FixedLine;
 use super::narrow::normal;
 use super::{Knee, Number, Placed, series};
 use crate::const_math::{inward, nearest, nearest_i32, power_of_two};
+use crate::limits::Range;
 use fixed::types::{I0F32, I16F16};
 use halves::{Halves, difference_of_products, product, square, sum_of_products, times, upper};
 
@@ -154,6 +155,11 @@ impl Short32 {
     pub(crate) const fn range_from_turns([least, most]: [f64; 2]) -> [I0F32; 2] {
         let [low, high] = inward(least * power_of_two(32), most * power_of_two(32));
         [I0F32::from_bits(low), I0F32::from_bits(high)]
+    }
+
+    /// In steps of an angle.
+    pub(crate) const fn extent([least, most]: [I0F32; 2], _: [f64; 2]) -> u32 {
+        most.to_bits().wrapping_sub(least.to_bits()) as u32
     }
 
     pub(crate) const fn gain_from(us_per_turn: f64) -> i32 {
@@ -334,6 +340,9 @@ impl Number for Short32 {
     fn range_from_turns(range: [f64; 2]) -> [I0F32; 2] {
         Short32::range_from_turns(range)
     }
+    fn extent(ends: [I0F32; 2], turns: [f64; 2]) -> u32 {
+        Short32::extent(ends, turns)
+    }
     fn gain_from(us_per_turn: f64) -> i32 {
         Short32::gain_from(us_per_turn)
     }
@@ -487,6 +496,12 @@ impl Number for Short32 {
         let sine = upper(root::root(value), unit.reciprocal) >> ((unit.shift + fours) & 31);
         let (knee, half_sine, from_end) = knee::of_half_sine(sine, scale.drop & 3);
         Knee { acute: I0F32::from_bits(knee as i32), half_sine, folded, from_end }
+    }
+
+    #[inline(always)]
+    fn is_well_within(angle: I0F32, range: &Range<Self>) -> bool {
+        // Below the least, this wraps far above.
+        angle.to_bits().wrapping_sub(range.least.0.to_bits()) as u32 <= range.extent
     }
 
     #[inline(never)]
