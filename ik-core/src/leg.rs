@@ -7,17 +7,25 @@
 //! outward from the femur joint of a yaw-hip leg, X forward or up.
 //!
 //! ```text
-//! n     = (L1+L2)² − G²        m = 4·L1·L2 − n          q = √(n·m) = 2·L1·L2·sin knee
-//! P     = 2·L1·(L1+L2) − n
-//! knee  = angle of (2·L1·L2 − n, q)                     norm 2·L1·L2
-//! thigh = angle of (D·P ∓ X·q, X·P ± D·q)               norm 2·L1·G²
+//! n     = (L1+L2)² − G²        m = 4·L1·L2 − n          the smaller of them, over 4·L1·L2: e
+//! knee  = 2·arcsin √e, or half a turn less that          ½·sin knee = √(e·(1−e))
+//! w     = (L1 + L2 − 2·L2·e, ∓ 2·L2·½·sin knee)         from straight; from folded (L1 − L2 + 2·L2·e, …)
+//! thigh = what turns w to (D, X)                        both G long
+//! hip   = what turns (a, −D) to (y, z)                  roll-hip; both √(y² + z²) long
 //! ```
 //!
-//! No arccosine and no arcsine: both lose half of the digits at an end of their range. `n` is formed from exact
-//! squares, because a knee near straight goes with √n. Every norm is known before the angle is wanted, so an
-//! angle is 2·arctan(y / (norm + |x|)), whose argument never leaves [−1, 1]; and knee and thigh share one q, so
-//! that what rounding does to the one the other undoes in the foot. (The half-angle form follows Kahan,
-//! "Miscalculating Area and Angles of a Needle-like Triangle".) P, q and n are taken in the unit 4·L1·L2.
+//! w is where the foot would be if the thigh hung straight down. No arccosine of a difference: it loses half of the digits
+//! at an end of its range. n is formed from exact squares, because a knee near straight goes with √n; and e is counted from
+//! the nearer end of the reach, straight or folded, so that nothing is lost near either. The angle between two vectors u, v of
+//! the same length comes of its half, whose tangent never leaves [−1, 1] where it is usual:
+//!
+//! ```text
+//! tan ½angle = (u × v) / (u² + u·v) = (v_y − u_y) / (v_x + u_x) = (u_x − v_x) / (v_y + u_y)
+//! ```
+//!
+//! A number system takes whichever costs it least ([`Number::turn`]). Knee and thigh share one e, so that what rounding does
+//! to the one the other undoes in the foot: with e off, w is as long as the triangle so bent, and the foot only moves along
+//! the line from the thigh's joint. (Half-angle forms: Kahan, "Miscalculating Area and Angles of a Needle-like Triangle".)
 //!
 //! # Where a leg is singular
 //!

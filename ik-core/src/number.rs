@@ -16,6 +16,8 @@ pub mod float;
 mod line;
 #[cfg(any(feature = "fixed16", feature = "short32"))]
 mod narrow;
+#[cfg(any(feature = "fixed16", feature = "fixed32", feature = "short32"))]
+mod rhombus;
 #[cfg(any(feature = "fixed32", feature = "short32"))]
 mod series;
 #[cfg(feature = "short32")]
@@ -47,8 +49,8 @@ use core::ops::{Add, Neg, Sub};
 /// | [`Length`](Number::Length) | a length as users give and get it | mm |
 /// | [`Coord`](Number::Coord) | a length within the solver | mm times a power of two fixed per leg |
 /// | [`Square`](Number::Square) | sums and differences of squares of `Coord`s, **exact** or nearly so | `Coord`² |
-/// | [`Ratio`](Number::Ratio) | a pure number in (−8, 8) | 1 |
-/// | [`Product`](Number::Product) | `Coord`·`Coord` or `Coord`·`Ratio`, rounded as the system likes | |
+/// | [`Ratio`](Number::Ratio) | a pure number in [−1, 1] | 1 |
+/// | [`Product`](Number::Product) | `Coord`·`Ratio`, rounded as the system likes | |
 /// | [`Angle`](Number::Angle) | an angle in (−½, ½] turn | the system's own |
 ///
 /// # Contract
@@ -73,15 +75,20 @@ pub trait Number: Copy + Debug + PartialEq + 'static {
         + PartialOrd
         + Add<Output = Self::Square>
         + Sub<Output = Self::Square>;
-    /// A pure number in (−8, 8).
+    /// A pure number in [−1, 1].
     type Ratio: Copy
         + Debug
         + PartialEq
         + Add<Output = Self::Ratio>
         + Sub<Output = Self::Ratio>
         + Neg<Output = Self::Ratio>;
-    /// A product of two coordinates, or of a coordinate and a ratio.
-    type Product: Copy + Debug + PartialEq + Add<Output = Self::Product> + Sub<Output = Self::Product>;
+    /// A product of a coordinate and a ratio.
+    type Product: Copy
+        + Debug
+        + PartialEq
+        + Add<Output = Self::Product>
+        + Sub<Output = Self::Product>
+        + Neg<Output = Self::Product>;
     /// An angle in (−½, ½] turn, in the system's own unit.
     type Angle: Copy + Debug + PartialEq + PartialOrd;
     /// What turns `Length` into `Coord` and back, fixed per leg.
@@ -117,27 +124,18 @@ pub trait Number: Copy + Debug + PartialEq + 'static {
 
     /// The scale for a leg that reaches `radius_mm` from its origin; `None` if it is too long or too short.
     fn scale_for(radius_mm: f64) -> Option<Self::Scale>;
-    /// The scale for a leg that reaches `radius_mm` from its origin, whose thigh's vector has a norm of up to `norm_mm` and
-    /// whose ratios are `lean` at the most; for number systems that spend the bits which these leave on ratios.
-    fn scale_for_links(radius_mm: f64, _norm_mm: f64, _lean: f64) -> Option<Self::Scale> {
-        Self::scale_for(radius_mm)
-    }
     /// mm, rounded.
     fn length_from_mm(mm: f64) -> Self::Length;
     /// mm, rounded.
     fn coord_from_mm(mm: f64, scale: Self::Scale) -> Self::Coord;
     /// mm², rounded.
     fn square_from_mm2(mm2: f64, scale: Self::Scale) -> Self::Square;
-    /// A pure number in (−8, 8), rounded.
+    /// A pure number in [−1, 1], rounded.
     fn ratio_from(value: f64) -> Self::Ratio;
     /// mm², rounded; or a hair less, for number systems that want a root of what is left with it taken off to be no
     /// less than a hair.
     fn cylinder_from_mm2(mm2: f64, scale: Self::Scale) -> Self::Square {
         Self::square_from_mm2(mm2, scale)
-    }
-    /// A ratio that goes with those of [`knee`](Number::knee).
-    fn lean_from(value: f64, _scale: Self::Scale) -> Self::Ratio {
-        Self::ratio_from(value)
     }
     /// mm, as a product of a coordinate and a ratio.
     fn product_from_mm(mm: f64, scale: Self::Scale) -> Self::Product;
@@ -227,53 +225,30 @@ pub trait Number: Copy + Debug + PartialEq + 'static {
     ) -> (Self::Coord, Self::Square) {
         Self::radial(radial_square, offset, scale)
     }
-    /// a·b.
-    fn area(a: Self::Coord, b: Self::Coord) -> Self::Product;
     /// coord·ratio.
     fn stretch(coord: Self::Coord, ratio: Self::Ratio) -> Self::Product;
     /// coord·1.
     fn widen(coord: Self::Coord) -> Self::Product;
-    /// The angle of the vector (x, y) whose norm is known, as 2·arctan(y / (norm + |x|)), in (−½, ½] turn;
-    /// 0 for the zero vector.
-    fn angle(y: Self::Product, x: Self::Product, norm: Self::Product) -> Self::Angle;
-    /// The hip of a roll-hip leg: the angle of (y·offset − z·depth, z·offset + y·depth), whose norm is y² + z².
+    /// The angle by which the vector `from` is to be turned to come to `to`, which is as long, in (−½, ½] turn; 0 for zero
+    /// vectors.
+    ///
+    /// If rounding left the two lengths apart by d, `from` so turned misses `to` by d along it, and by no more than d across.
+    fn turn(from: [Self::Product; 2], to: [Self::Coord; 2]) -> Self::Angle;
+    /// The hip of a roll-hip leg: what turns (offset, −depth) to (y, z), which is as long.
     #[inline(always)]
-    fn hip_angle([y, z]: [Self::Coord; 2], offset: Self::Coord, depth: Self::Coord) -> Self::Angle {
-        Self::angle(
-            Self::area(z, offset) + Self::area(y, depth),
-            Self::area(y, offset) - Self::area(z, depth),
-            Self::area(y, y) + Self::area(z, z),
-        )
+    fn hip_angle(foot: [Self::Coord; 2], offset: Self::Coord, depth: Self::Coord) -> Self::Angle {
+        Self::turn([Self::widen(offset), -Self::widen(depth)], foot)
     }
     /// The hip of a yaw-hip leg: the angle of (y, x), whose norm is `radial`.
     #[inline(always)]
     fn yaw_angle([x, y]: [Self::Coord; 2], radial: Self::Coord) -> Self::Angle {
-        Self::angle(Self::widen(x), Self::widen(y), Self::widen(radial))
-    }
-    /// The ratio, or if it is to be negative its negative: the ratio times `sign`, which is 1 or −1.
-    #[inline(always)]
-    fn signed(ratio: Self::Ratio, _sign: Self::Ratio, negative: bool) -> Self::Ratio {
-        if negative { -ratio } else { ratio }
+        Self::turn([Self::widen(radial), Self::widen(Self::NO_COORD)], [y, x])
     }
     /// The knee's flexion: `acute`, or with the leg nearer to folded `end` less `acute`; `end` is the flexion at the nearer
     /// end of the reach, and `sign` is 1 if that is folded and else −1.
     #[inline(always)]
     fn knee_angle(acute: Self::Angle, end: Self::Angle, _sign: Self::Ratio, folded: bool) -> Self::Angle {
         if folded { Self::angle_difference(end, acute) } else { acute }
-    }
-    /// The thigh: the angle of (along·p − across·q, across·p + along·q), whose norm is known.
-    #[inline(always)]
-    fn thigh_angle(
-        along: Self::Coord,
-        across: Self::Coord,
-        [p, q]: [Self::Ratio; 2],
-        norm: Self::Product,
-    ) -> Self::Angle {
-        Self::angle(
-            Self::stretch(across, p) + Self::stretch(along, q),
-            Self::stretch(along, p) - Self::stretch(across, q),
-            norm,
-        )
     }
     /// Knee flexion of the triangle with n = (L1+L2)² − G² ≥ 0 and m = 4·L1·L2 − n ≥ 0, both of them exact.
     fn knee(n: Self::Square, m: Self::Square, unit: Self::Unit, scale: Self::Scale) -> Knee<Self>;

@@ -190,14 +190,15 @@ pub fn float_coefficients() -> String {
         let list: Vec<_> = coefficients.iter().map(|c| format!("{indent}    {c:?},\n")).collect();
         format!("{name}[\n{}{indent}]", list.concat())
     };
-    let eighth = std::f64::consts::FRAC_PI_8.tan() * 1.001;
-    for (name, about, multiple, first, [above, below], end) in [
-        ("ARC_TANGENT", "2·arctan t − 2·t on [0, 1]", 2.0, 3, [3, 2], 1.0),
-        ("KNEE_ARC_TANGENT", "4·arctan t on [0, tan π/8]", 4.0, 1, [2, 2], eighth),
+    let most_sine = std::f64::consts::FRAC_1_SQRT_2 * 1.001;
+    type Function = fn(f64) -> f64;
+    for (name, about, function, first, [above, below], end) in [
+        ("ARC_TANGENT", "2·arctan t − 2·t on [0, 1]", (|t| 2.0 * t.atan()) as Function, 3, [3, 2], 1.0),
+        ("ARC_SINE", "2·arcsin t − 2·t on [0, √½]", |t| 2.0 * t.asin(), 3, [2, 2], most_sine),
     ] {
-        let left = if first == 3 { multiple } else { 0.0 };
-        let best = minimax(|t| multiple * t.atan() - left * t, first, [above, below], end);
-        let (single, error) = rounded(&best, |t| multiple * t.atan(), first, end);
+        let left = if first == 3 { 2.0 } else { 0.0 };
+        let best = minimax(|t| function(t) - left * t, first, [above, below], end);
+        let (single, error) = rounded(&best, function, first, end);
         let _ = write!(
             text,
             "\n/// {about}, within {:.1e}; rounded and in `f32`, within {error:.1e}.\n#[rustfmt::skip]\n\

@@ -64,7 +64,7 @@ opaque! {
         use_up(M::root(Raw::raw()));
         use_up(M::root_of_words(word() as i32, word()));
         use_up(M::double_arc_tangent(Raw::raw()));
-        use_up(M::quadruple_arc_tangent(Raw::raw()));
+        use_up(M::double_arc_sine(Raw::raw(), Raw::raw(), Raw::raw()));
         use_up(M::sin_cos(Raw::raw()));
     };
 }
@@ -78,15 +78,15 @@ opaque! { [] ik_core::Fixed16, {}; }
 /// Every function of the trait, for all that the ones before it can give.
 pub fn every_primitive<N: Opaque>() {
     N::own();
-    use_up(N::scale_for(number()));
-    let Some(scale) = N::scale_for_links(number(), number(), number()) else { return };
+    let Some(scale) = N::scale_for(number()) else { return };
     let ratio = || N::ratio_from(number());
     let product = || N::product_from_mm(number(), scale);
     let square = || N::square_from_mm2(number(), scale);
     let coord = || N::coord_from_mm(number(), scale);
     let angle = || N::angle_from_turns(number());
     use_up(N::range_from_turns(two()));
-    use_up([ratio(), N::lean_from(number(), scale)]);
+    use_up(ratio());
+    use_up(N::extent([N::any_angle(), N::any_angle()], two()));
     use_up(N::length_from_mm(number()));
 
     let foot = [N::any_length(), N::any_length(), N::any_length()];
@@ -106,15 +106,12 @@ pub fn every_primitive<N: Opaque>() {
     use_up(N::radial(square(), coord(), scale));
     use_up(N::radial_of([coord(), coord()], square(), coord(), scale));
     use_up(N::depth([coord(), coord()], coord(), square(), scale));
-    use_up(N::area(coord(), coord()));
     use_up(N::stretch(coord(), ratio()));
     use_up(N::widen(coord()));
-    use_up(N::angle(product(), product(), product()));
+    use_up(N::turn([product(), product()], [coord(), coord()]));
     use_up(N::hip_angle([coord(), coord()], coord(), coord()));
     use_up(N::yaw_angle([coord(), coord()], coord()));
-    use_up(N::signed(ratio(), ratio(), truth()));
     use_up(N::knee_angle(N::any_angle(), N::any_angle(), ratio(), truth()));
-    use_up(N::thigh_angle(coord(), coord(), [ratio(), ratio()], product()));
     use_up(N::knee(square(), square(), N::unit_from_mm(number(), scale), scale));
     use_up(N::are_sound(N::any_angle(), N::any_angle()));
 

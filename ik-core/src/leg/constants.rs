@@ -33,29 +33,29 @@ pub struct Constants<N: Number> {
     pub(crate) axis_corner: N::Coord,
     pub(crate) thigh: N::Coord,
     pub(crate) shank: N::Coord,
-    /// P/(4·L1·L2) and the norm of the thigh's vector of a straight leg: (L1+L2)/(2·L2), (L1+L2)²/(2·L2).
+    /// What knee and thigh are worked out from, at either end of the reach of free links.
     pub(crate) straight: KneeEnd<N>,
-    /// The same of a folded leg: (L1−L2)/(2·L2), (L1−L2)²/(2·L2).
     pub(crate) folded: KneeEnd<N>,
+    /// 2·L2, negative if the knee bends forward or up: what the foot moves across by half of the knee's sine.
+    pub(crate) sway: N::Coord,
     /// The reciprocal of 2·√(L1·L2).
     pub(crate) unit: N::Unit,
     pub(crate) bends_back: bool,
-    /// −1 if it bends back, else 1.
-    pub(crate) side: N::Ratio,
     /// Whether the knee's range ends before straight, and before folded: else it is the links that end the reach.
     pub(crate) knee_stops: [bool; 2],
     pub(crate) ranges: Ranges<N>,
 }
 
-/// What knee and thigh are worked out from, at an end of the reach of free links.
+/// An end of the reach of free links.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub(crate) struct KneeEnd<N: Number> {
     /// The knee's angle: 0 or half a turn.
     pub(crate) knee: N::Angle,
-    pub(crate) lean: N::Ratio,
-    pub(crate) norm: N::Product,
-    /// What `lean` and `norm` change by, away from this end: −1 and −2·L1 from straight, 1 and 2·L1 from folded.
+    /// −1 if that is straight, 1 if it is folded.
     pub(crate) sign: N::Ratio,
+    /// Where the foot is along a thigh that hangs straight down: L1 + L2, or L1 − L2.
+    pub(crate) along: N::Product,
+    /// By what it moves from there, away from this end: −2·L2, or 2·L2.
     pub(crate) swing: N::Coord,
 }
 
@@ -67,14 +67,13 @@ macro_rules! constants {
         let (offset, thigh, shank) = (dimensions.offset_mm(), dimensions.thigh_mm(), dimensions.shank_mm());
         let radius = dimensions.radius_mm();
         let reach = thigh + shank;
-        match <$number>::scale_for_links(radius, reach * reach / (2.0 * shank), reach / (2.0 * shank)) {
+        match <$number>::scale_for(radius) {
             None => Err(if radius < 1.0 {
                 $crate::geometry::GeometryError::TooShort
             } else {
                 $crate::geometry::GeometryError::TooLong
             }),
             Some(scale) => {
-                let reach = thigh + shank;
                 let product = thigh * shank;
                 let knee = limits.knee_deg();
                 let straightest = 4.0 * product * $crate::const_math::half_sine_square(knee[0]);
@@ -102,24 +101,22 @@ macro_rules! constants {
                     shank: <$number>::coord_from_mm(shank, scale),
                     straight: $crate::leg::constants::KneeEnd {
                         knee: <$number as $crate::Number>::NO_ANGLE,
-                        lean: <$number>::lean_from(reach / (2.0 * shank), scale),
-                        norm: <$number>::product_from_mm(reach * reach / (2.0 * shank), scale),
                         sign: <$number>::ratio_from(-1.0),
-                        swing: <$number>::coord_from_mm(-2.0 * thigh, scale),
+                        along: <$number>::product_from_mm(reach, scale),
+                        swing: <$number>::coord_from_mm(-2.0 * shank, scale),
                     },
                     folded: $crate::leg::constants::KneeEnd {
                         knee: <$number as $crate::Number>::MOST_ANGLE,
-                        lean: <$number>::lean_from((thigh - shank) / (2.0 * shank), scale),
-                        norm: <$number>::product_from_mm(
-                            (thigh - shank) * (thigh - shank) / (2.0 * shank),
-                            scale,
-                        ),
                         sign: <$number>::ratio_from(1.0),
-                        swing: <$number>::coord_from_mm(2.0 * thigh, scale),
+                        along: <$number>::product_from_mm(thigh - shank, scale),
+                        swing: <$number>::coord_from_mm(2.0 * shank, scale),
                     },
+                    sway: <$number>::coord_from_mm(
+                        if dimensions.bends_back() { 2.0 * shank } else { -2.0 * shank },
+                        scale,
+                    ),
                     unit: <$number>::unit_from_mm(2.0 * root(product), scale),
                     bends_back: dimensions.bends_back(),
-                    side: <$number>::ratio_from(if dimensions.bends_back() { -1.0 } else { 1.0 }),
                     knee_stops: [knee[0] > 0.0, knee[1] < 180.0],
                     ranges: $crate::limits::Ranges {
                         free: limits.are_free(),

@@ -142,7 +142,7 @@ fn on_the_cylinder<N: Number>(
     let [y, z, _] = N::enlarged([y, z, N::NO_COORD]);
     let radial = N::root(N::square(y, leg.scale) + N::square(z, leg.scale), leg.scale);
     let plane = Plane {
-        hip: Angle(N::angle(N::widen(z), N::widen(y), N::widen(radial))),
+        hip: Angle(N::turn([N::widen(radial), N::widen(N::NO_COORD)], [y, z])),
         across: if x < N::NO_COORD { -ahead } else { ahead },
         along: N::NO_COORD,
         n,

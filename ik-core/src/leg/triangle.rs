@@ -9,12 +9,11 @@ use crate::number::Number;
 #[inline(always)]
 pub(super) fn angles<N: Number>(leg: &Constants<N>, plane: &Plane<N>) -> (N::Angle, N::Angle) {
     let knee = N::knee(plane.n, leg.fold_square - plane.n, leg.unit, leg.scale);
-    // In the unit 4·L1·L2: P, q, and the norm 2·L1·G² of the thigh's vector, all from the nearer end of the reach.
+    // The foot of a thigh that hangs straight down, from the nearer end of the reach; the thigh turns it to where it is.
     let end = if knee.folded { &leg.folded } else { &leg.straight };
-    let p = end.lean + N::signed(knee.from_end, end.sign, !knee.folded);
-    let norm = end.norm + N::stretch(end.swing, knee.from_end);
-    let q = N::signed(knee.half_sine, leg.side, leg.bends_back);
-    let thigh = N::thigh_angle(plane.along, plane.across, [p, q], norm);
+    let along = end.along + N::stretch(end.swing, knee.from_end);
+    let across = N::stretch(leg.sway, knee.half_sine);
+    let thigh = N::turn([along, across], [plane.along, plane.across]);
     (thigh, N::knee_angle(knee.acute, end.knee, end.sign, knee.folded))
 }
 

@@ -66,8 +66,7 @@ impl Stage for YawHip {
         } else {
             (along, across)
         };
-        // There may be no radius here.
-        let hip = Angle(N::angle(N::widen(x), N::widen(y), N::widen(radial)));
+        let hip = Angle(N::yaw_angle([x, y], radial));
         (Plane { hip, across, along, n }, Some(end))
     }
 

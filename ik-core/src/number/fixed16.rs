@@ -16,7 +16,7 @@ mod root;
 mod sine;
 
 use super::line::FixedLine;
-use super::{Knee, Number, Placed};
+use super::{Knee, Number, Placed, rhombus};
 use crate::const_math::{inward, nearest_i32, power_of_two};
 use crate::limits::Range;
 use fixed::types::{I0F16, I10F6};
@@ -45,8 +45,6 @@ pub struct Fixed16;
 pub struct Fixed16Scale {
     /// Coordinates are `I10F6` bits times this, a power of two.
     steps: i32,
-    /// 32 less the fraction bits of the ratios of the triangle.
-    ratio_drop: u32,
 }
 
 /// The reciprocal of a length unit: 2^(16 + shift) over it, from 2^15 to 2^16.
@@ -62,20 +60,17 @@ impl Fixed16Scale {
     const fn units_per_mm(self) -> f64 {
         self.steps as f64 * power_of_two(LENGTH_BITS)
     }
-
-    /// Units of a product of a coordinate and a ratio of the triangle in a millimetre.
-    const fn product_units_per_mm(self) -> f64 {
-        self.units_per_mm() * power_of_two(32 - self.ratio_drop as i32)
-    }
 }
 
-/// The farthest that a leg's foot gets is below this. A coordinate times a ratio of up to 4.5, which links of 8:1 ask
-/// for, then stays within an `i32`.
+/// The farthest that a leg's foot gets is below this. The squares of its coordinates, and twice its links times a ratio of up to
+/// ½, then stay within an `i32`.
 const RADIUS_LIMIT: f64 = 29_000.0;
 /// Fraction bits of `I10F6`.
 const LENGTH_BITS: i32 = 6;
-/// Fraction bits of a sine or cosine.
-const RATIO_BITS: u32 = 14;
+/// Fraction bits of a ratio.
+const RATIO_BITS: u32 = 16;
+/// Bits that a product of a coordinate and a ratio has below those of a coordinate.
+const PRODUCT_BITS: u32 = 1;
 /// Half a turn; one less is the largest angle there is.
 const HALF_TURN: i32 = 1 << 15;
 /// Fraction bits of a gain in µs per turn.
@@ -84,24 +79,14 @@ const GAIN_BITS: u32 = 15;
 const SWING_BITS: u32 = 30;
 
 impl Fixed16 {
-    /// For links of 8:1.
     pub(crate) const fn scale_for(radius_mm: f64) -> Option<Fixed16Scale> {
-        Self::scale_for_links(radius_mm, 4.5 * radius_mm, 4.5)
-    }
-
-    pub(crate) const fn scale_for_links(radius_mm: f64, norm_mm: f64, _: f64) -> Option<Fixed16Scale> {
         // Negated so that NaN is refused.
         if !(radius_mm >= 1.0 && radius_mm <= 453.0) {
             return None;
         }
-        let mut scale = Fixed16Scale { steps: 1, ratio_drop: 18 };
+        let mut scale = Fixed16Scale { steps: 1 };
         while radius_mm * scale.units_per_mm() * 2.0 < RADIUS_LIMIT {
             scale.steps *= 2;
-        }
-        // Products stay a little below 2^31, for what rounding adds to them.
-        while scale.ratio_drop > 15 && norm_mm * scale.product_units_per_mm() * 2.0 < 0.996 * power_of_two(31)
-        {
-            scale.ratio_drop -= 1;
         }
         Some(scale)
     }
@@ -123,11 +108,7 @@ impl Fixed16 {
     }
 
     pub(crate) const fn product_from_mm(mm: f64, scale: Fixed16Scale) -> i32 {
-        nearest_i32(mm * scale.product_units_per_mm())
-    }
-
-    pub(crate) const fn lean_from(value: f64, scale: Fixed16Scale) -> i32 {
-        nearest_i32(value * power_of_two(32 - scale.ratio_drop as i32))
+        nearest_i32(mm * scale.units_per_mm() * power_of_two(PRODUCT_BITS as i32))
     }
 
     pub(crate) const fn unit_from_mm(unit_mm: f64, scale: Fixed16Scale) -> Fixed16Unit {
@@ -211,12 +192,6 @@ impl Number for Fixed16 {
 
     fn scale_for(radius_mm: f64) -> Option<Fixed16Scale> {
         Fixed16::scale_for(radius_mm)
-    }
-    fn scale_for_links(radius_mm: f64, norm_mm: f64, lean: f64) -> Option<Fixed16Scale> {
-        Fixed16::scale_for_links(radius_mm, norm_mm, lean)
-    }
-    fn lean_from(value: f64, scale: Fixed16Scale) -> i32 {
-        Fixed16::lean_from(value, scale)
     }
     fn length_from_mm(mm: f64) -> I10F6 {
         Fixed16::length_from_mm(mm)
@@ -319,40 +294,53 @@ impl Number for Fixed16 {
     }
 
     #[inline(always)]
-    fn area(a: i32, b: i32) -> i32 {
-        a.wrapping_mul(b)
-    }
-
-    #[inline(always)]
     fn stretch(coord: i32, ratio: i32) -> i32 {
-        coord.wrapping_mul(ratio)
+        coord.wrapping_mul(ratio).wrapping_add(1 << (RATIO_BITS - PRODUCT_BITS - 1))
+            >> (RATIO_BITS - PRODUCT_BITS)
     }
 
     #[inline(always)]
     fn widen(coord: i32) -> i32 {
-        coord << RATIO_BITS
+        coord << PRODUCT_BITS
+    }
+
+    /// From products, which cost no more than sums, and are exact.
+    #[inline(always)]
+    fn turn([from_x, from_y]: [i32; 2], [to_x, to_y]: [i32; 2]) -> I0F16 {
+        // A product has a bit more than a coordinate: both together have 31.
+        let across = from_x.wrapping_mul(to_y).wrapping_sub(from_y.wrapping_mul(to_x));
+        let along = from_x.wrapping_mul(to_x).wrapping_add(from_y.wrapping_mul(to_y));
+        let square = to_x.wrapping_mul(to_x).wrapping_add(to_y.wrapping_mul(to_y));
+        if along < 0 {
+            return any_turn([from_x, from_y], [to_x << PRODUCT_BITS, to_y << PRODUCT_BITS]);
+        }
+        let run = (square << PRODUCT_BITS).wrapping_add(along) as u32;
+        // Rounding may leave it a step above.
+        let rise = across.unsigned_abs().min(run);
+        I0F16::from_bits(rhombus::signed(double_angle(rise, run), across) as i16)
     }
 
     #[inline(always)]
-    fn angle(y: i32, x: i32, norm: i32) -> I0F16 {
-        let (rise, run) = (y.unsigned_abs(), (norm as u32).wrapping_add(x.unsigned_abs()));
-        let mut size = half_angle::double_angle(rise, run) as i32;
-        if x < 0 {
+    fn yaw_angle([x, y]: [i32; 2], radial: i32) -> I0F16 {
+        let run = (radial as u32).wrapping_add(y.unsigned_abs());
+        // Rounding may leave |x| a step above. Of 16 bits each, lifted to where short ones lie no longer.
+        let mut size = double_angle(x.unsigned_abs().min(run) << 15, run << 15);
+        if y < 0 {
             size = from_behind(size);
         }
         // By the sign's mask: with a branch, all of the above would be there twice.
-        let sign = y >> 31;
+        let sign = x >> 31;
         I0F16::from_bits(((size ^ sign) - sign) as i16)
     }
 
     #[inline(always)]
-    fn knee(n: i32, m: i32, unit: Fixed16Unit, scale: Fixed16Scale) -> Knee<Self> {
+    fn knee(n: i32, m: i32, unit: Fixed16Unit, _: Fixed16Scale) -> Knee<Self> {
         // The smaller of n and m gives a half-angle of 45° at the most.
         let folded = m < n;
         let least = if folded { m } else { n };
         let root = root::root(least as u32);
         let sine = (root.wide >> 16).wrapping_mul(unit.reciprocal) >> ((unit.shift + root.halvings) & 31);
-        let (knee, half_sine, from_end) = knee::of_half_sine(sine, scale.ratio_drop & 31);
+        let (knee, half_sine, from_end) = knee::of_half_sine(sine);
         Knee { acute: I0F16::from_bits(knee as i16), half_sine, folded, from_end }
     }
 
@@ -389,7 +377,7 @@ impl Number for Fixed16 {
 
     #[inline(always)]
     fn narrow(product: i32) -> i32 {
-        ((product >> (RATIO_BITS - 1)) + 1) >> 1
+        (product + (1 << (PRODUCT_BITS - 1))) >> PRODUCT_BITS
     }
 
     fn enlarged(vector: [i32; 3]) -> [i32; 3] {
@@ -453,6 +441,17 @@ fn is_near([x, y, z]: [i32; 3]) -> bool {
     (beyond(x) | beyond(y) | beyond(z)) == 0 && squares as u32 >> 30 == 0
 }
 
+/// 2·arctan(rise / run) in 2^-16 turn, for rise ≤ run.
+#[inline(always)]
+fn double_angle(rise: u32, run: u32) -> i32 {
+    half_angle::double_angle(rise, run) as i32
+}
+
+fn any_turn(from: [i32; 2], to: [i32; 2]) -> I0F16 {
+    let angles = rhombus::Angles { double_angle, half_turn: [HALF_TURN, HALF_TURN - 1] };
+    I0F16::from_bits(rhombus::any_turn(from, to, angles) as i16)
+}
+
 /// An angle as seen from the opposite direction.
 #[cold]
 #[inline(never)]
@@ -495,20 +494,20 @@ mod tests {
     use crate::{Bend, Dimensions, GeometryError, Leg, Limits, RollHip, YawHip};
 
     fn scale() -> Fixed16Scale {
-        Fixed16::scale_for_links(232.5, 188.8, 0.9).expect("a scale")
+        Fixed16::scale_for(232.5).expect("a scale")
     }
 
     #[test]
     fn an_angle_has_the_quadrant_of_its_vector() {
         for (y, x) in [(3, 4), (3, -4), (-3, 4), (-3, -4), (1, 1), (-1, -1), (0, 1), (1, 0), (-1, 0)] {
-            let (y, x) = (y * 40_000, x * 40_000);
+            let (y, x) = (y * 4_000, x * 4_000);
             let norm = f64::from(y).hypot(f64::from(x)).round() as i32;
-            let got = Fixed16::turns(Fixed16::angle(y, x, norm)) * core::f64::consts::TAU;
+            let got = Fixed16::turns(Fixed16::turn([2 * norm, 0], [x, y])) * core::f64::consts::TAU;
             assert!((got - f64::from(y).atan2(f64::from(x))).abs() < 2e-4, "{y} {x}: {got}");
         }
-        assert_eq!(Fixed16::angle(0, 0, 0), I0F16::ZERO);
+        assert_eq!(Fixed16::turn([0, 0], [0, 0]), I0F16::ZERO);
         // Half a turn saturates just inside, on either side.
-        assert_eq!(Fixed16::angle(0, -70_000, 70_000), I0F16::MAX);
+        assert_eq!(Fixed16::turn([14_000, 0], [-7_000, 0]), I0F16::MAX);
     }
 
     #[test]
@@ -517,9 +516,13 @@ mod tests {
         for a in sorts {
             let _ = (Fixed16::square(a, scale()), Fixed16::root(a, scale()));
             for b in sorts {
-                let _ = (Fixed16::area(a, b), Fixed16::stretch(a, b), Fixed16::rescale(a, b, b));
+                let _ = (Fixed16::stretch(a, b), Fixed16::rescale(a, b, b));
                 for c in sorts {
-                    let _ = Fixed16::angle(a, b, c);
+                    let _ = (
+                        Fixed16::turn([a, b], [c, a]),
+                        Fixed16::yaw_angle([a, b], c),
+                        Fixed16::hip_angle([a, b], c, a),
+                    );
                 }
             }
         }

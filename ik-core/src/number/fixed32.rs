@@ -11,7 +11,7 @@ mod root;
 mod sine;
 
 use super::line::FixedLine;
-use super::{Knee, Number, Placed, seldom};
+use super::{Knee, Number, Placed, rhombus, seldom};
 use crate::const_math::{inward, nearest, nearest_i32, power_of_two};
 use crate::limits::Range;
 use fixed::types::{I0F32, I16F16};
@@ -46,12 +46,19 @@ impl FixedScale {
     }
 }
 
-/// Coordinates of a leg's working range lie below this.
+/// Coordinates of a leg's working range lie below this; those of a foot in reach so far below it that two of them add up,
+/// whatever rounding does.
 const COORD_LIMIT: i32 = 1 << 30;
+/// What they lie below it, or more.
+const COORD_ROOM: i32 = 1 << 6;
 /// Fraction bits of `I16F16`.
 const LENGTH_BITS: i32 = 16;
-/// Fraction bits of a ratio: ±8.
-const RATIO_BITS: u32 = 28;
+/// Sums of upper words of products that are below this have too few bits.
+const LEAST_RUN: u32 = 1 << 22;
+/// Fraction bits of a ratio.
+const RATIO_BITS: u32 = 30;
+/// What a product of a coordinate and a ratio lacks: it is the upper word.
+const PRODUCT_DROP: i32 = 32 - RATIO_BITS as i32;
 /// Fraction bits of the sine of half the knee.
 const SINE_BITS: u32 = 27;
 /// Fraction bits of the unit's reciprocal times a coordinate, above [`SINE_BITS`].
@@ -66,14 +73,12 @@ impl Fixed32 {
             return None;
         }
         let mut shift = 0;
-        while shift < 13 && radius_mm * power_of_two(LENGTH_BITS + shift as i32 + 1) < COORD_LIMIT as f64 {
+        while shift < 13
+            && radius_mm * power_of_two(LENGTH_BITS + shift as i32 + 1) < (COORD_LIMIT - COORD_ROOM) as f64
+        {
             shift += 1;
         }
         Some(FixedScale { shift, factor: 1 << shift, limit: COORD_LIMIT >> shift })
-    }
-
-    pub(crate) const fn scale_for_links(radius_mm: f64, _: f64, _: f64) -> Option<FixedScale> {
-        Self::scale_for(radius_mm)
     }
 
     pub(crate) const fn coord_from_mm(mm: f64, scale: FixedScale) -> i32 {
@@ -92,12 +97,8 @@ impl Fixed32 {
         nearest_i32(value * power_of_two(RATIO_BITS as i32))
     }
 
-    pub(crate) const fn lean_from(value: f64, _: FixedScale) -> i32 {
-        Self::ratio_from(value)
-    }
-
-    pub(crate) const fn product_from_mm(mm: f64, scale: FixedScale) -> i64 {
-        nearest(mm * scale.units_per_mm() * power_of_two(RATIO_BITS as i32))
+    pub(crate) const fn product_from_mm(mm: f64, scale: FixedScale) -> i32 {
+        nearest_i32(mm * scale.units_per_mm() * power_of_two(-PRODUCT_DROP))
     }
 
     pub(crate) const fn unit_from_mm(unit_mm: f64, scale: FixedScale) -> u32 {
@@ -153,60 +154,24 @@ const fn saturated(value: i64) -> i32 {
     }
 }
 
-/// The upper half.
+/// [`Number::turn`] from products, which cost no more than sums: their upper words have up to 28 bits. `None` if the vectors
+/// are so short that they are not enough, or the angle obtuse, which is seldom. `from` lacks `drop` bits.
 #[inline(always)]
-const fn upper(product: i64) -> i32 {
-    (product >> 32) as i32
-}
-
-/// Norms of which the upper half is worth less than this are looked at whole.
-const LEAST_UPPER: u32 = 1 << 22;
-
-/// The angle from the upper halves of products, 28 bits where the leg reaches far; `None` if the norm is so small that
-/// they are not enough, or the angle obtuse, which is seldom.
-#[inline(always)]
-fn angle_of_upper(y: i32, x: i32, norm: i32) -> Option<I0F32> {
-    let run = (norm as u32).wrapping_add(x as u32);
-    if x < 0 || run < LEAST_UPPER {
+fn usual_turn([from_x, from_y]: [i32; 2], [to_x, to_y]: [i32; 2], drop: u32) -> Option<I0F32> {
+    let upper = |a: i32, b: i32| ((i64::from(a) * i64::from(b)) >> 32) as i32;
+    let across = upper(from_x, to_y) - upper(from_y, to_x);
+    let along = upper(from_x, to_x) + upper(from_y, to_y);
+    let run = (((upper(to_x, to_x) + upper(to_y, to_y)) >> drop) + along) as u32;
+    if along < 0 || run < LEAST_RUN {
         return None;
     }
-    Some(signed(arctangent::double_angle(y.unsigned_abs(), run), y < 0, false))
+    Some(I0F32::from_bits(rhombus::signed(arctangent::double_angle(across.unsigned_abs(), run), across)))
 }
 
-/// The angle with 2·arctan(|y| / (norm + |x|)) = `half`, in its quadrant.
 #[inline(always)]
-fn signed(half: i32, y_is_negative: bool, x_is_negative: bool) -> I0F32 {
-    let size = if x_is_negative { i32::MAX - half } else { half };
-    I0F32::from_bits(if y_is_negative { -size } else { size })
-}
-
-/// The angle from as many bits as there are.
-#[cold]
-#[inline(never)]
-fn angle_of_all(y: i64, x: i64, norm: i64) -> I0F32 {
-    let run = norm.unsigned_abs() + x.unsigned_abs();
-    if run == 0 {
-        return I0F32::ZERO;
-    }
-    // The run's upper half in [2^29, 2^30); both are shifted by the same.
-    let shift = run.leading_zeros().saturating_sub(2);
-    let rise = y.unsigned_abs().min(run);
-    let half = arctangent::double_angle(((rise << shift) >> 32) as u32, ((run << shift) >> 32) as u32);
-    signed(half, y < 0, x < 0)
-}
-
-#[cold]
-#[inline(never)]
-fn hip_angle_of_all([y, z]: [i32; 2], offset: i32, depth: i32) -> I0F32 {
-    let area = Fixed32::area;
-    angle_of_all(area(z, offset) + area(y, depth), area(y, offset) - area(z, depth), area(y, y) + area(z, z))
-}
-
-#[cold]
-#[inline(never)]
-fn thigh_angle_of_all(along: i32, across: i32, [p, q]: [i32; 2], norm: i64) -> I0F32 {
-    let area = Fixed32::area;
-    angle_of_all(area(across, p) + area(along, q), area(along, p) - area(across, q), norm)
+fn any_turn(from: [i32; 2], to: [i32; 2]) -> I0F32 {
+    let angles = rhombus::Angles { double_angle: arctangent::double_angle, half_turn: [i32::MAX; 2] };
+    I0F32::from_bits(rhombus::any_turn(from, to, angles))
 }
 
 impl Number for Fixed32 {
@@ -214,7 +179,7 @@ impl Number for Fixed32 {
     type Coord = i32;
     type Square = i64;
     type Ratio = i32;
-    type Product = i64;
+    type Product = i32;
     type Angle = I0F32;
     type Scale = FixedScale;
     type Unit = u32;
@@ -246,7 +211,7 @@ impl Number for Fixed32 {
     fn ratio_from(value: f64) -> i32 {
         Fixed32::ratio_from(value)
     }
-    fn product_from_mm(mm: f64, scale: FixedScale) -> i64 {
+    fn product_from_mm(mm: f64, scale: FixedScale) -> i32 {
         Fixed32::product_from_mm(mm, scale)
     }
     fn unit_from_mm(unit_mm: f64, scale: FixedScale) -> u32 {
@@ -334,56 +299,40 @@ impl Number for Fixed32 {
     }
 
     #[inline(always)]
-    fn area(a: i32, b: i32) -> i64 {
-        i64::from(a) * i64::from(b)
+    fn stretch(coord: i32, ratio: i32) -> i32 {
+        ((i64::from(coord) * i64::from(ratio)) >> 32) as i32
     }
 
     #[inline(always)]
-    fn stretch(coord: i32, ratio: i32) -> i64 {
-        i64::from(coord) * i64::from(ratio)
+    fn widen(coord: i32) -> i32 {
+        coord >> PRODUCT_DROP
     }
 
     #[inline(always)]
-    fn widen(coord: i32) -> i64 {
-        // A bit less than there is room for, so that two of them add up.
-        i64::from(coord) << 31
-    }
-
-    #[inline(always)]
-    fn angle(y: i64, x: i64, norm: i64) -> I0F32 {
-        match angle_of_upper(upper(y), upper(x), upper(norm)) {
+    fn turn(from: [i32; 2], to: [i32; 2]) -> I0F32 {
+        match usual_turn(from, to, PRODUCT_DROP as u32) {
             Some(angle) => angle,
-            None => angle_of_all(y, x, norm),
+            None => any_turn(from, to.map(Self::widen)),
+        }
+    }
+
+    /// From coordinates, for their scale does not count.
+    #[inline(always)]
+    fn hip_angle(foot: [i32; 2], offset: i32, depth: i32) -> I0F32 {
+        let from = [offset, depth.wrapping_neg()];
+        match usual_turn(from, foot, 0) {
+            Some(angle) => angle,
+            None => any_turn(from, foot),
         }
     }
 
     #[inline(always)]
-    fn hip_angle([y, z]: [i32; 2], offset: i32, depth: i32) -> I0F32 {
-        let area = |a, b| upper(Self::area(a, b));
-        match angle_of_upper(
-            area(z, offset) + area(y, depth),
-            area(y, offset) - area(z, depth),
-            area(y, y) + area(z, z),
-        ) {
-            Some(angle) => angle,
-            None => hip_angle_of_all([y, z], offset, depth),
-        }
-    }
-
-    #[inline(always)]
-    fn signed(ratio: i32, sign: i32, _: bool) -> i32 {
-        let mask = sign >> 31;
-        (ratio ^ mask) - mask
-    }
-
-    #[inline(always)]
-    fn thigh_angle(along: i32, across: i32, [p, q]: [i32; 2], norm: i64) -> I0F32 {
-        let area = |a, b| upper(Self::area(a, b));
-        match angle_of_upper(area(across, p) + area(along, q), area(along, p) - area(across, q), upper(norm))
-        {
-            Some(angle) => angle,
-            None => thigh_angle_of_all(along, across, [p, q], norm),
-        }
+    fn yaw_angle([x, y]: [i32; 2], radial: i32) -> I0F32 {
+        // A foot out of reach may be so far that their sum needs 32 bits.
+        let run = (radial as u32).wrapping_add(y.unsigned_abs()) >> 1;
+        let half = arctangent::double_angle((x.unsigned_abs() >> 1).min(run), run);
+        let size = if y < 0 { i32::MAX - half } else { half };
+        I0F32::from_bits(if x < 0 { -size } else { size })
     }
 
     #[inline(always)]
@@ -398,14 +347,9 @@ impl Number for Fixed32 {
         let side = root::root(less as u64);
         let sine = ((u64::from(side) * u64::from(unit)) >> UNIT_BITS) as u32;
         let (knee, half_sine) = knee::knee(sine);
-        // sine² with 26 fraction bits is the upper half of that of four times the sine.
-        let square = ((u64::from(4 * sine) * u64::from(4 * sine)) >> 32) as i32;
-        Knee {
-            acute: I0F32::from_bits(knee),
-            half_sine,
-            folded,
-            from_end: square << (RATIO_BITS + 32 - 2 * (SINE_BITS + 2)),
-        }
+        // sine² with 30 fraction bits is the upper half of the square of the sine with 31, which is below 2^31.
+        let from_end = ((u64::from(16 * sine) * u64::from(16 * sine)) >> 32) as i32;
+        Knee { acute: I0F32::from_bits(knee), half_sine, folded, from_end }
     }
 
     #[inline(always)]
@@ -429,8 +373,8 @@ impl Number for Fixed32 {
     }
 
     #[inline(always)]
-    fn narrow(product: i64) -> i32 {
-        saturated(rounded_shift(product, RATIO_BITS))
+    fn narrow(product: i32) -> i32 {
+        product.wrapping_mul(1 << PRODUCT_DROP)
     }
 
     fn rescale(v: i32, to: i32, from: i32) -> i32 {

@@ -54,8 +54,8 @@ pub trait FloatMaths: Copy + core::fmt::Debug + PartialEq + 'static {
     }
     /// 2·arctan t for |t| ≤ 1.
     fn double_arc_tangent(t: f32) -> f32;
-    /// 4·arctan t for 0 ≤ t ≤ tan 22.5°.
-    fn quadruple_arc_tangent(t: f32) -> f32;
+    /// 2·arcsin s for 0 ≤ s ≤ √½ and a hair; its square and cosine are known.
+    fn double_arc_sine(sine: f32, square: f32, cosine: f32) -> f32;
     /// (sin, cos) for |angle| ≤ 2π.
     fn sin_cos(angle: f32) -> (f32, f32);
 }
@@ -133,10 +133,6 @@ impl<M: FloatMaths> Float<M> {
         })
     }
 
-    pub(crate) const fn scale_for_links(radius_mm: f64, _: f64, _: f64) -> Option<FloatScale> {
-        Self::scale_for(radius_mm)
-    }
-
     pub(crate) const fn coord_from_mm(mm: f64, _: FloatScale) -> f32 {
         mm as f32
     }
@@ -154,13 +150,8 @@ impl<M: FloatMaths> Float<M> {
         value as f32
     }
 
-    pub(crate) const fn lean_from(value: f64, _: FloatScale) -> f32 {
-        Self::ratio_from(value)
-    }
-
-    /// A hair above: see [`open_angle`].
-    pub(crate) const fn product_from_mm(mm: f64, scale: FloatScale) -> f32 {
-        (mm + scale.mm_per_root as f64 * power_of_two(-12 - STEP_BITS)) as f32
+    pub(crate) const fn product_from_mm(mm: f64, _: FloatScale) -> f32 {
+        mm as f32
     }
 
     /// Per unit of [`root`].
@@ -222,25 +213,17 @@ const fn wrapped(angle: f32) -> f32 {
     }
 }
 
-/// The angle of (x, y) for a norm that is sure to be no less than the vector's but for rounding, so that nothing need
-/// be held within ±1.
-///
-/// What makes it sure: lengths are rounded to whole steps, towards zero, before their squares are formed, which might
-/// make the norm of a vector of a few steps too small by half. So no depth and no radius is less than [`HAIR`]; and as much is
-/// added to the norm of a folded leg, too little to be seen in any other.
-#[inline(always)]
-fn open_angle<M: FloatMaths>(y: f32, x: f32, norm: f32) -> f32 {
-    if x < 0.0 { obtuse::<M>(y, x, norm) } else { M::double_arc_tangent(y / (norm + x)) }
-}
-
-/// Legs seldom reach that way.
+/// An angle of more than a quarter turn, which legs seldom reach; 0 for zero vectors, and NaN for NaN.
 #[cold]
 #[inline(never)]
-fn obtuse<M: FloatMaths>(y: f32, x: f32, norm: f32) -> f32 {
-    PI.copysign(y) - M::double_arc_tangent(y / (norm - x))
+fn obtuse<M: FloatMaths>(across: f32, along: f32, square: f32) -> f32 {
+    // No step, not even the square of one, is so small.
+    let half = across / (square + along.abs() + f32::MIN_POSITIVE);
+    if along < 0.0 { PI.copysign(across) - M::double_arc_tangent(half) } else { M::double_arc_tangent(half) }
 }
 
-/// Steps; see [`open_angle`].
+/// No radius is less than so many steps: lengths are rounded to whole steps, towards zero, before their squares are formed,
+/// which might make the norm of a vector of a few steps too small by half.
 const HAIR: f32 = 4.0;
 
 /// The root of a square, in [`STEPS_PER_ROOT`].
@@ -400,11 +383,6 @@ impl<M: FloatMaths> Number for Float<M> {
     }
 
     #[inline(always)]
-    fn area(a: f32, b: f32) -> f32 {
-        a * b
-    }
-
-    #[inline(always)]
     fn stretch(coord: f32, ratio: f32) -> f32 {
         coord * ratio
     }
@@ -414,36 +392,33 @@ impl<M: FloatMaths> Number for Float<M> {
         coord
     }
 
-    fn angle(y: f32, x: f32, norm: f32) -> f32 {
-        // A hair, so that the zero vector has an angle: 0. Rounding may leave |y| a last bit above the norm, which costs
-        // no more than that bit.
-        let acute = M::double_arc_tangent((y / (norm + x.abs() + f32::MIN_POSITIVE)).clamp(-1.0, 1.0));
-        if x < 0.0 { PI.copysign(acute) - acute } else { acute }
-    }
-
+    /// From products: where a product costs no more than a sum, choosing costs more.
     #[inline(always)]
-    fn hip_angle([y, z]: [f32; 2], offset: f32, depth: f32) -> f32 {
-        open_angle::<M>(z * offset + y * depth, y * offset - z * depth, depth * depth + offset * offset)
+    fn turn([from_x, from_y]: [f32; 2], [to_x, to_y]: [f32; 2]) -> f32 {
+        let across = from_x * to_y - from_y * to_x;
+        let along = from_x * to_x + from_y * to_y;
+        let square = from_x * from_x + from_y * from_y;
+        // Sure to be positive, or else an obtuse angle, or a zero vector, or NaN, is looked at again.
+        if along > 0.0 {
+            M::double_arc_tangent(across / (square + along))
+        } else {
+            obtuse::<M>(across, along, square)
+        }
     }
 
     #[inline(always)]
     fn yaw_angle([x, y]: [f32; 2], radial: f32) -> f32 {
-        open_angle::<M>(x, y, radial)
-    }
-
-    #[inline(always)]
-    fn thigh_angle(along: f32, across: f32, [p, q]: [f32; 2], norm: f32) -> f32 {
-        open_angle::<M>(across * p + along * q, along * p - across * q, norm)
+        if y < 0.0 {
+            seldom();
+            PI.copysign(x) - M::double_arc_tangent(x / (radial - y))
+        } else {
+            M::double_arc_tangent(x / (radial + y))
+        }
     }
 
     #[inline(always)]
     fn knee_angle(acute: f32, end: f32, sign: f32, _: bool) -> f32 {
         end - acute * sign
-    }
-
-    #[inline(always)]
-    fn signed(ratio: f32, sign: f32, _: bool) -> f32 {
-        ratio * sign
     }
 
     #[inline(always)]
@@ -458,8 +433,7 @@ impl<M: FloatMaths> Number for Float<M> {
         let sine = root::<M>(less) * unit;
         let square = sine * sine;
         let cosine = M::root(1.0 - square);
-        // 2·arctan(s / (1 + c)) is half the knee.
-        let knee = M::quadruple_arc_tangent(sine / (1.0 + cosine));
+        let knee = M::double_arc_sine(sine, square, cosine);
         Knee { acute: knee, half_sine: sine * cosine, folded, from_end: square }
     }
 

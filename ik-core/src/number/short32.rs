@@ -17,11 +17,11 @@ mod root;
 
 use super::line::FixedLine;
 use super::narrow::normal;
-use super::{Knee, Number, Placed, series};
+use super::{Knee, Number, Placed, rhombus, series};
 use crate::const_math::{inward, nearest, nearest_i32, power_of_two};
 use crate::limits::Range;
 use fixed::types::{I0F32, I16F16};
-use halves::{Halves, difference_of_products, product, square, sum_of_products, times, upper};
+use halves::{Halves, product, square, times, upper};
 
 /// 32-bit fixed point without long multiplication or division.
 ///
@@ -36,7 +36,7 @@ use halves::{Halves, difference_of_products, product, square, sum_of_products, t
 #[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct Short32;
 
-/// What turns lengths into coordinates, and how fine the ratios of the triangle are.
+/// What turns lengths into coordinates.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 #[cfg_attr(feature = "defmt", derive(defmt::Format))]
 pub struct ShortScale {
@@ -46,8 +46,6 @@ pub struct ShortScale {
     factor: i32,
     /// `I16F16` bits of the working range lie within ± this.
     limit: u32,
-    /// 30 less the fraction bits of the ratios of the triangle.
-    drop: u32,
 }
 
 /// The reciprocal of a length unit: 2^(57 + shift) over it, from 2^31 to 2^32.
@@ -70,24 +68,17 @@ const LENGTH_BITS: i32 = 16;
 /// Coordinates of the working range lie within this: three squares of it, of which each lacks 2^28, stay below 2^31, so
 /// that no difference of them overflows.
 const COORD_LIMIT: f64 = 438_000_000.0;
-/// Bits of a ratio of the triangle at the most.
-const LEAN_BITS: i32 = 29;
 /// What a square lacks of the product of a coordinate with itself.
 const SQUARE_DROP: i32 = 28;
-/// What a product of a coordinate and another or a ratio lacks.
-const PRODUCT_DROP: i32 = 30;
-/// Fraction bits of a sine or cosine.
-const RATIO_BITS: u32 = 29;
+/// Sums of two coordinates below this may be nothing but rounding.
+const LEAST_SUM: u32 = 1 << 20;
+/// Fraction bits of a ratio.
+const RATIO_BITS: u32 = 30;
 /// Fraction bits of the angle per pulse.
 const SWING_BITS: u32 = 20;
 
 impl Short32 {
-    /// For links of 8:1.
     pub(crate) const fn scale_for(radius_mm: f64) -> Option<ShortScale> {
-        Self::scale_for_links(radius_mm, 4.5 * radius_mm, 4.5)
-    }
-
-    pub(crate) const fn scale_for_links(radius_mm: f64, _: f64, lean: f64) -> Option<ShortScale> {
         // Negated so that NaN is refused.
         if !(radius_mm >= 1.0 && radius_mm <= 6_683.0) {
             return None;
@@ -96,17 +87,7 @@ impl Short32 {
         while radius_mm * power_of_two(LENGTH_BITS + shift + 1) < COORD_LIMIT {
             shift += 1;
         }
-        // The largest ratio of the triangle has 29 bits, as a coordinate has.
-        let mut drop = 1;
-        while drop < 4 && lean * power_of_two(30 - drop) > power_of_two(LEAN_BITS) {
-            drop += 1;
-        }
-        Some(ShortScale {
-            shift: shift as u32,
-            factor: 1 << shift,
-            limit: (COORD_LIMIT as u32) >> shift,
-            drop: drop as u32,
-        })
+        Some(ShortScale { shift: shift as u32, factor: 1 << shift, limit: (COORD_LIMIT as u32) >> shift })
     }
 
     pub(crate) const fn coord_from_mm(mm: f64, scale: ShortScale) -> i32 {
@@ -126,12 +107,8 @@ impl Short32 {
         nearest_i32(value * power_of_two(RATIO_BITS as i32))
     }
 
-    pub(crate) const fn lean_from(value: f64, scale: ShortScale) -> i32 {
-        nearest_i32(value * power_of_two(30 - scale.drop as i32))
-    }
-
     pub(crate) const fn product_from_mm(mm: f64, scale: ShortScale) -> i32 {
-        nearest_i32(mm * scale.units_per_mm() * power_of_two(30 - scale.drop as i32 - PRODUCT_DROP))
+        Self::coord_from_mm(mm, scale)
     }
 
     pub(crate) const fn unit_from_mm(unit_mm: f64, scale: ShortScale) -> ShortUnit {
@@ -186,28 +163,13 @@ const fn saturated(value: i64) -> i32 {
     }
 }
 
-/// Norms, and squares of a radius or depth, that are less than this of 2^30 are worked out anew from what they came of.
-const LEAST_NORM_BITS: u32 = 23;
+/// Squares of a radius or depth that are less than this are worked out anew from what they came of.
 const LEAST_SQUARE: i32 = 1 << 16;
 
-/// Whether a norm is so small that what was cut off from it tells; 0 and below, which the square of next to nothing may come
-/// out as, are.
+/// 2·arctan(rise / run) in 2^-32 turn, for rise ≤ run.
 #[inline(always)]
-const fn is_little(norm: i32) -> bool {
-    norm >> LEAST_NORM_BITS <= 0
-}
-
-/// The angle with 2·arctan(|y| / run), in the quadrant of (x, y).
-#[inline(always)]
-fn quadrant(y: i32, x: i32, run: u32) -> I0F32 {
-    let rise = y.unsigned_abs();
-    let mut size = half_angle::double_angle(rise, run) as i32;
-    if x < 0 {
-        size = from_behind(size);
-    }
-    // By the sign's mask: with a branch, all of the above would be there twice.
-    let sign = y >> 31;
-    I0F32::from_bits((size ^ sign).wrapping_sub(sign))
+fn double_angle(rise: u32, run: u32) -> i32 {
+    half_angle::double_angle(rise, run) as i32
 }
 
 /// An angle as seen from the opposite direction.
@@ -215,49 +177,6 @@ fn quadrant(y: i32, x: i32, run: u32) -> I0F32 {
 #[inline(never)]
 fn from_behind(size: i32) -> i32 {
     i32::MAX - size
-}
-
-/// How often a coordinate can be doubled until it has 28 bits; 0 for 0.
-fn spare(longest: u32) -> u32 {
-    if longest == 0 { 0 } else { longest.leading_zeros().saturating_sub(4) & 31 }
-}
-
-/// The angle of a short vector that is known exactly.
-#[cold]
-#[inline(never)]
-fn angle_of_short(y: i32, x: i32) -> I0F32 {
-    let spare = spare(y.unsigned_abs().max(x.unsigned_abs()));
-    let (y, x) = (y << spare, x << spare);
-    let norm = root_of(square(y).wrapping_add(square(x)) as u32);
-    quadrant(y, x, (norm as u32).wrapping_add(x.unsigned_abs()))
-}
-
-/// The hip of a foot near its axis.
-#[cold]
-#[inline(never)]
-fn hip_angle_near_the_axis([y, z]: [i32; 2], offset: i32, depth: i32) -> I0F32 {
-    // Offset and depth are no longer than the vector (y, z), but for rounding.
-    let spare = spare(y.unsigned_abs().max(z.unsigned_abs()).max(offset as u32).max(depth as u32));
-    let [y, z, offset, depth] = [y, z, offset, depth].map(|v| v << spare);
-    let norm = square(y).wrapping_add(square(z)) >> (PRODUCT_DROP - SQUARE_DROP);
-    let [hy, hz, offset, depth] = [y, z, offset, depth].map(Halves::of);
-    let (rise, along) =
-        (sum_of_products(hz, offset, hy, depth), difference_of_products(hy, offset, hz, depth));
-    quadrant(rise, along, (norm as u32).wrapping_add(along.unsigned_abs()))
-}
-
-/// The thigh of a foot near its joint.
-#[cold]
-#[inline(never)]
-fn thigh_angle_near_its_joint(along: i32, across: i32, [p, q]: [i32; 2], norm: i32) -> I0F32 {
-    let spare = spare(along.unsigned_abs().max(across.unsigned_abs()));
-    // The norm lies below 2^23: so much room there is at least.
-    let norm = (norm as u32) << spare.min(6);
-    let [along, across] = [along, across].map(|v| Halves::of(v << spare.min(6)));
-    let (p, q) = (Halves::of(p), Halves::of(q));
-    let (rise, straight) =
-        (sum_of_products(across, p, along, q), difference_of_products(along, p, across, q));
-    quadrant(rise, straight, norm.wrapping_add(straight.unsigned_abs()))
 }
 
 /// √(y² + z² − offset²) of a square that is too coarse.
@@ -306,12 +225,6 @@ impl Number for Short32 {
 
     fn scale_for(radius_mm: f64) -> Option<ShortScale> {
         Short32::scale_for(radius_mm)
-    }
-    fn scale_for_links(radius_mm: f64, norm_mm: f64, lean: f64) -> Option<ShortScale> {
-        Short32::scale_for_links(radius_mm, norm_mm, lean)
-    }
-    fn lean_from(value: f64, scale: ShortScale) -> i32 {
-        Short32::lean_from(value, scale)
     }
     fn length_from_mm(mm: f64) -> I16F16 {
         Short32::length_from_mm(mm)
@@ -430,12 +343,7 @@ impl Number for Short32 {
         let radial = root_of(radial_square as u32);
         // (R − c)² = R² − c·(2·R − c): the error of the root counts c/R times.
         let less = product(Halves::of(offset), Halves::of(radial.wrapping_mul(2).wrapping_sub(offset)));
-        (radial, radial_square.wrapping_sub(less.wrapping_mul(1 << (PRODUCT_DROP - SQUARE_DROP))))
-    }
-
-    #[inline(always)]
-    fn area(a: i32, b: i32) -> i32 {
-        product(Halves::of(a), Halves::of(b))
+        (radial, radial_square.wrapping_sub(less.wrapping_mul(1 << (halves::DROP - SQUARE_DROP))))
     }
 
     #[inline(always)]
@@ -443,58 +351,39 @@ impl Number for Short32 {
         product(Halves::of(coord), Halves::of(ratio))
     }
 
-    /// Of a coordinate alone, in its own unit: products of one vector are of one sort.
     #[inline(always)]
     fn widen(coord: i32) -> i32 {
         coord
     }
 
     #[inline(always)]
-    fn angle(y: i32, x: i32, norm: i32) -> I0F32 {
-        if is_little(norm) {
-            return angle_of_short(y, x);
-        }
-        quadrant(y, x, (norm as u32).wrapping_add(x.unsigned_abs()))
+    fn turn(from: [i32; 2], to: [i32; 2]) -> I0F32 {
+        let angles = rhombus::Angles { double_angle, half_turn: [i32::MAX; 2] };
+        I0F32::from_bits(rhombus::turn(from, to, angles, LEAST_SUM))
     }
 
     #[inline(always)]
-    fn hip_angle([y, z]: [i32; 2], offset: i32, depth: i32) -> I0F32 {
-        let norm = square(y).wrapping_add(square(z)) >> (PRODUCT_DROP - SQUARE_DROP);
-        if is_little(norm) {
-            return hip_angle_near_the_axis([y, z], offset, depth);
+    fn yaw_angle([x, y]: [i32; 2], radial: i32) -> I0F32 {
+        let run = (radial as u32).wrapping_add(y.unsigned_abs());
+        // Rounding may leave |x| a step above.
+        let mut size = double_angle(x.unsigned_abs().min(run), run);
+        if y < 0 {
+            size = from_behind(size);
         }
-        let [y, z, offset, depth] = [y, z, offset, depth].map(Halves::of);
-        let along = difference_of_products(y, offset, z, depth);
-        quadrant(
-            sum_of_products(z, offset, y, depth),
-            along,
-            (norm as u32).wrapping_add(along.unsigned_abs()),
-        )
+        // By the sign's mask: with a branch, all of the above would be there twice.
+        let sign = x >> 31;
+        I0F32::from_bits((size ^ sign).wrapping_sub(sign))
     }
 
     #[inline(always)]
-    fn thigh_angle(along: i32, across: i32, [p, q]: [i32; 2], norm: i32) -> I0F32 {
-        if is_little(norm) {
-            return thigh_angle_near_its_joint(along, across, [p, q], norm);
-        }
-        let [along, across, p, q] = [along, across, p, q].map(Halves::of);
-        let straight = difference_of_products(along, p, across, q);
-        quadrant(
-            sum_of_products(across, p, along, q),
-            straight,
-            (norm as u32).wrapping_add(straight.unsigned_abs()),
-        )
-    }
-
-    #[inline(always)]
-    fn knee(n: i32, m: i32, unit: ShortUnit, scale: ShortScale) -> Knee<Self> {
+    fn knee(n: i32, m: i32, unit: ShortUnit, _: ShortScale) -> Knee<Self> {
         // The smaller of n and m gives a half-angle of 45° at the most, whose sine is well known.
         let folded = m < n;
         let least = if folded { m } else { n };
         // It is half of a square of the reach at the most, so two bits are free.
         let (value, fours) = normal::by_fours((least as u32) << 2);
         let sine = upper(root::root(value), unit.reciprocal) >> ((unit.shift + fours) & 31);
-        let (knee, half_sine, from_end) = knee::of_half_sine(sine, scale.drop & 3);
+        let (knee, half_sine, from_end) = knee::of_half_sine(sine);
         Knee { acute: I0F32::from_bits(knee as i32), half_sine, folded, from_end }
     }
 
@@ -506,8 +395,8 @@ impl Number for Short32 {
 
     #[inline(never)]
     fn sin_cos(angle: I0F32) -> (i32, i32) {
-        let (sine, cosine) = series::sin_cos(angle.to_bits(), times);
-        (sine >> (series::BITS - RATIO_BITS), cosine >> (series::BITS - RATIO_BITS))
+        const { assert!(series::BITS == RATIO_BITS) };
+        series::sin_cos(angle.to_bits(), times)
     }
 
     #[inline(always)]
@@ -522,7 +411,7 @@ impl Number for Short32 {
 
     #[inline(always)]
     fn narrow(product: i32) -> i32 {
-        product.wrapping_mul(1 << (PRODUCT_DROP - RATIO_BITS as i32))
+        product
     }
 
     fn enlarged(vector: [i32; 3]) -> [i32; 3] {

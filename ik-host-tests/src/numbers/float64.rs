@@ -121,24 +121,21 @@ impl Number for Float64 {
         let radial = radial_square.max(0.0).sqrt();
         (radial, (radial - offset) * (radial - offset))
     }
-    fn area(a: f64, b: f64) -> f64 {
-        a * b
-    }
     fn stretch(coord: f64, ratio: f64) -> f64 {
         coord * ratio
     }
     fn widen(coord: f64) -> f64 {
         coord
     }
-    fn angle(y: f64, x: f64, norm: f64) -> f64 {
-        let run = norm + x.abs();
-        if run > 0.0 {
-            let size = 2.0 * (y.abs() / run).min(1.0).atan();
-            let size = if x < 0.0 { PI - size } else { size };
-            if y < 0.0 { -size } else { size }
+    fn turn([from_x, from_y]: [f64; 2], [to_x, to_y]: [f64; 2]) -> f64 {
+        let (sum_x, sum_y) = (from_x + to_x, from_y + to_y);
+        let (apart_x, apart_y) = (from_x - to_x, to_y - from_y);
+        let half = if sum_x.hypot(apart_y) >= sum_y.hypot(apart_x) {
+            apart_y.atan2(sum_x)
         } else {
-            0.0
-        }
+            apart_x.atan2(sum_y)
+        };
+        wrapped(2.0 * half)
     }
     fn knee(n: f64, m: f64, unit: f64, scale: f64) -> Knee<Self> {
         let folded = m < n;

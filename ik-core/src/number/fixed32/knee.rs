@@ -14,8 +14,6 @@ const ANGLE_BEND_BITS: u32 = 7;
 const SINE_BEND_BITS: u32 = 8;
 /// Added to the first angle, 2^-32 turn: more than rounding takes away, so that none is negative.
 const LIFT: f64 = 48.0;
-/// Fraction bits of half the knee's sine in the table.
-const HALF_SINE_BITS: u32 = 30;
 
 /// 2·arcsin s in 2^-32 turn, and s·√(1 − s²).
 #[derive(Clone, Copy)]
@@ -28,7 +26,7 @@ static NODES_OF_KNEE: [Node; NODES] = nodes();
 
 const fn nodes() -> [Node; NODES] {
     let turn = power_of_two(32) / core::f64::consts::TAU;
-    let unit = power_of_two(HALF_SINE_BITS as i32);
+    let unit = power_of_two(RATIO_BITS as i32);
     let half = 0.5 / INTERVALS as f64;
     let none = Expansion::new(0.0, [0.0; 3], 0);
     let mut table = [Node { angle: none, half_sine: none }; NODES];
@@ -76,7 +74,7 @@ pub(super) fn knee(sine: u32) -> (i32, i32) {
     }
     let near = &NODES_OF_KNEE[(sine >> WITHIN_BITS) as usize];
     let within = ((sine << (32 - WITHIN_BITS)) ^ (1 << 31)) as i32;
-    let half_sine = near.half_sine.at::<SINE_BEND_BITS>(within) >> (HALF_SINE_BITS - RATIO_BITS);
+    let half_sine = near.half_sine.at::<SINE_BEND_BITS>(within);
     (near.angle.at::<ANGLE_BEND_BITS>(within), half_sine)
 }
 

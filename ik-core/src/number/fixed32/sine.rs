@@ -11,8 +11,8 @@ const fn times(a: i32, b: i32) -> i32 {
 /// (sin, cos) of `turns`/2^32 turn with [`RATIO_BITS`] fraction bits, within 6e-9.
 pub(super) fn sin_cos(turns: i32) -> (i32, i32) {
     let (sine, cosine) = series::sin_cos(turns, times);
-    let round = |v: i32| ((v >> (series::BITS - RATIO_BITS - 1)) + 1) >> 1;
-    (round(sine), round(cosine))
+    const { assert!(series::BITS == RATIO_BITS) };
+    (sine, cosine)
 }
 
 #[cfg(test)]

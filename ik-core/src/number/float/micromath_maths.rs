@@ -26,8 +26,8 @@ impl FloatMaths for Micromath {
     }
 
     #[inline(always)]
-    fn quadruple_arc_tangent(t: f32) -> f32 {
-        4.0 * F32Ext::atan(t)
+    fn double_arc_sine(sine: f32, _: f32, cosine: f32) -> f32 {
+        4.0 * F32Ext::atan(sine / (1.0 + cosine))
     }
 
     fn sin_cos(angle: f32) -> (f32, f32) {

@@ -17,17 +17,9 @@ pub(super) struct Quotient<const ABOVE: usize, const BELOW: usize> {
 }
 
 impl<const ABOVE: usize, const BELOW: usize> Quotient<ABOVE, BELOW> {
-    /// t times the quotient.
+    /// 2·t and t³ times the quotient: what the quotient is rounded by weighs less. u is t².
     #[inline(always)]
-    pub(super) fn odd(&self, t: f32) -> f32 {
-        let u = t * t;
-        t * polynomial(&self.above, u) / self.divisor(u)
-    }
-
-    /// 2·t and t³ times the quotient: what the quotient is rounded by weighs less.
-    #[inline(always)]
-    pub(super) fn odd_beyond_double(&self, t: f32) -> f32 {
-        let u = t * t;
+    pub(super) fn odd_beyond_double(&self, t: f32, u: f32) -> f32 {
         t + t + t * (u * polynomial(&self.above, u)) / self.divisor(u)
     }
 

@@ -64,9 +64,6 @@ const fn nodes() -> [Bow; INTERVALS + 1] {
 /// Within 7.8e-7 rad; 5.5e-7 from 0.8° on.
 #[inline(never)]
 pub(super) fn double_angle(rise: u32, run: u32) -> u32 {
-    if rise > run {
-        return quarter();
-    }
     let (run, rise) = normal::both(run, rise);
     // A bit of room for the sign of what is left.
     let (run, rise) = (run >> 1, rise >> 1);
@@ -122,9 +119,7 @@ mod tests {
 
     #[test]
     fn double_angle_answers_at_the_edges() {
-        for (rise, run, angle) in
-            [(0, 0, 0), (0, 1, 0), (1, 0, 1 << 30), (u32::MAX, 1, 1 << 30), (0, u32::MAX, 0)]
-        {
+        for (rise, run, angle) in [(0, 0, 0), (0, 1, 0), (0, u32::MAX, 0)] {
             assert_eq!(double_angle(rise, run), angle, "{rise}/{run}");
         }
         for run in [1, 3, 1 << 20, u32::MAX] {

@@ -25,7 +25,7 @@ const KNEE_BOUND: f64 = 4.5e-7;
 const HALF_SINE_BOUND: f64 = 2.3e-7;
 /// The largest error of the square of the sine.
 #[cfg(test)]
-const FROM_END_BOUND: f64 = 5e-9;
+const FROM_END_BOUND: f64 = 2.5e-9;
 
 #[derive(Clone, Copy)]
 struct Node {
@@ -75,22 +75,22 @@ const fn nodes() -> [Node; NODES] {
 }
 
 /// (angle in 2^-32 turn, half of its sine, the square of s) of the knee whose half has the sine s, with 28 fraction bits
-/// and at most sin 45° and a hair; ratios with 30 − `drop` fraction bits.
+/// and at most sin 45° and a hair; ratios with 30 fraction bits.
 ///
-/// The angle within 4.5e-7 rad, half of its sine within 2.3e-7, the square within 5e-9.
+/// The angle within 4.5e-7 rad, half of its sine within 2.3e-7, the square within 2.5e-9.
 #[inline(always)]
-pub(super) fn of_half_sine(sine: u32, drop: u32) -> (u32, i32, i32) {
+pub(super) fn of_half_sine(sine: u32) -> (u32, i32, i32) {
     let Some(near) = NODES_OF_KNEE.get((sine >> WITHIN_BITS) as usize) else {
         // Never: the smaller of n and m gives no larger sine.
-        return (1 << 30, (1 << 29) >> drop, (1 << 29) >> drop);
+        return (1 << 30, 1 << 29, 1 << 29);
     };
     let within = ((sine << (32 - WITHIN_BITS)) ^ (1 << 31)) as i32 >> 16;
     let (high, low) = (sine >> 13, sine & 0x1FFF);
     let square = high.wrapping_mul(high).wrapping_add(high.wrapping_mul(low) >> 12);
     (
         near.angle.at::<ANGLE_SLOPE_BITS>(within),
-        (near.half_sine.at::<SINE_SLOPE_BITS>(within) >> (drop + 2)) as i32,
-        (square >> drop) as i32,
+        (near.half_sine.at::<SINE_SLOPE_BITS>(within) >> 2) as i32,
+        square as i32,
     )
 }
 
@@ -103,11 +103,11 @@ mod tests {
         let (mut worst_angle, mut worst_half_sine, mut worst_from_end) = (0.0f64, 0.0f64, 0.0f64);
         let end = (0.5f64.sqrt() * power_of_two(SINE_BITS as i32)) as u32 + 8;
         for sine in (0..=end).step_by(7) {
-            let (angle, half_sine, from_end) = of_half_sine(sine, 1);
+            let (angle, half_sine, from_end) = of_half_sine(sine);
             let s = f64::from(sine) / power_of_two(SINE_BITS as i32);
             let angle = f64::from(angle) / 4_294_967_296.0 * core::f64::consts::TAU;
             worst_angle = worst_angle.max((angle - 2.0 * s.asin()).abs());
-            let unit = power_of_two(29);
+            let unit = power_of_two(30);
             worst_half_sine =
                 worst_half_sine.max((f64::from(half_sine) / unit - s * (1.0 - s * s).sqrt()).abs());
             worst_from_end = worst_from_end.max((f64::from(from_end) / unit - s * s).abs());
@@ -125,7 +125,7 @@ mod tests {
 
     #[test]
     fn knee_is_never_negative() {
-        let least = (0..1u32 << WITHIN_BITS).map(|sine| of_half_sine(sine, 1).0).min();
+        let least = (0..1u32 << WITHIN_BITS).map(|sine| of_half_sine(sine).0).min();
         assert!(least.is_some_and(|least| (0..300).contains(&least)), "{least:?}");
     }
 }
