@@ -9,9 +9,9 @@
 //! | --- | --- | --- | --- |
 //! | float32 | 8.7e-7 | 7.5e-7 | 5.9e-7 |
 //! | coarse | 2.2e-2 | 2.0e-2 | 1.8e-2 |
-//! | fixed32 | 5.3e-7 | 7.5e-7 | 1.1e-6 |
+//! | fixed32 | 6.6e-7 | 8.5e-7 | 1.1e-6 |
 //! | short32 | 1.25e-6 | 1.58e-6 | 8.4e-6 |
-//! | float64 | 1.3e-15 | 1.5e-15 | 1.4e-14 |
+//! | float64 | 2.1e-15 | 2.1e-15 | 1.4e-14 |
 //!
 //! The largest come of legs whose offset is longer than their links.
 
@@ -72,9 +72,9 @@ impl NumberSystem {
                 servo: 9e-7,
             },
             Self::Fixed32 => Bounds {
-                own_foot: 6.5e-7,
-                foot: 8.5e-7,
-                folded_below: 0.03,
+                own_foot: 8e-7,
+                foot: 9.5e-7,
+                folded_below: 0.0,
                 moved: 9e-7,
                 angle: 1.3e-6,
                 straight: 1.3e-6,
@@ -82,7 +82,7 @@ impl NumberSystem {
                 servo: 8e-8,
             },
             Self::Short32 => Bounds {
-                own_foot: 1.4e-6,
+                own_foot: 1.3e-6,
                 foot: 1.7e-6,
                 folded_below: 0.5,
                 moved: 9e-7,
@@ -92,8 +92,8 @@ impl NumberSystem {
                 servo: 8e-8,
             },
             Self::Float64 => Bounds {
-                own_foot: 2e-15,
-                foot: 2e-15,
+                own_foot: 2.5e-15,
+                foot: 2.5e-15,
                 folded_below: 0.25,
                 moved: 2e-15,
                 angle: 2.4e-14,
