@@ -29,9 +29,32 @@
 //!
 //! # Where a leg is singular
 //!
-//! On a roll-hip leg's inner cylinder (D = 0) and at the yaw axis of a yaw-hip leg the hip angle goes with the
-//! root of the rounding error, and at a straight or fully folded leg so do knee and thigh. The foot stays where
-//! it should; the survey of the host harness shows by how much.
+//! At a straight or fully folded leg the knee goes with the root of what the foot is short of its reach, and on the hip's
+//! axis (the yaw axis; or a roll-hip leg's inner cylinder, D = 0) so does the hip, or has no direction at all. There a joint
+//! is worth less than elsewhere, and the foot as much as everywhere: what is lost is what the foot does not feel. Largest
+//! errors on the demo legs, rad, each between the distance given and three times as far (`toehold bounds --rounds 1000000`;
+//! a dash: every such foot is moved):
+//!
+//! | | `Float32` | `Fixed32` | `Short32` | `Fixed16` |
+//! | --- | --- | --- | --- | --- |
+//! | knee, 1e-1 rad from straight | 1e-7 | 1e-7 | 9e-7 | 9e-5 |
+//! | knee, 1e-2 rad from straight | 5e-9 | 7e-8 | 7e-6 | 2e-4 |
+//! | knee, 1e-3 rad from straight | 3e-8 | 4e-8 | 7e-5 | 4e-4 |
+//! | knee, 1e-4 rad from straight | 2e-6 | 2e-7 | 3e-4 | 3e-4 |
+//! | knee, 1e-5 rad from straight | 1e-6 | 3e-7 | 3e-4 | 3e-4 |
+//! | knee, 1e-1 rad from folded | 3e-7 | 1e-7 | 5e-5 | 9e-5 |
+//! | knee, 1e-2 rad from folded | 2e-7 | 2e-7 | 4e-5 | 6e-4 |
+//! | knee, 1e-3 rad from folded | 1e-6 | 1e-6 | 4e-4 | 6e-4 |
+//! | knee, 1e-4 rad from folded | 1e-5 | 3e-5 | 8e-4 | 6e-4 |
+//! | knee, 1e-5 rad from folded | 5e-5 | 3e-5 | 9e-4 | 6e-4 |
+//! | hip, foot 1e-1 of the reach from its axis | 3e-7 | 7e-7 | 1e-6 | 4e-4 |
+//! | hip, foot 1e-2 of the reach from its axis | 2e-7 | 9e-7 | 2e-5 | 4e-3 |
+//! | hip, foot 1e-3 of the reach from its axis | 1e-6 | 2e-6 | 4e-6 | 2e-2 |
+//! | hip, foot 1e-4 of the reach from its axis | 1e-5 | 2e-5 | 4e-5 | 1e-1 |
+//! | hip, foot 1e-5 of the reach from its axis | 1e-4 | 2e-4 | 4e-4 | 3e-4 |
+//!
+//! The foot, of thigh and shank together, all along: `Float32` 4.5e-7, `Fixed32` 3.7e-7, `Short32` 8.5e-7, `Fixed16` 2.3e-4.
+//! A controller that takes speeds from differences of joint angles should keep clear of these places, or limit its slew there.
 
 mod answer;
 pub(crate) mod constants;

@@ -4,6 +4,9 @@
 //! geometric, so that each system can do each of them the best way it knows; none of them is a second copy of
 //! the solver. The algebra that they serve stands in [`leg`](crate::leg).
 //!
+//! What each primitive is worth in each number system is stated in one table of the host harness, which its tests hold to what
+//! they find: `toehold bounds` prints both.
+//!
 //! Anyone can add a number system: the host harness adds `f64` to tell the method's error from rounding.
 
 #[cfg(feature = "fixed16")]

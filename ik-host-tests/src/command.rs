@@ -6,6 +6,7 @@
 //! | 1 | done, and something is beyond what the sheet allows |
 //! | 2 | the input or the call is wrong |
 
+mod bounds;
 mod chips;
 mod ending;
 mod robots;
@@ -45,6 +46,8 @@ enum Task {
     Solve(solve::Call),
     /// Count what a leg costs on emulated chips: instructions, estimated time, flash, stack
     Chips(chips::Call),
+    /// Measure what each primitive of each number system is worth, against the bounds that are stated
+    Bounds(bounds::Call),
     /// Print a demo robot's sheet, to start one's own from
     Sheet(sheet::Call),
 }
@@ -63,6 +66,7 @@ pub fn run() -> ExitCode {
         Task::Survey(call) => call.run(),
         Task::Solve(call) => call.run(),
         Task::Chips(call) => call.run(),
+        Task::Bounds(call) => call.run(),
         Task::Sheet(call) => call.run(),
     };
     if let Ending::WrongInput(message) | Ending::Failed(message) = &ending {

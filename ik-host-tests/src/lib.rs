@@ -7,6 +7,7 @@
 //! | [`machine`] | a robot of a sheet, in a number system: the very code that will be flashed |
 //! | [`minimax`] | the coefficients of ik-core's polynomials, made and compared |
 //! | [`reference`](mod@reference) | legs by other methods, sharing no code with ik-core: what judges |
+//! | [`bounds`] | what each primitive of each number system is worth, stated and measured |
 //! | [`chips`] | what a leg costs on emulated chips |
 //! | [`survey`] | the main job: error bounds over the work volume |
 //! | [`solve`] | one target in every number system |
@@ -15,6 +16,7 @@
 //!
 //! Arrows run one way: command → report → survey → machine, reference → sheet; machine → ik-core.
 
+pub mod bounds;
 pub mod chips;
 pub mod command;
 pub mod machine;

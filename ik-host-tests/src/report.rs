@@ -1,5 +1,6 @@
 //! A survey for people and machines: text, JSON, and a page.
 
+mod bounds;
 mod chips;
 mod number;
 mod page;
@@ -7,6 +8,7 @@ mod picture;
 mod solved;
 mod text;
 
+pub use bounds::bounds_text;
 pub use chips::chips_text;
 pub use number::millimetres;
 pub use solved::solved_text;

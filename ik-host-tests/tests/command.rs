@@ -202,3 +202,14 @@ fn a_folder_that_cannot_be_made_is_named() {
     assert!(text(&out.stderr).contains("a-file"), "{}", text(&out.stderr));
     assert_eq!(fs::read_to_string(&file).unwrap(), "not a folder");
 }
+
+#[test]
+fn bounds_are_printed_and_hold() {
+    let out = toehold(&["bounds", "--rounds", "50000"]);
+    let text = String::from_utf8(out.stdout).unwrap();
+    assert!(out.status.success(), "{text}");
+    for part in ["turn between two vectors", "knee from straight, rad", "short32", "fixed16", "roll-hip"] {
+        assert!(text.contains(part), "{part} is not in\n{text}");
+    }
+    assert!(!text.contains("EXCEEDED"), "{text}");
+}

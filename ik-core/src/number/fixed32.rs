@@ -22,7 +22,9 @@ use fixed::types::{I0F32, I16F16};
 /// | --- | --- |
 /// | length | `fixed::types::I16F16`, mm |
 /// | angle | `fixed::types::I0F32`, turns; ±180° saturates just inside |
-/// | largest joint error | see the survey of your own leg; below 1e-6 rad away from the hip axis |
+/// | its primitives | a turn within 9.8e-7 rad (half of that times the vectors' length beside the leg's radius), a knee within 4e-7, sine and cosine within 1.2e-8 |
+/// | largest joint error | 1.2e-6 rad on the demo legs, with knee from 0.1 to 2.6 rad and the foot clear of the hip's axis; nearer to an end see [`leg`](crate::leg) |
+/// | largest foot error | 5.8e-7 of thigh and shank together on the demo legs, straight and folded ones included |
 /// | legs | reach from 1 mm to 16 383 mm |
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 #[cfg_attr(feature = "defmt", derive(defmt::Format))]

@@ -28,7 +28,9 @@ use core::ops::{Add, Sub};
 /// | --- | --- |
 /// | length | `f32`, mm |
 /// | angle | `f32`, radians in (−π, π] |
-/// | largest joint error | see the survey of your own leg; below 1e-6 rad away from the hip axis |
+/// | its primitives | a turn within 4.6e-7 rad, a knee within 6.8e-7, sine and cosine within 1.3e-7 |
+/// | largest joint error | 6.4e-7 rad on the demo legs, with knee from 0.1 to 2.6 rad and the foot clear of the hip's axis; nearer to an end see [`leg`](crate::leg) |
+/// | largest foot error | 6.2e-7 of thigh and shank together on the demo legs, straight and folded ones included |
 /// | legs | reach from 1 mm to 16 383 mm |
 #[cfg(feature = "float32")]
 pub type Float32 = Float<polynomial_maths::Polynomials>;
