@@ -117,8 +117,7 @@ pub enum Verdict {
 impl Verdict {
     /// Of a bound and the largest that was found.
     pub fn of(bound: f64, found: f64) -> Self {
-        // Negated so that NaN exceeds.
-        if !(found <= bound) {
+        if found > bound || found.is_nan() {
             Self::Exceeded
         } else if found < 0.5 * bound {
             Self::Slack

@@ -53,7 +53,7 @@ fn a_primitive_that_is_off_by_twice_its_bound_is_noticed() {
     is_noticed(NumberSystem::Fixed32, Quantity::Turn, &Primitives { turn, ..Primitives::<Fixed32>::own() });
     let knee = |n, m, unit, scale| {
         let mut knee = Short32::knee(n, m, unit, scale);
-        knee.half_sine = knee.half_sine + Short32::ratio_from(4.8e-7);
+        knee.half_sine += Short32::ratio_from(4.8e-7);
         knee
     };
     is_noticed(
@@ -93,7 +93,8 @@ fn the_demo_legs_keep_their_bounds_and_no_bound_is_slack() {
         let of_it: Vec<&LegFound> =
             found.iter().filter(|found| found.number == bound.number.name()).collect();
         assert_eq!(of_it.len(), 2, "{:?}", bound.number);
-        let each: [(&str, fn(&LegFound) -> f64, fn(&LegBound) -> f64); 3] = [
+        type Of<T> = fn(&T) -> f64;
+        let each: [(&str, Of<LegFound>, Of<LegBound>); 3] = [
             ("joint", |found| found.joint_rad, |bound| bound.joint_rad),
             ("knee near an end", |found| found.near_an_end_rad, |bound| bound.near_an_end_rad),
             ("foot", |found| found.foot_of_reach, |bound| bound.foot_of_reach),

@@ -49,6 +49,15 @@ impl<N: Number> Domain<N> {
         }
     }
 
+    /// The same, and some of a few steps.
+    pub(super) fn length_or_next_to_none(&mut self) -> f64 {
+        if self.random.random_bool(0.1) {
+            self.radius * 2f64.powf(self.between(-15.0, -12.0))
+        } else {
+            self.length()
+        }
+    }
+
     /// An angle: most of them anywhere, some next to eighths of a turn.
     pub(super) fn angle(&mut self) -> f64 {
         match self.random.random_range(0..8) {

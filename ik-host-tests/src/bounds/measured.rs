@@ -18,7 +18,8 @@ pub struct Found {
     pub at: String,
 }
 
-/// The primitives that are measured, so that a test can put a worse one in the place of one of them.
+/// The primitives that are measured, each with the signature that it has in the trait, so that a test can put a worse one in the place of one of them.
+#[expect(clippy::type_complexity, reason = "a signature is easier to read where it is than under a name")]
 pub struct Primitives<N: Number> {
     /// [`Number::turn`].
     pub turn: fn([N::Product; 2], [N::Coord; 2]) -> N::Angle,
@@ -99,8 +100,7 @@ struct Worst([(f64, String); Quantity::ALL.len()]);
 impl Worst {
     fn see(&mut self, quantity: Quantity, error: f64, at: impl FnOnce() -> String) {
         let worst = &mut self.0[quantity as usize];
-        // Negated so that NaN is the worst of all.
-        if !(error <= worst.0) {
+        if error > worst.0 || error.is_nan() {
             *worst = (error, at());
         }
     }
@@ -211,7 +211,7 @@ impl<N: Number> Measuring<'_, N> {
     }
 
     fn radial(&mut self) {
-        let (radius, foot) = (self.domain.length(), self.domain.angle());
+        let (radius, foot) = (self.domain.length_or_next_to_none(), self.domain.angle());
         let [(x, exact_x), (y, exact_y)] =
             [foot.sin(), foot.cos()].map(|part| self.domain.coord(radius * part));
         let most = self.domain.radius / 2.0;

@@ -38,7 +38,7 @@ const TABLE: [(Quantity, [f64; 5]); Quantity::ALL.len()] = [
     (Quantity::FromEnd,      [2.5e-7, 1.90e-3, 2.6e-8, 2.8e-8, 1.15e-4]),
     (Quantity::Root,         [6.7e-8, 1.35e-3,   3e-9, 1.8e-8, 5.6e-5]),
     (Quantity::Radial,       [6.7e-8, 1.35e-3,   3e-9, 5.7e-7, 5.6e-5]),
-    (Quantity::RadialSquare, [3.6e-9, 1.4e-6,   2e-9, 5.4e-7, 4.3e-6]),
+    (Quantity::RadialSquare, [3.6e-9, 1.4e-6,   2e-9, 5.4e-7, 4.6e-6]),
     (Quantity::Depth,        [1.13e-7, 1.90e-3,   5e-9, 4.7e-8, 9.6e-5]),
     (Quantity::Sine,         [1.28e-7, 1.20e-3, 1.13e-8, 1.02e-8, 1.20e-4]),
     (Quantity::Rescale,      [  9e-8,   9e-8, 2.6e-9,   5e-9, 7.5e-5]),
