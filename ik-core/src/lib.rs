@@ -34,6 +34,7 @@
 //! | servo | [`servo`] | a pulse in microseconds within its range |
 //! | output | [`output`] | timer ticks or expander counts |
 //! | both at once | [`channel`], [`drive`] | counts from joint angles, without the pulse in between |
+//! | frame safety | [`frame`] | counts no farther from the last ones than a slew, or no pulse |
 //!
 //! # Frames, units, signs
 //!
@@ -96,6 +97,7 @@ pub mod channel;
 mod const_math;
 pub mod drive;
 pub mod foot;
+pub mod frame;
 pub mod geometry;
 pub mod leg;
 pub mod limb;
@@ -113,6 +115,7 @@ pub use angle::{Angle, Joints};
 pub use channel::{Channel, Counts};
 pub use drive::Parallelogram;
 pub use foot::Foot;
+pub use frame::{FrameError, FrameSafety, FrameState, ServoBounds, StaleRule};
 pub use geometry::{Bend, Dimensions, GeometryError, RollHip, YawHip};
 pub use leg::{Answer, Held, Hip, Leg, Outcome};
 pub use limb::Limb;

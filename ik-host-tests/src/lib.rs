@@ -8,6 +8,7 @@
 //! | [`minimax`] | the coefficients of ik-core's polynomials, made and compared |
 //! | [`reference`](mod@reference) | legs by other methods, sharing no code with ik-core: what judges |
 //! | [`bounds`] | what each primitive of each number system is worth, stated and measured |
+//! | [`frame_witness`] | watches any frame-safety stage, and says which promise it breaks |
 //! | [`chips`] | what a leg costs on emulated chips |
 //! | [`survey`] | the main job: error bounds over the work volume |
 //! | [`solve`] | one target in every number system |
@@ -19,6 +20,7 @@
 pub mod bounds;
 pub mod chips;
 pub mod command;
+pub mod frame_witness;
 pub mod machine;
 pub mod minimax;
 pub mod numbers;

@@ -10,12 +10,15 @@ use common::checks::{
     channel as channel_checks, continuity, limits, mirror, output, published_pose, reach, round_trip,
     servo as servo_checks, totality,
 };
+use common::frame::Core;
 use common::legs::{CULVERT, ORCHARD};
 use common::published::leg_poses;
 use common::servo::{self, ServoModel};
 use common::solver::{NumberSystem, Solver, Told, core};
+use ik_core::frame::{Conduct, FrameSafety, ServoBounds, StaleRule};
 use ik_core::output::Output;
 use ik_core::{End, Expander, Held, Outcome, Pulse, ServoSpec, Side, Timer};
+use ik_host_tests::frame_witness::{self, Stage};
 use ik_host_tests::reference::{Leg, Pose, Ranges, transforms};
 use std::f64::consts::PI;
 
@@ -608,5 +611,129 @@ fn a_wrong_output_is_noticed() {
     ];
     for (fault, wrong) in &faults {
         assert!(check(wrong).is_err(), "{fault} went unnoticed");
+    }
+}
+
+/// The frame's number, ik-core's stage after it, the target and what is sent, to what is sent instead; no pulses is 0.
+type ChangeSent = fn(u64, &mut Core<3>, Option<[u32; 3]>, [u32; 3]) -> [u32; 3];
+
+/// A frame-safety stage with something wrong: what it does with what ik-core's stage sends.
+struct WrongStage {
+    inner: Core<3>,
+    change: ChangeSent,
+    frames: u64,
+}
+
+impl Stage for WrongStage {
+    fn start(&mut self) {
+        self.inner.start();
+    }
+    fn engage(&mut self) {
+        self.inner.engage();
+    }
+    fn release(&mut self) {
+        self.inner.release();
+    }
+    fn frame(&mut self, new: Option<&[u32]>, sent: &mut [u32]) -> bool {
+        self.frames += 1;
+        let mut counts = [0; 3];
+        self.inner.frame(new, &mut counts);
+        if !self.inner.state.conduct().has_pulses() {
+            counts = [0; 3];
+        }
+        let new = new.map(|new| new.try_into().expect("three servos"));
+        let counts = (self.change)(self.frames, &mut self.inner, new, counts);
+        sent.copy_from_slice(&counts);
+        counts != [0; 3]
+    }
+}
+
+/// A promise to another.
+type ChangePromise = fn(&mut frame_witness::Promise);
+/// What is wrong with a stage, and what the witness must say of it.
+type StageFault = (&'static str, &'static str, ChangeSent);
+
+#[test]
+fn a_wrong_frame_safety_stage_is_noticed() {
+    const NONE: [u32; 3] = [0; 3];
+    let servo = |range, start, slew| ServoBounds::in_counts(range, start, slew).expect("bounds");
+    let servos = [servo([3200, 6400], 4000, 83), servo([150, 450], 307, 9), servo([2000, 7000], 7000, 400)];
+    let core = || Core::new(FrameSafety::new(servos, StaleRule::hold_then_release(4, 15).expect("a rule")));
+    let check = |change| {
+        let mut stage = WrongStage { inner: core(), change, frames: 0 };
+        frame_witness::run(&mut stage, &core().promise(), 71, 20_000)
+    };
+    assert!(check(|_, _, _, sent| sent).expect("sound").moving > 1000);
+    let faults: [StageFault; 13] = [
+        (
+            "a count more than its slew, once in a thousand frames",
+            "more than its slew",
+            |frame, core, _, [a, b, c]| {
+                let moves = core.state.conduct() == Conduct::Following && core.state.behind() > 0;
+                [a, if moves && b > 200 && frame % 1000 < 20 { b + 20 } else { b }, c]
+            },
+        ),
+        ("a count beyond its range", "beyond its range", |_, _, _, [a, b, c]| {
+            [a, b, if c == 7000 { 7001 } else { c }]
+        }),
+        ("a count short of its range", "beyond its range", |_, _, _, [a, b, c]| {
+            [if a == 3200 { 3199 } else { a }, b, c]
+        }),
+        ("the target at once", "more than its slew", |_, core, new, sent| match new {
+            Some(new) if sent != NONE => std::array::from_fn(|it| core.safety.servos[it].hold(new[it])),
+            _ => sent,
+        }),
+        ("a first pulse that is the target", "a first pulse", |_, core, new, sent| match new {
+            Some(new) if core.state.conduct() == Conduct::First => {
+                std::array::from_fn(|it| core.safety.servos[it].hold(new[it]))
+            }
+            _ => sent,
+        }),
+        ("pulses that nobody allowed", "not allowed", |_, core, new, sent| {
+            if new.is_some() && !core.state.is_engaged() {
+                core.state.engage()
+            }
+            sent
+        }),
+        ("pulses although released", "not allowed", |_, core, _, sent| {
+            if core.state.is_engaged() { sent } else { core.state.last() }
+        }),
+        ("no frame without pulses at the start", "not let go of", |_, core, _, sent| {
+            if core.state.is_engaged() { core.state.last() } else { sent }
+        }),
+        ("nothing ever sent", "no pulses, although", |_, _, _, _| NONE),
+        ("a servo that does not move", "should have moved by", |_, _, _, [a, b, c]| {
+            [a, if b == 0 { 0 } else { 307 }, c]
+        }),
+        ("a frame without pulses now and then", "no pulses, although", |frame, _, _, sent| {
+            if frame.is_multiple_of(997) { NONE } else { sent }
+        }),
+        ("a stale target followed", "should have moved by 0", |frame, core, new, sent| {
+            if core.state.conduct() != Conduct::Holding || new.is_some() {
+                return sent;
+            }
+            let nudge = u32::from(frame % 2 == 0);
+            [sent[0], sent[1], (sent[2] - nudge).max(2000)]
+        }),
+        ("a pulse of 0 among others", "beyond its range", |_, _, _, [a, b, _]| [a, b, 0]),
+    ];
+    for (fault, said, change) in faults {
+        let broken = check(change).expect_err(fault);
+        assert!(broken.contains(said), "{fault}: {broken}");
+    }
+    // Promises that are not those of the stage: the witness judges by what it was told.
+    let changed: [(&str, ChangePromise); 7] = [
+        ("a slew less by one", |promise| promise.servos[1].slew -= 1),
+        ("a slew more by one", |promise| promise.servos[1].slew += 1),
+        ("another start", |promise| promise.servos[2].start -= 1),
+        ("a narrower range", |promise| promise.servos[0].range[1] -= 1),
+        ("a hold a frame earlier", |promise| promise.hold_after -= 1),
+        ("a release a frame earlier", |promise| promise.release_after = Some(14)),
+        ("a release a frame later", |promise| promise.release_after = Some(16)),
+    ];
+    for (what, change) in changed {
+        let mut promise = core().promise();
+        change(&mut promise);
+        assert!(frame_witness::run(&mut core(), &promise, 72, 20_000).is_err(), "{what} went unnoticed");
     }
 }

@@ -11,6 +11,7 @@ use ik_core::{
     Timer, Turns,
 };
 
+use crate::frame;
 use crate::numbers::{Opaque, every_primitive};
 use crate::opaque::{number, three, truth, two, use_up, word};
 
@@ -150,6 +151,7 @@ fn servos<N: Opaque>() -> [Servo<N>; 3] {
     use_up([bent; 3].turn([angle(), angle(), angle()]));
     let channel = made(|| Channel::<N, 4>::from_curve(&curve(), counting()));
     use_up((channel.command(angle()), channel.range()));
+    frame::all(&channel, &servo, counting());
     let counts = [channel; 3].turn([angle(), angle(), angle()]);
     let held = PulsesHeld::of(counts.held.as_array());
     use_up((counts.is_held(), held.any(), [channel; 3].turn_quickly([angle(), angle(), angle()])));
@@ -219,7 +221,9 @@ fn legs<H: Hip, N: Opaque>(dimensions: Dimensions<H>, limits: Limits, servos: [S
     }
     let channel = made(|| Channel::<N>::from_spec(spec(), counting()));
     let bent = made(|| Channel::<N, 4>::from_curve(&curve(), counting()));
-    use_up(Limb { leg, mounting: limb.mounting, servos: [channel; 3] }.command(foot(), joints()).counts());
+    let command = Limb { leg, mounting: limb.mounting, servos: [channel; 3] }.command(foot(), joints());
+    use_up(command.counts());
+    frame::targets([command; 6].get(..word() as usize).unwrap_or(&[]));
     driven(leg, servos);
     driven(leg, [channel; 3]);
     driven(leg, [bent; 3]);

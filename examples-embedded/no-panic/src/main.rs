@@ -7,6 +7,7 @@
 #![no_main]
 
 mod calls;
+mod frame;
 #[cfg(feature = "hal")]
 mod hal;
 mod numbers;

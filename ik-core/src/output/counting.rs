@@ -51,6 +51,13 @@ impl Counting {
         self.ratio.pulse(counts)
     }
 
+    /// The most whole counts that last no longer than a pulse.
+    pub(crate) const fn whole_within(&self, pulse: Pulse) -> u32 {
+        let counts = self.ratio.within(pulse.steps() as u64);
+        // Fewer than 2^30 counts in a step would be needed to get here; it saturates all the same.
+        if counts > u32::MAX as u64 { u32::MAX } else { counts as u32 }
+    }
+
     /// [least, most] whole counts that lie within [shortest, longest] µs: neither is rounded outward. No count is below 1,
     /// for 0 counts are no pulse. `None` if there are none.
     pub(crate) const fn within(&self, [shortest_us, longest_us]: [f64; 2]) -> Option<[u32; 2]> {

@@ -5,6 +5,7 @@
 //! | [`solver`] | ik-core in any number system behind plain `f64`, so that a wrong solver can take its place |
 //! | [`servo`] | the same of a servo |
 //! | [`channel`] | the same of a servo on an output, in every number system |
+//! | [`frame`] | the frame-safety stage, of random bounds |
 //! | [`legs`] | legs and targets, drawn by proptest or from a fixed seed |
 //! | [`bounds`] | what each number system promises, as it was measured |
 //! | [`knee_reach`] | the reachable set of a leg whose knee has a range |
@@ -18,6 +19,7 @@ pub mod bounds;
 pub mod channel;
 pub mod checks;
 pub mod effort;
+pub mod frame;
 pub mod knee_reach;
 pub mod legs;
 pub mod published;
