@@ -20,6 +20,7 @@ pub type Feet<N, const LEGS: usize> = [Foot<N>; LEGS];
 /// planner.send([Foot::from_mm(0.0, 31.5, -160.0)]).unwrap();
 /// assert!(frame.next().is_some());
 /// assert!(frame.next().is_some()); // the queue is empty: the last feet stand
+/// assert!(frame.fresh().is_none()); // but they are not new
 /// # }
 /// ```
 #[derive(Debug)]
@@ -77,5 +78,13 @@ impl<N: Number, const LEGS: usize> FootReceiver<'_, N, LEGS> {
             self.last = Some(feet);
         }
         self.last
+    }
+
+    /// The feet of this frame if they are new: the next in the queue, `None` if it is empty. For
+    /// [`frame safety`](crate::frame), which knows what to do without new ones.
+    pub fn fresh(&mut self) -> Option<Feet<N, LEGS>> {
+        let fresh = self.receiver.dequeue();
+        self.last = fresh.or(self.last);
+        fresh
     }
 }

@@ -10,7 +10,7 @@
 //! | `[output]`, `kind = "expander"` | `oscillator_hz`, `resolution_bits`, `frame_hz` |
 //! | `[leg_kind.NAME]` | `hip = "yaw"` with `coxa_mm`, `femur_mm`, `tibia_mm`, or `hip = "roll"` with `hip_offset_mm`, `thigh_mm`, `shank_mm`; `knee_bends`; optional `knee_drive` (`"direct"`, or `"parallelogram"`) |
 //! | `[leg_kind.NAME.range_deg]` | `hip`, `femur` or `thigh`, `knee`: `[least, most]` in degrees |
-//! | `[leg_kind.NAME.servo.JOINT]` | `centre_us`, `joint_at_centre_deg`, `us_per_degree`, `turns`, or in place of these four `measured`; `pulse_us`; optional `dead_band_us` (0), `speed_s_per_60_deg`, `stall_torque_n_mm` |
+//! | `[leg_kind.NAME.servo.JOINT]` | `centre_us`, `joint_at_centre_deg`, `us_per_degree`, `turns`, or in place of these four `measured`; `pulse_us`; optional `dead_band_us` (0), `speed_s_per_60_deg`, `stall_torque_n_mm`, `slew_us_per_frame`, `start_us` |
 //! | `[leg_kind.NAME.work]` | `x_mm`, `y_mm`, `z_mm`: the work volume, a box in the leg's frame |
 //! | `[[leg]]` | `name`, `kind`, `side`, `at_mm`; optional `trim_us` |
 //! | `[allowed]` | `arithmetic_mm`, `with_pulse_mm`; optional `unreached_percent` (100) |

@@ -325,6 +325,34 @@ fn a_state_of_other_bounds_never_leaves_these() {
     assert_eq!(far.start_at([5]).last(), [1000]);
 }
 
+/// Two stages of the same ranges over one state: a gentle one for standing up, a fast one for walking.
+#[test]
+fn one_state_may_go_from_a_gentle_stage_to_a_fast_one() {
+    let stage = |slew| {
+        let servo = ServoBounds::in_counts([3200, 6400], 3840, slew).expect("bounds");
+        FrameSafety::new([servo; 3], StaleRule::hold_then_release(3, 9).expect("a rule"))
+    };
+    let (gentle, fast) = (stage(11), stage(83));
+    let mut sweep = Sweep::from_seed(67);
+    let (mut state, mut before, mut steps) = (gentle.start(), None, [0; 2]);
+    for _ in 0..rounds(20_000) {
+        if sweep.bits() % 50 == 0 {
+            state.engage();
+        }
+        let is_fast = sweep.bits() % 2;
+        let new = (sweep.bits() % 4 > 0).then(|| [(); 3].map(|()| 3000 + sweep.bits() % 4000));
+        let sent = if is_fast == 1 { &fast } else { &gentle }.frame(&mut state, new);
+        if let (Some(before), Some(sent)) = (before, sent) {
+            let before: [u32; 3] = before;
+            let longest = before.iter().zip(sent).map(|(before, sent)| sent.abs_diff(*before)).max();
+            assert!(longest <= Some([11, 83][is_fast as usize]), "{before:?} {sent:?}");
+            steps[is_fast as usize] += u32::from(longest == Some([11, 83][is_fast as usize]));
+        }
+        before = sent;
+    }
+    assert!(steps[0] > 1000 && steps[1] > 1000, "{steps:?}");
+}
+
 /// A watch comes back from its word as it was; and any word is one.
 #[test]
 fn a_watch_fits_a_word() {

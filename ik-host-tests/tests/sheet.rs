@@ -74,6 +74,8 @@ fn the_culvert_walker_is_read_as_it_is_written() {
     assert_eq!(femur.dead_band_us, 4.0);
     assert_eq!(femur.speed_s_per_60_deg, Some(0.16));
     assert_eq!(femur.stall_torque_n_mm, Some(1200.0));
+    assert_eq!(femur.slew_us_per_frame, Some(80.0));
+    assert_eq!(femur.start_us, Some(1050.0));
     assert_eq!(kind.work.x_mm, [-60.0, 60.0]);
     assert_eq!(kind.work.y_mm, [90.0, 185.0]);
     assert_eq!(kind.work.z_mm, [-125.0, -30.0]);
@@ -192,6 +194,10 @@ fn what_may_be_left_out_takes_its_stated_value() {
     assert_eq!(robot.kinds[0].servos[0].dead_band_us, 0.0);
     let robot = good(&altered(CULVERT, "speed_s_per_60_deg = 0.16 ", "# "));
     assert_eq!(robot.kinds[0].servos[0].speed_s_per_60_deg, None);
+    let robot = good(&altered(CULVERT, "slew_us_per_frame = 80 ", "# "));
+    assert_eq!(robot.kinds[0].servos[0].slew_us_per_frame, None);
+    let robot = good(&altered(CULVERT, "start_us = 1500 ", "# "));
+    assert_eq!(robot.kinds[0].servos[0].start_us, None);
     let robot = good(&altered(CULVERT, "about = ", "# "));
     assert_eq!(robot.about, None);
 }
@@ -521,6 +527,16 @@ const FAULTS: &[Fault] = faults![
         "leg_kind.walker.servo.hip.speed_s_per_60_deg": "above 0 and at most 10 s", "60 degrees";
     CULVERT: "stall_torque_n_mm = 1200" => "stall_torque_n_mm = -1", at "n_mm = -1",
         "leg_kind.walker.servo.hip.stall_torque_n_mm": "above 0", "newton millimetres";
+    CULVERT: "slew_us_per_frame = 80" => "slew_us_per_frame = 0", at "frame = 0 ",
+        "leg_kind.walker.servo.hip.slew_us_per_frame": "above 0 and at most 3000 us", "83 us in 20 ms";
+    CULVERT: "slew_us_per_frame = 80" => "slew_us_per_frame = 4.87", at "4.87",
+        "leg_kind.walker.servo.hip.slew_us_per_frame": "less than a count of the output, 4.8800 us", "at least that";
+    ORCHARD: "slew_us_per_frame = 90" => "slew_us_per_frame = 0.3", at "frame = 0.3 ",
+        "leg_kind.strider.servo.hip.slew_us_per_frame": "less than a count of the output, 0.3125 us", "at least that";
+    CULVERT: "slew_us_per_frame = 80" => "slew_us_per_frame = nan", at "frame = nan",
+        "leg_kind.walker.servo.hip.slew_us_per_frame": "must be a finite number", "slew_us_per_frame = 80";
+    CULVERT: "start_us = 1500" => "start_us = 599", at "start_us = 599",
+        "leg_kind.walker.servo.hip.start_us": "within the safe pulses", "from 600 to 2400";
     CULVERT: "[leg_kind.walker.servo.hip]" => "[leg_kind.walker.servo.hop]", at "servo.hop]",
         "leg_kind.walker.servo.hop": "is not a key of the servos of a yaw-hip leg", "did you mean `hip`?";
     // Work volume.

@@ -104,7 +104,7 @@ fn the_thighs_range_is_what_its_servo_and_the_shanks_leave() {
         ("knee = [15, 155]", "knee = [40, 155]"),
         ("joint_at_centre_deg = 85", "joint_at_centre_deg = 60"),
         (
-            "pulse_us = [600, 2400]\ndead_band_us = 4\nspeed_s_per_60_deg = 0.16\nstall_torque_n_mm = 1200\n\n[leg_kind.walker.work]",
+            "pulse_us = [600, 2400]\ndead_band_us = 4\nspeed_s_per_60_deg = 0.16\nstall_torque_n_mm = 1200\nslew_us_per_frame = 80\nstart_us = 2000\n\n[leg_kind.walker.work]",
             "pulse_us = [600, 1600]\n\n[leg_kind.walker.work]",
         ),
     ]);

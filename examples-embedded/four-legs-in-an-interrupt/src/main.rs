@@ -1,8 +1,9 @@
 //! Four legs in f32: the main loop plans feet and queues them, the frame interrupt takes the feet of its frame from the
-//! queue, solves the legs and writes the pulses. The queue has one sender and one receiver and needs no lock.
+//! queue, solves the legs and sends what frame safety lets pass. The queue has one sender and one receiver and needs no lock.
 //!
 //! The robot is the orchard walker. SysTick is the frame interrupt here; on a board it is the update interrupt of the timer
-//! that the servos hang on. If the main loop is late, the last feet stand.
+//! that the servos hang on. If the main loop is late, the servos go on to the last feet; if it stays silent they hold, and
+//! at last are let go of.
 #![no_std]
 #![no_main]
 
@@ -12,11 +13,12 @@ use board::end;
 use cortex_m::peripheral::{SYST, syst::SystClkSource};
 use cortex_m_rt::exception;
 use critical_section::Mutex;
+use ik_core::frame::{FrameSafety, FrameState, ServoBounds, StaleRule, counts_of};
 use ik_core::queue::{FootQueue, FootReceiver};
 use ik_core::robot::Robot;
 use ik_core::{
-    Bend, Channel, Dimensions, Float32, Foot, Leg, Limb, Limits, Mounting, RollHip, ServoSpec, Side, Timer,
-    Turns,
+    Bend, Channel, Dimensions, Float32, Foot, Leg, Limb, Limits, Mounting, Pulse, RollHip, ServoSpec, Side,
+    Timer, Turns,
 };
 
 /// An impossible leg, servo or timer does not compile.
@@ -33,9 +35,12 @@ type Channels = [Channel<Float32>; 3];
 type Walker = Robot<RollHip, Float32, LEGS, Channels>;
 
 const LEGS: usize = 4;
+const SERVOS: usize = 3 * LEGS;
 /// One more than frames that can wait.
 const SLOTS: usize = 4;
-const FRAMES: u32 = 6;
+/// Frames that are planned, and those that are run: the last ones show what happens when the planner is silent.
+const PLANNED: u32 = 9;
+const FRAMES: u32 = 17;
 /// Clock ticks of a frame; on a board, 20 ms.
 const FRAME_TICKS: u32 = 200_000;
 
@@ -77,10 +82,33 @@ const fn channel(at_centre: f64, turns: Turns, trim_us: f64, pulse_us: [f64; 2])
     possible!(Channel::<Float32>::new(spec, TIMER.counting()))
 }
 
+/// What the servos stand at while the machine lies on its belly: the first pulses that they get. Theirs is the one motion
+/// that no slew limits.
+const START_US: [f64; 3] = [1500.0, 1850.0, 1150.0];
+/// In a frame: what 0.14 s for 60 degrees comes to.
+const SLEW_US: f64 = 95.0;
+
+/// Hold when there was no target for 3 frames, let go after 6. Short, so that the log shows it; a machine waits longer.
+static SAFETY: FrameSafety<SERVOS> = {
+    let mut servos = [bounds(0, 0); SERVOS];
+    let mut servo = 0;
+    while servo < SERVOS {
+        servos[servo] = bounds(servo / 3, servo % 3);
+        servo += 1;
+    }
+    FrameSafety::new(servos, possible!(StaleRule::hold_then_release(3, 6)))
+};
+
+const fn bounds(leg: usize, joint: usize) -> ServoBounds {
+    let (start, slew) = (Pulse::from_us(START_US[joint]), Pulse::from_us(SLEW_US));
+    possible!(ServoBounds::on_channel(&LIMBS[leg].servos[joint], TIMER.counting(), start, slew))
+}
+
 /// What the frame interrupt owns once the main loop has handed it over.
 struct Frame {
     walker: Walker,
     feet: FootReceiver<'static, Float32, LEGS>,
+    safety: FrameState<SERVOS>,
     number: u32,
 }
 
@@ -109,8 +137,11 @@ fn main() -> ! {
         // There is room for four.
         let _ = walker.add(limb);
     }
+    let mut safety = SAFETY.start();
+    // On a board: in the frame interrupt, when a person presses a button, hands off the machine.
+    safety.engage();
     critical_section::with(|section| {
-        FRAME.borrow_ref_mut(section).replace(Frame { walker, feet: receiver, number: 0 });
+        FRAME.borrow_ref_mut(section).replace(Frame { walker, feet: receiver, safety, number: 0 });
     });
     // Feet first, frames then: nothing moves before it is known where to.
     let mut planned = 0;
@@ -120,7 +151,7 @@ fn main() -> ! {
     start(&mut core.SYST);
     loop {
         // Plans ahead whenever there is room, and sleeps otherwise.
-        if planned < FRAMES && planner.ready() {
+        if planned < PLANNED && planner.ready() {
             let _ = planner.send(feet(planned));
             planned += 1;
         } else {
@@ -150,14 +181,18 @@ fn SysTick() {
 impl Frame {
     /// The feet of this frame to pulses. A firmware writes them to the timer; this one logs them.
     fn run(&mut self) {
-        let Some(feet) = self.feet.next() else { return };
-        defmt::println!("frame {=u32}", self.number);
-        for command in &self.walker.frame(&feet) {
-            defmt::println!("ticks {}, {}", command.counts(), command.answer.outcome);
+        let new = self.feet.fresh().and_then(|feet| counts_of(&self.walker.frame(&feet)));
+        match SAFETY.frame(&mut self.safety, new) {
+            Some(ticks) => {
+                defmt::println!("frame {=u32}: {}", self.number, self.safety.conduct());
+                for leg in ticks.as_chunks::<3>().0 {
+                    defmt::println!("ticks {}", leg);
+                }
+            }
+            None => defmt::println!("frame {=u32}: no pulses", self.number),
         }
         self.number += 1;
-        // One more than was planned, to show that the last feet stand.
-        if self.number > FRAMES {
+        if self.number == FRAMES {
             end::done()
         }
     }

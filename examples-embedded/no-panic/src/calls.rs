@@ -260,7 +260,7 @@ fn queue<N: Opaque>() {
     for _ in 0..word() {
         use_up((sender.ready(), sender.send([foot(); 4]).is_ok()));
         if truth() {
-            use_up(receiver.next());
+            use_up((receiver.next(), receiver.fresh()));
         }
     }
 }

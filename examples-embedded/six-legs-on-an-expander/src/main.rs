@@ -1,7 +1,8 @@
 //! Six legs in 32-bit fixed point, their eighteen servos on a 12-bit PWM expander behind an I2C bus.
 //!
-//! The robot is the culvert walker. Its feet go through some frames of a tripod gait: three on the ground move back while
-//! the other three swing forward. The counts of a frame go to the expander in one transaction.
+//! The robot is the culvert walker. It lies on its belly, stands up within the slews of its servos, and takes a step of a
+//! tripod gait: three feet on the ground move back while the other three swing forward. Then its planner falls silent, and
+//! frame safety holds the legs and lets go of them at last. The counts of a frame go to the expander in one transaction.
 #![no_std]
 #![no_main]
 
@@ -10,11 +11,12 @@ mod bus;
 use board::end;
 use bus::LoggedBus;
 use fixed::types::I16F16;
+use ik_core::frame::{Conduct, FrameSafety, ServoBounds, StaleRule, counts_of};
 use ik_core::output::hal::{ExpanderWriter, Layout, WordOrder};
 use ik_core::robot::Robot;
 use ik_core::{
-    Bend, Channel, Dimensions, Expander as Counter, Fixed32, Foot, Leg, Limb, Limits, Mounting, ServoSpec,
-    Side, Turns, YawHip,
+    Bend, Channel, Dimensions, Expander as Counter, Fixed32, Foot, Leg, Limb, Limits, Mounting, Pulse,
+    ServoSpec, Side, Turns, YawHip,
 };
 
 /// An impossible leg, servo or expander does not compile.
@@ -77,6 +79,32 @@ const fn channel(at_centre: f64, turns: Turns, trim_us: f64) -> Channel<Fixed32>
     possible!(Channel::<Fixed32>::new(spec, COUNTER.counting()))
 }
 
+/// What the servos stand at while the machine lies on its belly, its knees up: the first pulses that they get. Theirs is the
+/// one motion that no slew limits.
+const START_US: [f64; 3] = [1500.0, 1050.0, 2000.0];
+/// Standing up: about half of what the servos can do.
+static GENTLY: FrameSafety<CHANNELS> = safety(40.0);
+/// Walking: what 0.16 s for 60 degrees comes to in a frame.
+static SAFELY: FrameSafety<CHANNELS> = safety(83.0);
+
+/// No farther than a slew in a frame. Without a target: hold after 3 frames, let go after 6. Short, so that the log shows
+/// it; a machine waits longer.
+const fn safety(slew_us: f64) -> FrameSafety<CHANNELS> {
+    let mut servos = [bounds(0, slew_us); CHANNELS];
+    let mut servo = 0;
+    while servo < CHANNELS {
+        servos[servo] = bounds(servo, slew_us);
+        servo += 1;
+    }
+    FrameSafety::new(servos, possible!(StaleRule::hold_then_release(3, 6)))
+}
+
+const fn bounds(servo: usize, slew_us: f64) -> ServoBounds {
+    let (leg, joint) = (servo / 3, servo % 3);
+    let (start, slew) = (Pulse::from_us(START_US[joint]), Pulse::from_us(slew_us));
+    possible!(ServoBounds::on_channel(&LIMBS[leg].servos[joint], COUNTER.counting(), start, slew))
+}
+
 /// A foot in whole mm.
 const fn mm(x: i32, y: i32, z: i32) -> Foot<Fixed32> {
     const fn length(mm: i32) -> I16F16 {
@@ -90,19 +118,28 @@ const STANDS: [[i32; 2]; LEGS] = [[110, 200], [0, 220], [-110, 200], [110, -200]
 const GROUND: i32 = -80;
 const LIFT: i32 = 25;
 const STRIDE: i32 = 20;
-const FRAMES: i32 = 4;
 
-/// The feet of a frame: legs 0, 2 and 4 swing while 1, 3 and 5 push.
-fn feet(frame: i32) -> [Foot<Fixed32>; LEGS] {
-    let along = STRIDE * frame / (FRAMES - 1) - STRIDE / 2;
-    core::array::from_fn(|leg| {
+/// When the step begins and ends, and the last frame.
+const STEP: [i32; 2] = [17, 27];
+const FRAMES: i32 = 35;
+
+/// What the planner wants in a frame, if it says anything: to stand, and a step in which legs 0, 2 and 4 swing while 1, 3
+/// and 5 push.
+fn feet(frame: i32) -> Option<[Foot<Fixed32>; LEGS]> {
+    let [from, to] = STEP;
+    if frame > to {
+        return None;
+    }
+    let along = STRIDE * (frame - from).max(0) / (to - from) - STRIDE / 2;
+    Some(core::array::from_fn(|leg| {
         let [x, y] = STANDS[leg];
-        let in_the_air = frame > 0 && frame < FRAMES - 1;
+        // Up to the middle of the step, and down again.
+        let up = LIFT * (frame - from).min(to - frame).max(0) * 2 / (to - from);
         match leg % 2 {
-            0 => mm(x + along, y, GROUND + if in_the_air { LIFT } else { 0 }),
+            0 => mm(x + along, y, GROUND + up),
             _ => mm(x - along, y, GROUND),
         }
-    })
+    }))
 }
 
 #[board::entry]
@@ -115,14 +152,26 @@ fn main() -> ! {
         // There is room for six.
         let _ = robot.add(limb);
     }
+    let (mut state, mut stands) = (GENTLY.start(), false);
     for frame in 0..FRAMES {
-        let mut counts = [0; CHANNELS];
-        for (leg, command) in counts.chunks_exact_mut(3).zip(&robot.frame(&feet(frame))) {
-            leg.copy_from_slice(&command.counts());
+        // On a board: when a person presses a button, hands off the machine.
+        if frame == 1 {
+            state.engage();
         }
-        defmt::println!("frame {=i32}", frame);
-        if expander.send(&counts).is_err() {
-            defmt::println!("the bus failed: the legs keep their poses");
+        let new = feet(frame).and_then(|feet| counts_of(&robot.frame(&feet)));
+        let stage = if stands { &SAFELY } else { &GENTLY };
+        let counts = stage.frame(&mut state, new).unwrap_or([0; CHANNELS]);
+        stands |= state.conduct() == Conduct::Following && state.behind() == 0;
+        defmt::println!(
+            "frame {=i32}: {}, {=usize} servos on their way",
+            frame,
+            state.conduct(),
+            state.behind()
+        );
+        // The same frame again if the bus fails: the next one would be farther from the last that was taken.
+        if !(0..3).any(|_| expander.send(&counts).is_ok()) {
+            defmt::println!("the bus failed: cut the servos' power");
+            break;
         }
     }
     end::done()

@@ -44,6 +44,8 @@ mod tests {
                 dead_band_us: 0.0,
                 speed_s_per_60_deg: None,
                 stall_torque_n_mm: None,
+                slew_us_per_frame: None,
+                start_us: None,
             };
             for trim_us in [-90.0, 0.0, 12.5, 200.0] {
                 let curve = curve(&servo, trim_us).expect("a curve");

@@ -112,6 +112,12 @@ pub(super) const SPEED_S: Bounds = Bounds::above(
     " s",
     "it is the time for 60 degrees, a tenth or two of a second for most servos",
 );
+pub(super) const SLEW_US: Bounds = Bounds::above(
+    0.0,
+    3000.0,
+    " us",
+    "it is how far a pulse may go in a frame: 0.16 s for 60 degrees of 11.1 us each is 83 us in 20 ms",
+);
 pub(super) const TORQUE_N_MM: Bounds =
     Bounds::above(0.0, 1e6, " N mm", "torque is in newton millimetres; 1 kgf cm is 98.1 N mm");
 pub(super) const PLACE_MM: Bounds =

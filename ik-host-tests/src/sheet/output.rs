@@ -53,8 +53,8 @@ fn timer(table: &Table<'_>) -> Option<Output> {
     };
     kind?;
 
-    let counts = 2_f64.powi(counter_bits as i32);
-    let finest = (f64::from(clock_hz) / (frame_hz * counts)).ceil().max(1.0);
+    let counter_bits = u8::try_from(counter_bits).ok()?;
+    let finest = finest(f64::from(clock_hz), counter_bits, frame_hz);
     let fits = prescaler.is_none_or(|given| f64::from(given) >= finest);
     if !limits::PRESCALER.hold(finest) {
         clock?.complain(
@@ -73,7 +73,7 @@ fn timer(table: &Table<'_>) -> Option<Output> {
         );
         return None;
     }
-    Some(Output::Timer { clock_hz, counter_bits: u8::try_from(counter_bits).ok()?, frame_hz, prescaler })
+    Some(Output::Timer { clock_hz, counter_bits, frame_hz, prescaler })
 }
 
 fn expander(table: &Table<'_>) -> Option<Output> {
@@ -109,6 +109,25 @@ fn frame_hz(table: &Table<'_>) -> Option<f64> {
 fn expander_frame_hz(oscillator_hz: u32, resolution_bits: u32, frame_hz: f64) -> f64 {
     let frames = f64::from(oscillator_hz) / 2_f64.powi(resolution_bits as i32);
     frames / (frames / frame_hz).round().max(1.0)
+}
+
+/// How long a count really lasts, in microseconds.
+pub(super) fn count_us(output: &Output) -> f64 {
+    match output {
+        Output::Timer { clock_hz, counter_bits, frame_hz, prescaler } => {
+            let clock_hz = f64::from(*clock_hz);
+            let divider = prescaler.map_or_else(|| finest(clock_hz, *counter_bits, *frame_hz), f64::from);
+            1e6 * divider / clock_hz
+        }
+        Output::Expander { resolution_bits, .. } => {
+            frame_us(output) / 2_f64.powi(i32::from(*resolution_bits))
+        }
+    }
+}
+
+/// The least prescaler with which a frame fits the counter.
+fn finest(clock_hz: f64, counter_bits: u8, frame_hz: f64) -> f64 {
+    (clock_hz / (frame_hz * 2_f64.powi(i32::from(counter_bits)))).ceil().max(1.0)
 }
 
 /// How long a frame really lasts, in microseconds: no pulse can be longer.

@@ -192,6 +192,11 @@ pub struct Servo {
     pub speed_s_per_60_deg: Option<f64>,
     /// Torque at stall, in newton millimetres.
     pub stall_torque_n_mm: Option<f64>,
+    /// The most that the pulse may change from one frame to the next, in microseconds: at least a count of the output.
+    pub slew_us_per_frame: Option<f64>,
+    /// The first pulse after power comes on, in microseconds, before trim: where the servo stands then. It lies within
+    /// `pulse_us`.
+    pub start_us: Option<f64>,
 }
 
 impl Servo {

@@ -1,7 +1,7 @@
 //! `[leg_kind.NAME.servo.JOINT]`: one servo.
 
 use super::limits;
-use super::output::frame_us;
+use super::output::{count_us, frame_us};
 use super::robot::{Output, Servo, ServoCurve, Turns};
 use super::table::{Item, Table};
 use super::vocabulary::{MEASURED_SERVO, STRAIGHT_SERVO};
@@ -19,6 +19,9 @@ pub(super) fn read(item: &Item<'_>, output: Option<&Output>) -> Option<Servo> {
     let speed_s_per_60_deg = optional(&table, "speed_s_per_60_deg", &limits::SPEED_S);
     let stall_torque_n_mm = optional(&table, "stall_torque_n_mm", &limits::TORQUE_N_MM);
 
+    let slew_us_per_frame = slew(&table, output);
+    let start_us = start(&table, pulse_us);
+
     let fits = match (&pulses, pulse_us, output) {
         (Some(pulses), Some([_, most]), Some(output)) => fits_the_frame(pulses, most, output),
         _ => true,
@@ -32,6 +35,8 @@ pub(super) fn read(item: &Item<'_>, output: Option<&Output>) -> Option<Servo> {
         dead_band_us: dead_band_us?,
         speed_s_per_60_deg: speed_s_per_60_deg?,
         stall_torque_n_mm: stall_torque_n_mm?,
+        slew_us_per_frame: slew_us_per_frame?,
+        start_us: start_us?,
     })
 }
 
@@ -127,6 +132,34 @@ fn optional(table: &Table<'_>, key: &str, bounds: &limits::Bounds) -> Option<Opt
     match table.optional(key) {
         Some(item) => item.within(bounds).map(Some),
         None => Some(None),
+    }
+}
+
+/// The slew: less than a count would never get anywhere.
+fn slew(table: &Table<'_>, output: Option<&Output>) -> Option<Option<f64>> {
+    let Some(item) = table.optional("slew_us_per_frame") else { return Some(None) };
+    let slew_us = item.within(&limits::SLEW_US)?;
+    match output.map(count_us) {
+        Some(count_us) if slew_us < count_us => {
+            item.complain(
+                format!(
+                    "a servo with a slew of less than a count of the output, {count_us:.4} us, never moves"
+                ),
+                "at least that, or an output of finer counts",
+            );
+            None
+        }
+        _ => Some(Some(slew_us)),
+    }
+}
+
+/// The first pulse.
+fn start(table: &Table<'_>, pulse_us: Option<[f64; 2]>) -> Option<Option<f64>> {
+    let Some(item) = table.optional("start_us") else { return Some(None) };
+    let at = item.within(&limits::PULSE_US)?;
+    match pulse_us {
+        Some(safe) if !is_safe(&item, at, safe) => None,
+        _ => Some(Some(at)),
     }
 }
 

@@ -215,6 +215,8 @@ pub(super) static STRAIGHT_SERVO: Vocabulary = Vocabulary {
         key("dead_band_us", "dead_band_us = 4"),
         key("speed_s_per_60_deg", "speed_s_per_60_deg = 0.16"),
         key("stall_torque_n_mm", "stall_torque_n_mm = 1200"),
+        key("slew_us_per_frame", "slew_us_per_frame = 80"),
+        key("start_us", "start_us = 1500"),
     ],
     strays: &[],
 };
@@ -230,6 +232,8 @@ pub(super) static MEASURED_SERVO: Vocabulary = Vocabulary {
         key("dead_band_us", "dead_band_us = 4"),
         key("speed_s_per_60_deg", "speed_s_per_60_deg = 0.16"),
         key("stall_torque_n_mm", "stall_torque_n_mm = 1200"),
+        key("slew_us_per_frame", "slew_us_per_frame = 80"),
+        key("start_us", "start_us = 1500"),
     ],
     strays: &[
         stray("centre_us", None, OF_STRAIGHT),
