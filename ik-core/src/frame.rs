@@ -29,6 +29,8 @@
 //! A state is worked out as a whole before it takes the place of the one before it, and nothing of the caller's runs in
 //! between: a caller that panics or is interrupted between two frames finds the last whole one. States cannot be copied, so
 //! that nobody goes on from an old one, whose pulses the servos have left long ago.
+//!
+#![doc = include_str!("../docs/frame-safety.md")]
 
 mod bounds;
 mod stage;
