@@ -336,11 +336,11 @@ fn one_state_may_go_from_a_gentle_stage_to_a_fast_one() {
     let mut sweep = Sweep::from_seed(67);
     let (mut state, mut before, mut steps) = (gentle.start(), None, [0; 2]);
     for _ in 0..rounds(20_000) {
-        if sweep.bits() % 50 == 0 {
+        if sweep.bits().is_multiple_of(50) {
             state.engage();
         }
         let is_fast = sweep.bits() % 2;
-        let new = (sweep.bits() % 4 > 0).then(|| [(); 3].map(|()| 3000 + sweep.bits() % 4000));
+        let new = (!sweep.bits().is_multiple_of(4)).then(|| [(); 3].map(|()| 3000 + sweep.bits() % 4000));
         let sent = if is_fast == 1 { &fast } else { &gentle }.frame(&mut state, new);
         if let (Some(before), Some(sent)) = (before, sent) {
             let before: [u32; 3] = before;
