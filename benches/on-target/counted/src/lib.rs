@@ -3,6 +3,8 @@
 #![cfg_attr(not(test), no_std)]
 
 mod digest;
+#[cfg(all(target_os = "none", target_arch = "arm"))]
+pub mod system_timer;
 #[cfg(target_os = "none")]
 mod window;
 

@@ -97,6 +97,17 @@ impl Chip {
         }
     }
 
+    /// How many instructions a tick of its system timer is, when the emulator's clock goes by instructions, a nanosecond each;
+    /// `None` if it has none, but a counter of instructions.
+    pub fn instructions_per_tick(self) -> Option<f64> {
+        match self {
+            // By the machine's clock: 16 MHz, 25 MHz.
+            Self::M0 | Self::M0Plus => Some(62.5),
+            Self::M3 | Self::M4f | Self::M4fTuned | Self::M7 => Some(40.0),
+            Self::Rv32imc => None,
+        }
+    }
+
     /// The plugin's name of its cycle table.
     pub(crate) fn cycle_table(self) -> &'static str {
         match self {

@@ -10,6 +10,7 @@ mod goals;
 mod guard;
 mod own_counter;
 mod report;
+mod system_timer;
 mod table;
 mod trouble;
 
@@ -18,7 +19,7 @@ use std::{path::Path, process::ExitCode};
 use arguments::Arguments;
 use contenders::To;
 use count::Cost;
-use emulation::{Chip, Setting};
+use emulation::{Chip, Run, Setting};
 use expected::Expected;
 use goals::Goals;
 use report::Report;
@@ -115,18 +116,7 @@ fn count_on(
             let again = emulation::count_again(chip, expected.name, image, arguments.time_limit())?;
             count::compare(expected, &run.windows, &again)?;
             eprintln!("{}: {}: counted twice, {} windows alike", chip.class(), expected.name, again.len());
-            if chip == Chip::Rv32imc {
-                let name = expected.name;
-                let images =
-                    emulation::images_with(arguments.way, chip, "image", &[name], &["own-counter"], None)?;
-                let image = images.get(name).ok_or_else(|| not_named(name))?;
-                let own = emulation::run(name, image, Setting { by_instructions: true, ..setting })?;
-                let more = own_counter::compare(expected, &own)?;
-                eprintln!(
-                    "{}: {name}: by the chip's own counter as well, always {more} more around the window",
-                    chip.class()
-                );
-            }
+            by_the_chip_itself(arguments, expected, Setting { by_instructions: true, ..setting }, &run)?;
         }
         let flash = emulation::flash_bytes(image)?;
         match (expected.to, call) {
@@ -140,6 +130,37 @@ fn count_on(
         }
     }
     Ok(costs)
+}
+
+/// Compares what was counted with what the chip says of itself.
+fn by_the_chip_itself(
+    arguments: &Arguments,
+    expected: &Expected,
+    setting: Setting<'_>,
+    run: &Run,
+) -> Result<(), Trouble> {
+    let (name, chip) = (expected.name, setting.chip);
+    let images = emulation::images_with(arguments.way, chip, "image", &[name], &["own-counter"], None)?;
+    let image = images.get(name).ok_or_else(|| not_named(name))?;
+    match chip.instructions_per_tick() {
+        None => {
+            let own = emulation::run(name, image, setting)?;
+            let more = own_counter::compare(expected, &own)?;
+            eprintln!(
+                "{}: {name}: by the chip's own counter as well, always {more} more around the window",
+                chip.class()
+            );
+        }
+        Some(per_tick) => {
+            let own = emulation::run(name, image, Setting { plugin: None, ..setting })?;
+            let [least, most] = system_timer::compare(expected, &run.windows, &own, per_tick)?;
+            eprintln!(
+                "{}: {name}: by the system timer as well, always {least:.1} to {most:.1} more around the window",
+                chip.class()
+            );
+        }
+    }
+    Ok(())
 }
 
 fn not_named(what: &str) -> Trouble {
