@@ -2,7 +2,7 @@
 # Sets up what the firmware images need beyond stable Rust: a compiler that has a `core` for the
 # microcontroller targets, and the emulators of their chips. Quick and silent when all is there.
 #
-#   tools.sh [--way auto|rustup|distro] [--target TARGET]... [--no-emulator] [-- COMMAND...]
+#   tools.sh [--way auto|rustup|distro] [--target TARGET]... [--no-emulator] [--disassembler] [-- COMMAND...]
 #
 #     rustup   the toolchain in use, its missing targets added by `rustup target add`
 #     distro   Debian's compiler (rustc-web, cargo-web) with `core` built once from rust-web-src
@@ -27,11 +27,13 @@ missing_tool() { say "$*"; exit 3; }
 WAY=auto
 TARGETS=()
 WANT_EMULATOR=yes
+WANT_DISASSEMBLER=no
 while [ $# -gt 0 ]; do
   case $1 in
     --way) [ $# -gt 1 ] || wrong_call "--way needs a value: auto, rustup or distro"; WAY=$2; shift 2 ;;
     --target) [ $# -gt 1 ] || wrong_call "--target needs a value, for example thumbv7m-none-eabi"; TARGETS+=("$2"); shift 2 ;;
     --no-emulator) WANT_EMULATOR=no; shift ;;
+    --disassembler) WANT_DISASSEMBLER=yes; shift ;;
     --) shift; break ;;
     *) wrong_call "unknown argument '$1'" ;;
   esac
@@ -198,12 +200,17 @@ case $WAY in
   distro) distro_way || missing_tool "$(what_to_install)" ;;
 esac
 
-# Each emulator and the Debian package that has it, as far as the targets need it.
-provide_emulator() { # program package
+# A program and the Debian package that has it.
+provide() { # program package what
   "$1" --version >/dev/null 2>&1 && return
   if ! install_packages "$2" || ! "$1" --version >/dev/null 2>&1; then
-    missing_tool "The emulator $1 is not here. On Debian, as root: apt-get install --no-install-recommends $2; elsewhere: your system's package of QEMU that has it."
+    missing_tool "$3 $1 is not here. On Debian, as root: apt-get install --no-install-recommends $2; elsewhere: your system's package that has it."
   fi
+}
+
+# Each emulator, as far as the targets need it.
+provide_emulator() { # program package
+  provide "$1" "$2" "The emulator"
 }
 
 if [ "$WANT_EMULATOR" = yes ]; then
@@ -214,6 +221,8 @@ if [ "$WANT_EMULATOR" = yes ]; then
     esac
   done
 fi
+
+if [ "$WANT_DISASSEMBLER" = yes ]; then provide llvm-objdump llvm "The disassembler"; fi
 
 if [ -n "$TOOLCHAIN_BIN" ]; then
   # First in PATH, so that cargo finds this compiler and not rustup's stand-in.

@@ -5,6 +5,9 @@ use std::{io, path::PathBuf, process::ExitStatus, time::Duration};
 /// What went wrong.
 #[derive(Debug, thiserror::Error)]
 pub enum Trouble {
+    #[error("{name}: at {address:#x} decoder and disassembler do not agree: {problem}")]
+    DecoderDiffers { name: String, address: u64, problem: String },
+
     #[error("{what} is missing: {remedy}")]
     ToolMissing { what: String, remedy: String },
 

@@ -35,6 +35,10 @@ pub struct Arguments {
     #[arg(long)]
     pub count_twice: bool,
 
+    /// Compare the decoder with LLVM's disassembler over every instruction of the images
+    #[arg(long)]
+    pub against_disassembler: bool,
+
     /// Compare what ik-core's own cost with the checked-in table, guard.toml: up to 3 % more pass, else exit code 1
     #[arg(long, conflicts_with_all = ["list", "rewrite_guard"])]
     pub guard: bool,

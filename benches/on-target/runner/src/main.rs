@@ -118,6 +118,10 @@ fn count_on(
             eprintln!("{}: {}: counted twice, {} windows alike", chip.class(), expected.name, again.len());
             by_the_chip_itself(arguments, expected, Setting { by_instructions: true, ..setting }, &run)?;
         }
+        if arguments.against_disassembler {
+            let agreed = emulation::disassembler_agrees(chip, expected.name, image)?;
+            eprintln!("{}: {}: decoded as disassembled, {agreed} instructions", chip.class(), expected.name);
+        }
         let flash = emulation::flash_bytes(image)?;
         match (expected.to, call) {
             (To::Nothing, _) => call = Some(count::call_alone(&run.windows, flash)),
