@@ -26,9 +26,9 @@
 //! may have been moved by hand, or by the leg's weight. What can be done is to state where it is likely to be, to begin
 //! there, and to leave the moment to the caller.
 //!
-//! A state is worked out as a whole before it takes the place of the one before it, and nothing of the caller's runs in
-//! between: a caller that panics or is interrupted between two frames finds the last whole one. States cannot be copied, so
-//! that nobody goes on from an old one, whose pulses the servos have left long ago.
+//! Nothing of the caller's runs within a frame, and nothing in it can panic: a caller that panics between two frames finds the
+//! state of the last whole one. States cannot be copied, so that nobody goes on from an old one, whose pulses the servos have
+//! left long ago.
 //!
 #![doc = include_str!("../docs/frame-safety.md")]
 

@@ -182,7 +182,7 @@ impl Frame {
     /// The feet of this frame to pulses. A firmware writes them to the timer; this one logs them.
     fn run(&mut self) {
         let new = self.feet.fresh().and_then(|feet| counts_of(&self.walker.frame(&feet)));
-        match SAFETY.frame(&mut self.safety, new) {
+        match SAFETY.frame(&mut self.safety, new.as_ref()).copied() {
             Some(ticks) => {
                 defmt::println!("frame {=u32}: {}", self.number, self.safety.conduct());
                 for leg in ticks.as_chunks::<3>().0 {

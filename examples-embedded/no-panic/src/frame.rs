@@ -53,8 +53,8 @@ fn legs_and_servos<const SERVOS: usize>(bounds: Option<ServoBounds>) {
         if truth() {
             state.release();
         }
-        let new = truth().then(|| core::array::from_fn(|_| word()));
-        use_up(safety.frame(&mut state, new));
+        let new: Option<[u32; SERVOS]> = truth().then(|| core::array::from_fn(|_| word()));
+        use_up(safety.frame(&mut state, new.as_ref()));
         use_up((state.conduct(), state.is_engaged(), state.last(), state.behind()));
     }
 }

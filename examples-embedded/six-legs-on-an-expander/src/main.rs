@@ -160,7 +160,7 @@ fn main() -> ! {
         }
         let new = feet(frame).and_then(|feet| counts_of(&robot.frame(&feet)));
         let stage = if stands { &SAFELY } else { &GENTLY };
-        let counts = stage.frame(&mut state, new).unwrap_or([0; CHANNELS]);
+        let counts = *stage.frame(&mut state, new.as_ref()).unwrap_or(&[0; CHANNELS]);
         stands |= state.conduct() == Conduct::Following && state.behind() == 0;
         defmt::println!(
             "frame {=i32}: {}, {=usize} servos on their way",

@@ -128,19 +128,20 @@ impl ServoBounds {
         }
     }
 
-    /// One frame on the way: from what was sent last towards what is wanted, both held within the range, by no more than the
-    /// slew.
+    /// One frame on the way: from what was sent last towards what is wanted, by no more than the slew, and within the range
+    /// whatever both are.
     #[inline(always)]
     pub const fn step(&self, from: u32, wanted: u32) -> u32 {
-        let (from, wanted) = (self.hold(from), self.hold(wanted));
-        // Neither overflows: the way is no longer than from one end of the range to the other.
-        if wanted >= from {
-            let way = wanted - from;
-            from + if way < self.slew { way } else { self.slew }
+        let (low, high) = (from.saturating_sub(self.slew), from.saturating_add(self.slew));
+        let near = if wanted < low {
+            low
+        } else if wanted > high {
+            high
         } else {
-            let way = from - wanted;
-            from - if way < self.slew { way } else { self.slew }
-        }
+            wanted
+        };
+        // The range comes last, and so has the last word. From within it that makes no step longer.
+        self.hold(near)
     }
 }
 

@@ -26,14 +26,14 @@ use crate::number::Number;
 /// const SAFETY: FrameSafety<2> = FrameSafety::new([SERVO; 2], possible!(StaleRule::hold_then_release(2, 4)));
 ///
 /// let mut state = SAFETY.start();
-/// assert_eq!(SAFETY.frame(&mut state, Some([5000, 9999])), None); // no pulse before it is asked for
+/// assert_eq!(SAFETY.frame(&mut state, Some(&[5000, 9999])), None); // no pulse before it is asked for
 /// state.engage();
-/// assert_eq!(SAFETY.frame(&mut state, Some([4000, 9999])), Some([3840, 3840])); // where it is said to stand
-/// assert_eq!(SAFETY.frame(&mut state, None), Some([4000, 4105])); // and on to the target, which is a frame old
-/// assert_eq!(SAFETY.frame(&mut state, None), Some([4000, 4105])); // two frames: hold
-/// assert_eq!(SAFETY.frame(&mut state, None), Some([4000, 4105]));
+/// assert_eq!(SAFETY.frame(&mut state, Some(&[4000, 9999])), Some(&[3840, 3840])); // where it is said to stand
+/// assert_eq!(SAFETY.frame(&mut state, None), Some(&[4000, 4105])); // and on to the target, which is a frame old
+/// assert_eq!(SAFETY.frame(&mut state, None), Some(&[4000, 4105])); // two frames: hold
+/// assert_eq!(SAFETY.frame(&mut state, None), Some(&[4000, 4105]));
 /// assert_eq!(SAFETY.frame(&mut state, None), None); // four: let go
-/// assert_eq!(SAFETY.frame(&mut state, Some([5000, 5000])), None); // until it is asked for again
+/// assert_eq!(SAFETY.frame(&mut state, Some(&[5000, 5000])), None); // until it is asked for again
 /// ```
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 #[cfg_attr(feature = "defmt", derive(defmt::Format))]
@@ -47,12 +47,7 @@ pub struct FrameSafety<const SERVOS: usize> {
 /// What [`FrameSafety`] knows from one frame to the next. It is no `Copy`: see [the module](crate::frame).
 #[derive(Debug, PartialEq, Eq)]
 #[cfg_attr(feature = "defmt", derive(defmt::Format))]
-pub struct FrameState<const SERVOS: usize>(State<SERVOS>);
-
-/// Copied, changed and put back as a whole.
-#[derive(Debug, Clone, Copy, PartialEq, Eq)]
-#[cfg_attr(feature = "defmt", derive(defmt::Format))]
-struct State<const SERVOS: usize> {
+pub struct FrameState<const SERVOS: usize> {
     /// What was sent last, or is to be sent first.
     at: [u32; SERVOS],
     /// The last target.
@@ -74,7 +69,7 @@ impl<const SERVOS: usize> FrameSafety<SERVOS> {
             at[servo] = self.servos[servo].start();
             servo += 1;
         }
-        FrameState(State { at, wanted: at, watch: Watch::START })
+        FrameState { at, wanted: at, watch: Watch::START }
     }
 
     /// The same with first pulses that are only known while running, held within their ranges: those of a pose that was
@@ -84,33 +79,31 @@ impl<const SERVOS: usize> FrameSafety<SERVOS> {
         for (at, servo) in at.iter_mut().zip(&self.servos) {
             *at = servo.hold(*at);
         }
-        FrameState(State { at, wanted: at, watch: Watch::START })
+        FrameState { at, wanted: at, watch: Watch::START }
     }
 
     /// One frame: what to send to each servo, `None` for no pulse to any of them. `new` is what the servos are wanted at, if
     /// that is known anew in this frame; any number will do. Call it once a frame, and send what it gives.
     #[inline]
-    pub fn frame(&self, state: &mut FrameState<SERVOS>, new: Option<[u32; SERVOS]>) -> Option<[u32; SERVOS]> {
-        let before = state.0;
-        let watch = before.watch.next(&self.stale, new.is_some());
-        let wanted = new.unwrap_or(before.wanted);
-        let mut at = before.at;
+    pub fn frame<'state>(
+        &self,
+        state: &'state mut FrameState<SERVOS>,
+        new: Option<&[u32; SERVOS]>,
+    ) -> Option<&'state [u32; SERVOS]> {
+        // In place, for copies would cost more than the steps. Nothing of the caller's runs in here, and nothing panics, so
+        // that nobody ever sees half of it.
+        let watch = state.watch.next(&self.stale, new.is_some());
+        if let Some(new) = new {
+            state.wanted = *new;
+        }
         match watch.conduct() {
-            Conduct::Following => {
-                for ((at, wanted), servo) in at.iter_mut().zip(&wanted).zip(&self.servos) {
-                    *at = servo.step(*at, *wanted);
-                }
-            }
+            Conduct::Following => step(&self.servos, &mut state.at, &state.wanted),
             // Of no effect, unless a state of other bounds is brought here: what is sent is within these.
-            Conduct::First | Conduct::Holding => {
-                for (at, servo) in at.iter_mut().zip(&self.servos) {
-                    *at = servo.hold(*at);
-                }
-            }
+            Conduct::First | Conduct::Holding => hold(&self.servos, &mut state.at),
             Conduct::Unsent | Conduct::Released => {}
         }
-        state.0 = State { at, wanted, watch };
-        watch.conduct().has_pulses().then_some(at)
+        state.watch = watch;
+        watch.conduct().has_pulses().then_some(&state.at)
     }
 }
 
@@ -119,39 +112,53 @@ impl<const SERVOS: usize> FrameState<SERVOS> {
     /// ones that were sent, **at once and as fast as they can**; to where they are wanted they then go within their slews.
     /// Does nothing where pulses are allowed already. For a deliberate act of a person, not for a loop.
     pub const fn engage(&mut self) {
-        let before = self.0;
-        if !before.watch.is_engaged() {
+        if !self.watch.is_engaged() {
             // A target from before the release is forgotten.
-            self.0 = State { wanted: before.at, watch: before.watch.engaged(), ..before };
+            self.wanted = self.at;
+            self.watch = self.watch.engaged();
         }
     }
 
     /// Sends no pulses from the next frame on, until [`engage`](Self::engage); most servos then let go of their joints, and
     /// the legs may fall.
     pub const fn release(&mut self) {
-        let before = self.0;
-        self.0 = State { watch: before.watch.released(), ..before };
+        self.watch = self.watch.released();
     }
 
     /// What the last frame did.
     pub const fn conduct(&self) -> Conduct {
-        self.0.watch.conduct()
+        self.watch.conduct()
     }
 
     /// Whether pulses are allowed: after [`engage`](Self::engage), until [`release`](Self::release) or the stale rule.
     pub const fn is_engaged(&self) -> bool {
-        self.0.watch.is_engaged()
+        self.watch.is_engaged()
     }
 
     /// What was sent last, and would be sent first after a release; before the first pulses, the stated ones.
     pub const fn last(&self) -> [u32; SERVOS] {
-        self.0.at
+        self.at
     }
 
     /// How many servos are still on their way to where they are wanted; those whose target lies outside their range among
     /// them, for good.
     pub fn behind(&self) -> usize {
-        self.0.at.iter().zip(&self.0.wanted).filter(|(at, wanted)| at != wanted).count()
+        self.at.iter().zip(&self.wanted).filter(|(at, wanted)| at != wanted).count()
+    }
+}
+
+/// One step of every servo. Not part of its caller, where the number of servos is known and the loop would be unrolled.
+#[inline(never)]
+fn step(servos: &[ServoBounds], at: &mut [u32], wanted: &[u32]) {
+    for ((servo, at), wanted) in servos.iter().zip(at).zip(wanted) {
+        *at = servo.step(*at, *wanted);
+    }
+}
+
+#[inline(never)]
+fn hold(servos: &[ServoBounds], at: &mut [u32]) {
+    for (servo, at) in servos.iter().zip(at) {
+        *at = servo.hold(*at);
     }
 }
 

@@ -67,7 +67,7 @@ impl<const SERVOS: usize> Stage for Core<SERVOS> {
         let new = new.map(|new| new.try_into().expect("as many as servos"));
         match self.safety.frame(&mut self.state, new) {
             Some(counts) => {
-                sent.copy_from_slice(&counts);
+                sent.copy_from_slice(counts);
                 true
             }
             None => false,
