@@ -2,10 +2,12 @@
 
 mod commanded;
 mod output;
+mod safety;
 mod servo;
 
 pub use commanded::Commanded;
 pub use output::Counter;
+pub use safety::servo_bounds;
 
 use crate::numbers::Float64;
 use crate::reference::leg::{self as judged, Pose, Range, Ranges};

@@ -17,6 +17,7 @@ use ik_core::{
 };
 use ik_host_tests::frame_witness::{Stage, Tally, Witness, run};
 use ik_host_tests::numbers::Float64;
+use ik_host_tests::{machine, sheet};
 use std::panic::{AssertUnwindSafe, catch_unwind, resume_unwind};
 
 /// Ten million frames: of one servo, of a leg's three, of six legs' eighteen.
@@ -282,6 +283,38 @@ fn what_cannot_be_is_refused_and_says_what_would_be_right() {
     }
 }
 
+/// The sheets' slews and first pulses become bounds, with the trim of each leg; frames of random calls keep to them.
+#[test]
+fn the_demo_robots_servos_have_bounds_from_their_sheets() {
+    let mut seen = Vec::new();
+    for name in ["culvert-walker", "orchard-walker"] {
+        let robot = sheet::demo(name).unwrap_or_else(|error| panic!("{error}"));
+        for leg in 0..robot.legs.len() {
+            let bounds = machine::servo_bounds(&robot, leg).expect("bounds").map(|it| it.expect("a slew"));
+            let safety = FrameSafety::new(bounds, StaleRule::hold_then_release(5, 50).expect("a rule"));
+            let mut stage = Core::new(safety);
+            let promise = stage.promise();
+            assert!(run(&mut stage, &promise, 68 + leg as u64, 5_000).unwrap().moving > 500);
+            seen.push(bounds);
+        }
+    }
+    // The culvert walker's left front femur, 1050 us and a trim of 5 us, 80 us a frame, in counts of 4.88 us; and the orchard
+    // walker's left rear thigh, 1850 us and 2.5 us, 90 us a frame, in ticks of 0.3125 us.
+    assert_eq!(Ok(seen[0][1]), ServoBounds::in_counts([123, 491], 216, 16));
+    assert_eq!(Ok(seen[6 + 2][1]), ServoBounds::in_counts([2560, 7040], 5928, 288));
+    // A first pulse that its trim would move out of the safe pulses is held there; without a slew there are no bounds.
+    let text = sheet::DEMOS[0].text.replacen("start_us = 1500", "start_us = 602", 1);
+    let text = text.replacen("trim_us = { hip = -7", "trim_us = { hip = -9", 1).replacen(
+        "slew_us_per_frame = 80\n",
+        "\n",
+        1,
+    );
+    let robot = sheet::parse("sheet.toml", &text).unwrap_or_else(|complaints| panic!("{complaints}"));
+    let [hip, femur, knee] = machine::servo_bounds(&robot, 1).expect("bounds");
+    assert_eq!(hip.map(|it| it.start()), Some(123));
+    assert!(femur.is_none() && knee.is_some());
+}
+
 /// A frame that is not whole is no target.
 #[test]
 fn legs_that_are_not_as_many_as_the_servos_are_no_target() {
@@ -404,4 +437,48 @@ fn a_start_up_ramps_from_the_stated_pulse_to_the_target() {
     state.engage();
     assert_eq!(safety.frame(&mut state, Some(&[3200, 3200])), Some(&[4800, 4900]));
     assert_eq!(safety.frame(&mut state, Some(&[3200, 3200])), Some(&[4700, 4863]));
+}
+
+/// What the model images sent on the emulated chips, frame by frame, as their golden logs tell: counts of all servos, none
+/// for no pulses.
+fn sent_by(model: &str, frame_of: impl Fn(&str) -> Vec<u32>) -> Vec<Vec<u32>> {
+    let path =
+        format!("{}/../examples-embedded/run-on-emulator/golden/{model}.txt", env!("CARGO_MANIFEST_DIR"));
+    let log = std::fs::read_to_string(&path).expect(&path);
+    log.split("frame ").skip(1).map(frame_of).collect()
+}
+
+/// The logs of real runs, looked at without any of the code that made them.
+#[test]
+fn the_model_images_sent_nothing_that_they_should_not() {
+    let check = |model: &str, sent: Vec<Vec<u32>>, servos: usize, range: [u32; 2], slew: u32| {
+        let silent: Vec<bool> = sent.iter().map(|counts| counts.iter().all(|counts| *counts == 0)).collect();
+        assert!(silent[0] && silent[silent.len() - 1], "{model}: lets go first and last");
+        assert_eq!(silent.windows(2).filter(|pair| pair[0] != pair[1]).count(), 2, "{model}: pulses once");
+        let pulses: Vec<_> =
+            sent.iter().zip(&silent).filter(|(_, silent)| !*silent).map(|(sent, _)| sent).collect();
+        let mut longest = 0;
+        for pair in pulses.windows(2) {
+            assert_eq!(pair[1].len(), servos, "{model}");
+            for (before, now) in pair[0].iter().zip(pair[1]) {
+                longest = longest.max(now.abs_diff(*before));
+                assert!((range[0]..=range[1]).contains(now), "{model}: {now}");
+            }
+        }
+        assert!(longest <= slew && longest > slew / 4, "{model}: {longest} of {slew}");
+    };
+    // Bytes "38, 01, ..." after the register's, low ones first; 83 us of 4.88 us, 600 to 2400 us.
+    let expander = sent_by("six-legs-on-an-expander", |frame| {
+        let bytes = frame.rsplit('[').next().expect("a list").trim_end().trim_end_matches(']');
+        let bytes: Vec<u32> =
+            bytes.split(", ").map(|byte| u32::from_str_radix(byte, 16).expect("a byte")).collect();
+        bytes.chunks(2).map(|pair| pair[0] | pair[1] << 8).collect()
+    });
+    check("six-legs-on-an-expander", expander, 18, [123, 491], 17);
+    // Lines "ticks [4826, 5252, 4749]"; 95 us of 0.3125 us, 800 to 2200 us.
+    let timer = sent_by("four-legs-in-an-interrupt", |frame| {
+        let lists = frame.lines().filter_map(|line| line.strip_prefix("ticks [")?.strip_suffix(']'));
+        lists.flat_map(|list| list.split(", ").map(|ticks| ticks.parse::<u32>().expect("ticks"))).collect()
+    });
+    check("four-legs-in-an-interrupt", timer, 12, [2560, 7040], 304);
 }
