@@ -7,6 +7,8 @@
 //! held within the pulse range, which is what the servo's mechanics stand; or straight from point to point, for a servo
 //! that was measured ([`MeasuredServo`]). A pulse is the same type in every number system: microseconds in steps of
 //! 1/65536. Firmware that only wants counts of its timer goes there at once, by a [`Channel`](crate::Channel).
+//!
+#![doc = include_str!("../docs/trimming-a-servo.md")]
 
 mod curve;
 

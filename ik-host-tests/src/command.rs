@@ -13,6 +13,7 @@ mod robots;
 mod sheet;
 mod solve;
 mod survey;
+mod trim;
 
 use clap::{Parser, Subcommand};
 use ending::Ending;
@@ -46,6 +47,8 @@ enum Task {
     Solve(solve::Call),
     /// Count what a leg costs on emulated chips: instructions, estimated time, flash, stack
     Chips(chips::Call),
+    /// Fit a servo's centre and gain, or its points, to readings taken on the bench
+    Trim(trim::Call),
     /// Measure what each primitive of each number system is worth, against the bounds that are stated
     Bounds(bounds::Call),
     /// Print a demo robot's sheet, to start one's own from
@@ -66,6 +69,7 @@ pub fn run() -> ExitCode {
         Task::Survey(call) => call.run(),
         Task::Solve(call) => call.run(),
         Task::Chips(call) => call.run(),
+        Task::Trim(call) => call.run(),
         Task::Bounds(call) => call.run(),
         Task::Sheet(call) => call.run(),
     };

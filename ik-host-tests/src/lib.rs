@@ -11,6 +11,7 @@
 //! | [`frame_witness`] | watches any frame-safety stage, and says which promise it breaks |
 //! | [`chips`] | what a leg costs on emulated chips |
 //! | [`survey`] | the main job: error bounds over the work volume |
+//! | [`trim`] | a servo's lines of a sheet from readings on the bench |
 //! | [`solve`] | one target in every number system |
 //! | [`report`] | text, JSON and an HTML page of a survey |
 //! | [`command`] | the `toehold` program |
@@ -29,6 +30,7 @@ pub mod report;
 pub mod sheet;
 pub mod solve;
 pub mod survey;
+pub mod trim;
 
 /// The firmware in the README compiles and does what it says.
 #[cfg(doctest)]

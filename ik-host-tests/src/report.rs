@@ -7,12 +7,15 @@ mod page;
 mod picture;
 mod solved;
 mod text;
+mod trimmed;
 
 pub use bounds::bounds_text;
 pub use chips::chips_text;
 pub use number::millimetres;
+pub use picture::trim_drawing;
 pub use solved::solved_text;
 pub use text::text;
+pub use trimmed::trimmed_text;
 
 use crate::chips::Chips;
 use crate::survey::Survey;
@@ -91,6 +94,30 @@ pub fn write_chips(folder: &Path, stem: &str, chips: &Chips) -> Result<PathBuf, 
         Ok(()) => Ok(path),
         Err(cause) => Err(WriteError { path, cause }),
     }
+}
+
+/// Writes a file that must not be there yet.
+///
+/// # Errors
+/// If it is, or cannot be written.
+pub fn write_new(path: &Path, text: &str) -> Result<(), WriteError> {
+    let failed = |cause| WriteError { path: path.to_owned(), cause };
+    let mut file = fs::File::create_new(path).map_err(|cause| {
+        failed(match cause.kind() {
+            io::ErrorKind::AlreadyExists => io::Error::other("it is there already; name a file that is not"),
+            _ => cause,
+        })
+    })?;
+    file.write_all(text.as_bytes()).map_err(failed)
+}
+
+/// Replaces a file by a complete one, or not at all.
+///
+/// # Errors
+/// If it cannot be written.
+pub fn replace_file(path: &Path, text: &str) -> Result<(), WriteError> {
+    let folder = path.parent().filter(|folder| !folder.as_os_str().is_empty()).unwrap_or(Path::new("."));
+    replace(folder, path, text).map_err(|cause| WriteError { path: path.to_owned(), cause })
 }
 
 fn replace(folder: &Path, path: &Path, text: &str) -> io::Result<()> {

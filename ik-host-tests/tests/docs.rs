@@ -21,6 +21,11 @@ fn every_command_of_a_chapter_runs() {
     let chapters = Path::new(env!("CARGO_MANIFEST_DIR")).join("../ik-core/docs");
     // Commands may write reports where they are run.
     let elsewhere = tempfile::tempdir().expect("a folder for them");
+    // What chapters are about: the demo's readings, and a sheet as `toehold sheet` prints it.
+    let readings = Path::new(env!("CARGO_MANIFEST_DIR")).join("readings/culvert-femur.csv");
+    std::fs::copy(readings, elsewhere.path().join("femur.csv")).expect("readings");
+    let sheet = Path::new(env!("CARGO_MANIFEST_DIR")).join("robots/culvert-walker.toml");
+    std::fs::copy(sheet, elsewhere.path().join("robot.toml")).expect("a sheet");
     let mut ran = 0;
     for chapter in chapters.read_dir().expect("ik-core has chapters") {
         let path = chapter.expect("a chapter").path();

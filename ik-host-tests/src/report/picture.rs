@@ -19,7 +19,10 @@ mod pulses;
 mod side_view;
 mod slice;
 mod spread;
+mod trimmed;
 mod used_pulses;
+
+pub use trimmed::trim_drawing;
 
 pub(super) use palette::style as palette_style;
 pub(super) use used_pulses::UsedPulse;
