@@ -65,7 +65,7 @@ const fn nodes() -> [Node; NODES] {
 /// (2·arcsin s in 2^-32 turn, s·√(1 − s²) with [`RATIO_BITS`] fraction bits) for s with [`SINE_BITS`] fraction bits,
 /// s ≤ sin 45° and a hair.
 ///
-/// Within 4e-7 rad and 2.5e-7.
+/// Within 4e-7 rad and 2.5e-7: every sine there is, with TOEHOLD_LONG=1, the largest 3.480e-7 and 2.221e-7.
 #[inline(always)]
 pub(super) fn knee(sine: u32) -> (i32, i32) {
     if sine >= (NODES as u32) << WITHIN_BITS {
@@ -92,7 +92,7 @@ mod tests {
     fn knee_and_half_sine_keep_their_bounds() {
         let (mut worst_angle, mut worst_sine) = (0.0f64, 0.0f64);
         let end = (0.5f64.sqrt() * f64::from(1 << SINE_BITS)) as u32 + 8;
-        for sine in (0..=end).step_by(7) {
+        for sine in (0..=end).step_by(crate::number::sweep(7)) {
             let (angle, half_sine) = knee(sine);
             let s = f64::from(sine) / f64::from(1 << SINE_BITS);
             let angle = f64::from(angle) / 4_294_967_296.0 * core::f64::consts::TAU;
@@ -100,6 +100,7 @@ mod tests {
             let half_sine = f64::from(half_sine) / f64::from(1 << RATIO_BITS);
             worst_sine = worst_sine.max((half_sine - s * (1.0 - s * s).sqrt()).abs());
         }
+        std::println!("fixed32/knee: {worst_angle:e} {worst_sine:e}");
         assert!(worst_angle < 4e-7 && worst_angle > 2e-7, "{worst_angle:e}");
         assert!(worst_sine < 2.5e-7 && worst_sine > 1.25e-7, "{worst_sine:e}");
     }
