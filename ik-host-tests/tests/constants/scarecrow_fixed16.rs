@@ -27,7 +27,7 @@
 //!
 //! Before a machine moves: lift it off the ground, feed it from a current-limited supply, and keep a way to cut power within
 //! reach. Local rules and qualified practice come before anything written here.
-#![allow(dead_code)] // a firmware need not use everything
+#![allow(dead_code, unreachable_pub)] // a firmware need not use everything
 
 use fixed::types::I10F6;
 use ik_core::{Bend, Channel, Curve, Dimensions, Fixed16, Foot, Leg, Limb, Limits, MeasuredServo, Mounting, Parallelogram, RollHip, ServoBounds, ServoSpec, Side, Timer, Turns, YawHip};
