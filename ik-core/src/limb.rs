@@ -1,4 +1,6 @@
 //! A leg with its servos at its place on the body: a foot on the body's frame to three pulses, or to three counts.
+//!
+#![doc = include_str!("../docs/constants-from-a-sheet.md")]
 
 use crate::angle::Joints;
 use crate::channel::Counts;

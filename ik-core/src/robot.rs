@@ -46,6 +46,16 @@ impl<H: Hip, N: Number, const LEGS: usize, D: Drive<N>> Robot<H, N, LEGS, D> {
         Self { limbs: Vec::new() }
     }
 
+    /// A robot of these limbs, as [`add`](Robot::add) adds them.
+    pub fn of(limbs: [Limb<H, N, D>; LEGS]) -> Self {
+        let mut robot = Self::new();
+        for limb in limbs {
+            // There is room for as many.
+            let _ = robot.add(limb);
+        }
+        robot
+    }
+
     /// Adds a limb, whose pose is taken to be the zero pose until it is commanded.
     ///
     /// # Errors

@@ -8,6 +8,7 @@
 
 mod bounds;
 mod chips;
+mod constants;
 mod ending;
 mod robots;
 mod sheet;
@@ -51,6 +52,8 @@ enum Task {
     Trim(trim::Call),
     /// Measure what each primitive of each number system is worth, against the bounds that are stated
     Bounds(bounds::Call),
+    /// Write a sheet's legs as constants for firmware, after a survey
+    Constants(constants::Call),
     /// Print a demo robot's sheet, to start one's own from
     Sheet(sheet::Call),
 }
@@ -71,6 +74,7 @@ pub fn run() -> ExitCode {
         Task::Chips(call) => call.run(),
         Task::Trim(call) => call.run(),
         Task::Bounds(call) => call.run(),
+        Task::Constants(call) => call.run(),
         Task::Sheet(call) => call.run(),
     };
     if let Ending::WrongInput(message) | Ending::Failed(message) = &ending {

@@ -13,6 +13,7 @@
 //! | [`survey`] | the main job: error bounds over the work volume |
 //! | [`trim`] | a servo's lines of a sheet from readings on the bench |
 //! | [`solve`] | one target in every number system |
+//! | [`constants`] | a sheet's legs as constants for firmware |
 //! | [`report`] | text, JSON and an HTML page of a survey |
 //! | [`command`] | the `toehold` program |
 //!
@@ -21,6 +22,7 @@
 pub mod bounds;
 pub mod chips;
 pub mod command;
+pub mod constants;
 pub mod frame_witness;
 pub mod machine;
 pub mod minimax;

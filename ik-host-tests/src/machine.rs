@@ -1,11 +1,13 @@
 //! A robot of a sheet in a number system: the very code that will be flashed, behind one face.
 
 mod commanded;
+mod leg;
 mod output;
 mod safety;
 mod servo;
 
 pub use commanded::Commanded;
+pub use leg::{roll_leg, yaw_leg};
 pub use output::Counter;
 pub use safety::servo_bounds;
 
@@ -110,20 +112,9 @@ where
     KindInNumber<YawHip, N>: Machine,
 {
     let sheet = &robot.kinds[kind];
-    let refused = |what: &str, why: String| Refused { kind: sheet.name.clone(), what: what.into(), why };
-    let measures = |error: ik_core::GeometryError| refused("measures", error.to_string());
-    let (offset, thigh, shank) = (sheet.offset_mm, sheet.thigh_mm, sheet.shank_mm);
     Ok(match sheet.hip {
-        HipShape::Roll => Box::new(KindInNumber::<RollHip, N>::new(
-            robot,
-            kind,
-            Dimensions::roll_hip(offset, thigh, shank, bend(sheet.bend)).map_err(measures)?,
-        )?),
-        HipShape::Yaw => Box::new(KindInNumber::<YawHip, N>::new(
-            robot,
-            kind,
-            Dimensions::yaw_hip(offset, thigh, shank, bend(sheet.bend)).map_err(measures)?,
-        )?),
+        HipShape::Roll => Box::new(KindInNumber::<RollHip, N>::new(robot, kind, leg::roll_measures(sheet)?)?),
+        HipShape::Yaw => Box::new(KindInNumber::<YawHip, N>::new(robot, kind, leg::yaw_measures(sheet)?)?),
     })
 }
 

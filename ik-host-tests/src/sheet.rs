@@ -70,10 +70,22 @@ pub const LARGEST_SHEET_BYTES: u64 = 1 << 20;
 /// [`LARGEST_SHEET_BYTES`] or is not UTF-8 text; [`SheetErrors::Faulty`] with every complaint when it
 /// was read and is wrong.
 pub fn read(path: impl AsRef<Path>) -> Result<Robot, SheetErrors> {
+    read_with_text(path).map(|(robot, _)| robot)
+}
+
+/// Like [`read`], and with the very text that was read.
+///
+/// # Errors
+///
+/// As [`read`].
+pub fn read_with_text(path: impl AsRef<Path>) -> Result<(Robot, String), SheetErrors> {
     let path = path.as_ref();
     let shown = path.display().to_string();
     match text_of(path) {
-        Ok(text) => parse(&shown, &text).map_err(SheetErrors::Faulty),
+        Ok(text) => match parse(&shown, &text) {
+            Ok(robot) => Ok((robot, text)),
+            Err(complaints) => Err(SheetErrors::Faulty(complaints)),
+        },
         Err(cause) => Err(SheetErrors::Unreadable { path: shown, cause }),
     }
 }

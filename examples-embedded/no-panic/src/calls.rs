@@ -249,6 +249,7 @@ fn robot<H: Hip, N: Opaque, D: Drive<N>>(limb: Limb<H, N, D>) {
         use_up(robot.add(limb).is_ok());
     }
     use_up(robot.legs());
+    use_up(ik_core::robot::Robot::<H, N, 2, D>::of([limb; 2]).legs());
     let feet = [foot::<N>(); 8];
     use_up(robot.frame(feet.get(..word() as usize).unwrap_or(&[])));
 }

@@ -13,10 +13,11 @@ struct Model {
     chips: &'static [Chip],
 }
 
-const MODELS: [Model; 3] = [
+const MODELS: [Model; 4] = [
     Model { package: "one-leg-on-a-timer", chips: &[Chip::M0, Chip::Rv32imc] },
     Model { package: "six-legs-on-an-expander", chips: &[Chip::M3] },
     Model { package: "four-legs-in-an-interrupt", chips: &[Chip::M4f, Chip::M7] },
+    Model { package: "from-a-sheet", chips: &[Chip::M3] },
 ];
 
 /// Runs every model on those of its chips that are asked for; the models that failed.

@@ -41,6 +41,18 @@ impl Source {
         .map_err(|errors| Ending::WrongInput(errors.render(std::io::stderr().is_terminal())))
     }
 
+    /// The robot, and the very text that it was read from.
+    pub(super) fn robot_and_text(&self) -> Result<(Robot, String), Ending> {
+        match self {
+            Self::File(path) => sheet::read_with_text(path),
+            Self::Demo(name) => sheet::demo(name).map(|robot| {
+                let demo = DEMOS.iter().find(|demo| demo.name == *name);
+                (robot, demo.map_or_else(String::new, |demo| demo.text.to_owned()))
+            }),
+        }
+        .map_err(|errors| Ending::WrongInput(errors.render(std::io::stderr().is_terminal())))
+    }
+
     /// A name for files about it: letters, digits and hyphens.
     pub(super) fn stem(&self) -> String {
         let stem = match self {

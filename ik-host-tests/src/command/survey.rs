@@ -126,13 +126,13 @@ impl Call {
 }
 
 /// A word of a command line: in quotes if it has more than letters, digits and what paths are made of.
-fn quoted(word: &str) -> String {
+pub(super) fn quoted(word: &str) -> String {
     let plain = |c: char| c.is_alphanumeric() || "-_./\\:".contains(c);
     if word.chars().all(plain) { word.to_owned() } else { format!("\"{}\"", word.replace('"', "\\\"")) }
 }
 
 /// A progress bar on a terminal; nothing elsewhere.
-fn bar(what: &str, length: u64) -> ProgressBar {
+pub(super) fn bar(what: &str, length: u64) -> ProgressBar {
     let style =
         ProgressStyle::with_template("{msg} {wide_bar} {human_pos} of {human_len} targets, {eta} left")
             .expect("a constant template");

@@ -1,0 +1,35 @@
+//! The leg of a kind alone, with its joint ranges.
+
+use super::{KindInNumber, Refused, bend};
+use crate::sheet::{LegKind, Robot};
+use ik_core::{Dimensions, GeometryError, Leg, Number, RollHip, YawHip};
+
+/// The roll-hip leg of a kind in a number system.
+///
+/// # Errors
+/// What ik-core refuses, a yaw-hip kind included, and why.
+pub fn roll_leg<N: Number>(robot: &Robot, kind: usize) -> Result<Leg<RollHip, N>, Refused> {
+    Ok(KindInNumber::new(robot, kind, roll_measures(&robot.kinds[kind])?)?.leg)
+}
+
+/// The yaw-hip leg of a kind in a number system.
+///
+/// # Errors
+/// What ik-core refuses, a roll-hip kind included, and why.
+pub fn yaw_leg<N: Number>(robot: &Robot, kind: usize) -> Result<Leg<YawHip, N>, Refused> {
+    Ok(KindInNumber::new(robot, kind, yaw_measures(&robot.kinds[kind])?)?.leg)
+}
+
+pub(super) fn roll_measures(sheet: &LegKind) -> Result<Dimensions<RollHip>, Refused> {
+    Dimensions::roll_hip(sheet.offset_mm, sheet.thigh_mm, sheet.shank_mm, bend(sheet.bend))
+        .map_err(|error| refused(sheet, error))
+}
+
+pub(super) fn yaw_measures(sheet: &LegKind) -> Result<Dimensions<YawHip>, Refused> {
+    Dimensions::yaw_hip(sheet.offset_mm, sheet.thigh_mm, sheet.shank_mm, bend(sheet.bend))
+        .map_err(|error| refused(sheet, error))
+}
+
+fn refused(sheet: &LegKind, error: GeometryError) -> Refused {
+    Refused { kind: sheet.name.clone(), what: "measures".into(), why: error.to_string() }
+}
