@@ -9,6 +9,7 @@
 //! | [`reference`](mod@reference) | legs by other methods, sharing no code with ik-core: what judges |
 //! | [`bounds`] | what each primitive of each number system is worth, stated and measured |
 //! | [`frame_witness`] | watches any frame-safety stage, and says which promise it breaks |
+//! | [`certify`] | a bound on the foot's error that no target exceeds |
 //! | [`chips`] | what a leg costs on emulated chips |
 //! | [`survey`] | the main job: error bounds over the work volume |
 //! | [`trim`] | a servo's lines of a sheet from readings on the bench |
@@ -19,6 +20,7 @@
 //! Arrows run one way: command → report → survey → machine, reference → sheet; machine → ik-core.
 
 pub mod bounds;
+pub mod certify;
 pub mod chips;
 pub mod command;
 pub mod frame_witness;

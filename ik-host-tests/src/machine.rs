@@ -110,20 +110,11 @@ where
     KindInNumber<YawHip, N>: Machine,
 {
     let sheet = &robot.kinds[kind];
-    let refused = |what: &str, why: String| Refused { kind: sheet.name.clone(), what: what.into(), why };
-    let measures = |error: ik_core::GeometryError| refused("measures", error.to_string());
-    let (offset, thigh, shank) = (sheet.offset_mm, sheet.thigh_mm, sheet.shank_mm);
     Ok(match sheet.hip {
-        HipShape::Roll => Box::new(KindInNumber::<RollHip, N>::new(
-            robot,
-            kind,
-            Dimensions::roll_hip(offset, thigh, shank, bend(sheet.bend)).map_err(measures)?,
-        )?),
-        HipShape::Yaw => Box::new(KindInNumber::<YawHip, N>::new(
-            robot,
-            kind,
-            Dimensions::yaw_hip(offset, thigh, shank, bend(sheet.bend)).map_err(measures)?,
-        )?),
+        HipShape::Roll => {
+            Box::new(KindInNumber::<RollHip, N>::new(robot, kind, roll_dimensions(robot, kind)?)?)
+        }
+        HipShape::Yaw => Box::new(KindInNumber::<YawHip, N>::new(robot, kind, yaw_dimensions(robot, kind)?)?),
     })
 }
 
@@ -153,14 +144,7 @@ impl<H: Hip, N: Number> KindInNumber<H, N> {
         };
         let counter =
             Counter::of(&robot.output).map_err(|error| refused("output".into(), error.to_string()))?;
-        let curves = trims(robot, kind)
-            .map(|trims| {
-                let curve = |joint: usize| {
-                    servo::curve(&sheet.servos[joint], trims[joint]).map_err(|error| of_servo(joint, error))
-                };
-                Ok([curve(0)?, curve(1)?, curve(2)?])
-            })
-            .collect::<Result<Vec<_>, _>>()?;
+        let curves = curves(robot, kind)?;
         let drives = curves
             .iter()
             .map(|curves| {
@@ -175,13 +159,73 @@ impl<H: Hip, N: Number> KindInNumber<H, N> {
                 })
             })
             .collect::<Result<_, _>>()?;
-        let limits = limits(sheet, dimensions.bend(), &curves)
-            .map_err(|error| refused("range_deg".into(), error.to_string()))?;
         let bends_back = matches!(sheet.bend, Bend::Backward | Bend::Down);
-        let leg = Leg::from_dimensions(dimensions, limits)
-            .map_err(|error| refused("measures".into(), error.to_string()))?;
+        let leg = leg(robot, kind, dimensions)?;
         Ok(Self { leg, bends_back, drives, counter })
     }
+}
+
+/// The curves of the servos of every leg of a kind.
+fn curves(robot: &Robot, kind: usize) -> Result<Vec<[Curve; 3]>, Refused> {
+    let sheet = &robot.kinds[kind];
+    trims(robot, kind)
+        .map(|trims| {
+            let curve = |joint: usize| {
+                servo::curve(&sheet.servos[joint], trims[joint]).map_err(|error| Refused {
+                    kind: sheet.name.clone(),
+                    what: format!("servo.{}", sheet.joint_names()[joint]),
+                    why: error.to_string(),
+                })
+            };
+            Ok([curve(0)?, curve(1)?, curve(2)?])
+        })
+        .collect()
+}
+
+/// A kind of leg with a roll hip, in any number system.
+///
+/// # Errors
+/// What ik-core refuses.
+pub fn roll_leg<N: Number>(robot: &Robot, kind: usize) -> Result<Leg<RollHip, N>, Refused> {
+    leg(robot, kind, roll_dimensions(robot, kind)?)
+}
+
+/// A kind of leg with a yaw hip, in any number system.
+///
+/// # Errors
+/// What ik-core refuses.
+pub fn yaw_leg<N: Number>(robot: &Robot, kind: usize) -> Result<Leg<YawHip, N>, Refused> {
+    leg(robot, kind, yaw_dimensions(robot, kind)?)
+}
+
+fn roll_dimensions(robot: &Robot, kind: usize) -> Result<Dimensions<RollHip>, Refused> {
+    let sheet = &robot.kinds[kind];
+    Dimensions::roll_hip(sheet.offset_mm, sheet.thigh_mm, sheet.shank_mm, bend(sheet.bend))
+        .map_err(|error| measures(sheet, error))
+}
+
+fn yaw_dimensions(robot: &Robot, kind: usize) -> Result<Dimensions<YawHip>, Refused> {
+    let sheet = &robot.kinds[kind];
+    Dimensions::yaw_hip(sheet.offset_mm, sheet.thigh_mm, sheet.shank_mm, bend(sheet.bend))
+        .map_err(|error| measures(sheet, error))
+}
+
+fn measures(sheet: &LegKind, error: ik_core::GeometryError) -> Refused {
+    Refused { kind: sheet.name.clone(), what: "measures".into(), why: error.to_string() }
+}
+
+fn leg<H: Hip, N: Number>(
+    robot: &Robot,
+    kind: usize,
+    dimensions: Dimensions<H>,
+) -> Result<Leg<H, N>, Refused> {
+    let sheet = &robot.kinds[kind];
+    let limits = limits(sheet, dimensions.bend(), &curves(robot, kind)?).map_err(|error| Refused {
+        kind: sheet.name.clone(),
+        what: "range_deg".into(),
+        why: error.to_string(),
+    })?;
+    Leg::from_dimensions(dimensions, limits).map_err(|error| measures(sheet, error))
 }
 
 /// The joint ranges that suit the servos of every leg of the kind.
@@ -229,7 +273,7 @@ where
 }
 
 /// The trims of the legs of a kind, in the order of the sheet.
-fn trims(robot: &Robot, kind: usize) -> impl Iterator<Item = [f64; 3]> + '_ {
+pub(crate) fn trims(robot: &Robot, kind: usize) -> impl Iterator<Item = [f64; 3]> + '_ {
     legs_of(robot, kind).map(|leg| robot.legs[leg].trim_us)
 }
 
