@@ -5,14 +5,13 @@
 //! the assumptions, and what is not covered.
 
 pub mod bounded;
+pub mod carried;
 mod decisions;
 pub mod interval;
 mod leg;
 mod pulse;
 mod quantities;
 mod search;
-mod carried;
-pub mod tables;
 
 use crate::machine::Refused;
 use crate::sheet::Robot;

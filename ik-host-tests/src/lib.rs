@@ -5,6 +5,7 @@
 //! | [`sheet`] | the robot sheet: read, checked, every complaint at once |
 //! | [`numbers`] | number systems of the PC's own: the same solver in `f64` |
 //! | [`machine`] | a robot of a sheet, in a number system: the very code that will be flashed |
+//! | [`promises`] | what each primitive promises of what it was handed: what `certify` is built on |
 //! | [`minimax`] | the coefficients of ik-core's polynomials, made and compared |
 //! | [`reference`](mod@reference) | legs by other methods, sharing no code with ik-core: what judges |
 //! | [`bounds`] | what each primitive of each number system is worth, stated and measured |
@@ -27,6 +28,7 @@ pub mod frame_witness;
 pub mod machine;
 pub mod minimax;
 pub mod numbers;
+pub mod promises;
 pub mod reference;
 pub mod report;
 pub mod sheet;

@@ -3,11 +3,11 @@
 //! Each primitive takes enclosures and errors of its operands and gives those of its result: the exact function over the
 //! enclosures; what the operands' errors make of it; and what its table says that the primitive adds.
 
+use super::carried::Table;
 use super::decisions::{Misjudged, decide, note};
 use super::interval::Interval;
 use super::quantities::{Angle, Coord, Length, Product, Ratio, Sort, Square};
-use super::carried::Table;
-use super::tables::Turning;
+use crate::promises::Turning;
 use ik_core::Number;
 use ik_core::number::{Knee, Placed};
 use std::f64::consts::{FRAC_PI_2, FRAC_PI_4, PI, TAU};

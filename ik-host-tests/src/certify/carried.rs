@@ -1,6 +1,6 @@
 //! Which table of bounds a number system carries.
 
-use super::tables::{self, Bounds};
+use crate::promises::{self, Bounds};
 
 /// A table of bounds.
 pub trait Table: Copy + std::fmt::Debug + PartialEq + Send + Sync + 'static {
@@ -15,7 +15,7 @@ macro_rules! tables {
         pub struct $name;
 
         impl Table for $name {
-            const BOUNDS: &'static Bounds = &tables::$bounds;
+            const BOUNDS: &'static Bounds = &promises::$bounds;
         }
     )*};
 }

@@ -1,13 +1,13 @@
 //! A box of targets for a leg: what the solver answers to all of them, and how far off the foot may be.
 
 use super::bounded::{Bounded, root_error};
+use super::carried::{self, Table};
 use super::decisions::{Misjudged, every_way};
 use super::interval::Interval;
 use super::pulse::Pulses;
 use super::quantities::{Angle, Length};
-use super::carried::{self, Table};
-use super::tables;
 use crate::machine::{self, Counter, Refused};
+use crate::promises;
 use crate::reference::{Bend, Leg as Judged, Shape};
 use crate::sheet::{HipShape, KneeDrive, LegKind, Robot};
 use ik_core::{Answer, Foot, Hip, Joints, Leg, Outcome, RollHip, YawHip};
@@ -37,7 +37,7 @@ impl Subject {
     /// # Errors
     /// What ik-core refuses.
     pub fn of(robot: &Robot, kind: usize, number: &str) -> Result<Result<Self, String>, Refused> {
-        let Some(bounds) = tables::ALL.iter().find(|bounds| bounds.number == number) else {
+        let Some(bounds) = promises::ALL.iter().find(|bounds| bounds.number == number) else {
             return Ok(Err("it has no table of bounds".into()));
         };
         let sheet = &robot.kinds[kind];

@@ -1,7 +1,7 @@
 //! What rounding pulses to whole counts makes of joint angles.
 
-use super::tables::Bounds;
 use crate::machine::{Counter, trims};
+use crate::promises::Bounds;
 use crate::sheet::{KneeDrive, LegKind, Robot, Servo, ServoCurve};
 use ik_core::output::Output as _;
 use std::f64::consts::PI;

@@ -4,9 +4,9 @@
 //! one target is from its exact one. Two independent enclosures would forget that the two belong together, and a certificate
 //! from them would never be narrower than its boxes.
 
+use super::carried::Table;
 use super::decisions::{decide, note};
 use super::interval::Interval;
-use super::carried::Table;
 use std::f64::consts::PI;
 use std::marker::PhantomData;
 use std::ops::{Add, Neg, Sub};

@@ -2,7 +2,7 @@
 //! else about the number systems.
 //!
 //! A primitive's bound is on the difference between what it computes and what the exact function gives **of the very
-//! values that it was handed**; what was wrong with those already is carried along by [`bounded`](super::bounded). The
+//! values that it was handed**; what was wrong with those already is carried along by [`certify`](crate::certify). The
 //! values are of feet within the leg's radius (offset, thigh and shank together), in mm once multiplied by
 //! [`unit_mm`](Bounds::unit_mm) of the leg.
 //!
