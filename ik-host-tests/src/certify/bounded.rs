@@ -240,6 +240,13 @@ impl<T: Table> Number for Bounded<T> {
     fn angle_from_turns(turns: f64) -> Angle<T> {
         Angle::constant(turns * TAU, T::BOUNDS.angle.relative * (turns * TAU).abs() + T::BOUNDS.angle.rad)
     }
+    /// As the number system itself rounds them.
+    fn range_from_turns(range: [f64; 2]) -> [Angle<T>; 2] {
+        let rounded = T::System::range_from_turns(range).map(|angle| T::System::turns(angle));
+        let limit =
+            |exact: f64, rounded: f64| Angle::constant(exact * TAU, ((rounded - exact) * TAU).abs() + 1e-15);
+        [limit(range[0], rounded[0]), limit(range[1], rounded[1])]
+    }
     fn gain_from(_: f64) {}
     fn swing_from(_: f64) {}
     fn line_from(_: f64, _: f64) {}
