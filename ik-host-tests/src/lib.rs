@@ -5,10 +5,12 @@
 //! | [`sheet`] | the robot sheet: read, checked, every complaint at once |
 //! | [`numbers`] | number systems of the PC's own: the same solver in `f64` |
 //! | [`machine`] | a robot of a sheet, in a number system: the very code that will be flashed |
+//! | [`promises`] | what each primitive promises of what it was handed: what `certify` is built on |
 //! | [`minimax`] | the coefficients of ik-core's polynomials, made and compared |
 //! | [`reference`](mod@reference) | legs by other methods, sharing no code with ik-core: what judges |
 //! | [`bounds`] | what each primitive of each number system is worth, stated and measured |
 //! | [`frame_witness`] | watches any frame-safety stage, and says which promise it breaks |
+//! | [`certify`] | a bound on the foot's error that no target exceeds |
 //! | [`chips`] | what a leg costs on emulated chips |
 //! | [`survey`] | the main job: error bounds over the work volume |
 //! | [`trim`] | a servo's lines of a sheet from readings on the bench |
@@ -20,6 +22,7 @@
 //! Arrows run one way: command → report → survey → machine, reference → sheet; machine → ik-core.
 
 pub mod bounds;
+pub mod certify;
 pub mod chips;
 pub mod command;
 pub mod constants;
@@ -27,6 +30,7 @@ pub mod frame_witness;
 pub mod machine;
 pub mod minimax;
 pub mod numbers;
+pub mod promises;
 pub mod reference;
 pub mod report;
 pub mod sheet;

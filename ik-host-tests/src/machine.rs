@@ -144,14 +144,7 @@ impl<H: Hip, N: Number> KindInNumber<H, N> {
         };
         let counter =
             Counter::of(&robot.output).map_err(|error| refused("output".into(), error.to_string()))?;
-        let curves = trims(robot, kind)
-            .map(|trims| {
-                let curve = |joint: usize| {
-                    servo::curve(&sheet.servos[joint], trims[joint]).map_err(|error| of_servo(joint, error))
-                };
-                Ok([curve(0)?, curve(1)?, curve(2)?])
-            })
-            .collect::<Result<Vec<_>, _>>()?;
+        let curves = curves(robot, kind)?;
         let drives = curves
             .iter()
             .map(|curves| {
@@ -166,13 +159,27 @@ impl<H: Hip, N: Number> KindInNumber<H, N> {
                 })
             })
             .collect::<Result<_, _>>()?;
-        let limits = limits(sheet, dimensions.bend(), &curves)
-            .map_err(|error| refused("range_deg".into(), error.to_string()))?;
         let bends_back = matches!(sheet.bend, Bend::Backward | Bend::Down);
-        let leg = Leg::from_dimensions(dimensions, limits)
-            .map_err(|error| refused("measures".into(), error.to_string()))?;
+        let leg = leg::limited(robot, kind, dimensions)?;
         Ok(Self { leg, bends_back, drives, counter })
     }
+}
+
+/// The curves of the servos of every leg of a kind.
+fn curves(robot: &Robot, kind: usize) -> Result<Vec<[Curve; 3]>, Refused> {
+    let sheet = &robot.kinds[kind];
+    trims(robot, kind)
+        .map(|trims| {
+            let curve = |joint: usize| {
+                servo::curve(&sheet.servos[joint], trims[joint]).map_err(|error| Refused {
+                    kind: sheet.name.clone(),
+                    what: format!("servo.{}", sheet.joint_names()[joint]),
+                    why: error.to_string(),
+                })
+            };
+            Ok([curve(0)?, curve(1)?, curve(2)?])
+        })
+        .collect()
 }
 
 /// The joint ranges that suit the servos of every leg of the kind.
@@ -220,7 +227,7 @@ where
 }
 
 /// The trims of the legs of a kind, in the order of the sheet.
-fn trims(robot: &Robot, kind: usize) -> impl Iterator<Item = [f64; 3]> + '_ {
+pub(crate) fn trims(robot: &Robot, kind: usize) -> impl Iterator<Item = [f64; 3]> + '_ {
     legs_of(robot, kind).map(|leg| robot.legs[leg].trim_us)
 }
 

@@ -12,8 +12,9 @@
 //! reference's answer within reach and ranges would put it: what clamping itself costs is reported apart.
 //! A target whose pulse is held by its servo's range counts as held, and not among the pulse errors.
 //!
-//! Sampling says "none worse was found", not "there is none worse".
+//! Sampling says "none worse was found", not "there is none worse"; [`Survey::certify`] says the latter.
 
+mod certified;
 mod edges;
 mod findings;
 mod measure;
@@ -59,6 +60,8 @@ pub enum SurveyError {
     Refused(Refused),
     /// The references disagree among themselves: nothing may be judged by them.
     Disagreement(Box<Disagreement>),
+    /// A target exceeds what is certified: one of the two is wrong, and neither may be believed.
+    Exceeded(String),
 }
 
 impl fmt::Display for SurveyError {
@@ -66,6 +69,7 @@ impl fmt::Display for SurveyError {
         match self {
             Self::Refused(refused) => refused.fmt(f),
             Self::Disagreement(disagreement) => disagreement.fmt(f),
+            Self::Exceeded(what) => f.write_str(what),
         }
     }
 }

@@ -2,14 +2,16 @@
 
 use super::ending::{Ending, print};
 use super::robots::{self, Source};
+use crate::certify::Effort;
 use crate::chips::Chips;
 use crate::report;
 use crate::sheet::Robot;
-use crate::survey::{Plan, Survey, Verdict, survey};
+use crate::survey::{Plan, Survey, SurveyError, Verdict, survey};
 use indicatif::{ProgressBar, ProgressStyle};
 use serde::Serialize;
 use std::io::Write as _;
 use std::path::PathBuf;
+use std::time::Duration;
 
 /// Surveys the work volume of a robot's legs in every number system: arithmetic error, pulse error, both.
 #[derive(Debug, clap::Args)]
@@ -24,6 +26,14 @@ pub(super) struct Call {
     /// Seed of the random targets
     #[arg(long, value_name = "NUMBER", default_value_t = Plan::default().seed)]
     seed: u64,
+    /// Certify, too: bounds on the foot's error that no target of the work volume exceeds, by which the sheet's allowances are
+    /// then judged
+    #[arg(long)]
+    certify: bool,
+    /// How long to narrow what is certified of a robot, at the most
+    #[arg(long, value_name = "SECONDS", default_value_t = 50, requires = "certify",
+          value_parser = clap::value_parser!(u64).range(1..=86_400))]
+    certify_seconds: u64,
     /// Folder for the reports, one .json and one .html per robot
     #[arg(long, value_name = "FOLDER", default_value = "toehold-survey")]
     report: PathBuf,
@@ -75,20 +85,33 @@ impl Call {
     fn one(&self, source: &Source, robot: &Robot) -> Result<Survey, Ending> {
         let plan = Plan { targets: self.targets, seed: self.seed };
         let progress = bar(&source.stem(), self.targets * robot.kinds.len() as u64);
-        let survey = survey(robot, plan, &progress);
+        let survey = survey(robot, plan, &progress).and_then(|mut survey| {
+            if self.certify {
+                progress.set_message(format!("{}: certifying", source.stem()));
+                survey.certify(Effort {
+                    time: Duration::from_secs(self.certify_seconds),
+                    ..Effort::default()
+                })?;
+            }
+            Ok(survey)
+        });
         progress.finish_and_clear();
-        survey.map_err(|error| Ending::WrongInput(format!("{}: {error}", source.shown())))
+        survey.map_err(|error| match error {
+            SurveyError::Exceeded(_) => Ending::Failed(format!("{}: {error}", source.shown())),
+            _ => Ending::WrongInput(format!("{}: {error}", source.shown())),
+        })
     }
 
     fn write(&self, source: &Source, survey: &Survey, chips: Option<&Chips>) -> Result<(), Ending> {
         let repeat = format!(
-            "toehold survey{} --targets {} --seed {}",
+            "toehold survey{} --targets {} --seed {}{}",
             match source {
                 Source::File(path) => format!(" {}", quoted(&path.display().to_string())),
                 Source::Demo(_) => String::new(),
             },
             self.targets,
-            self.seed
+            self.seed,
+            if self.certify { " --certify" } else { "" }
         );
         let paths = report::write(&self.report, &source.stem(), survey, chips, &repeat)
             .map_err(|error| Ending::Failed(format!("toehold: {error}")))?;

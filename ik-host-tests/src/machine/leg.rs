@@ -1,15 +1,15 @@
 //! The leg of a kind alone, with its joint ranges.
 
-use super::{KindInNumber, Refused, bend};
+use super::{Refused, bend, curves, limits};
 use crate::sheet::{LegKind, Robot};
-use ik_core::{Dimensions, GeometryError, Leg, Number, RollHip, YawHip};
+use ik_core::{Dimensions, GeometryError, Hip, Leg, Number, RollHip, YawHip};
 
 /// The roll-hip leg of a kind in a number system.
 ///
 /// # Errors
 /// What ik-core refuses, a yaw-hip kind included, and why.
 pub fn roll_leg<N: Number>(robot: &Robot, kind: usize) -> Result<Leg<RollHip, N>, Refused> {
-    Ok(KindInNumber::new(robot, kind, roll_measures(&robot.kinds[kind])?)?.leg)
+    limited(robot, kind, roll_measures(&robot.kinds[kind])?)
 }
 
 /// The yaw-hip leg of a kind in a number system.
@@ -17,7 +17,22 @@ pub fn roll_leg<N: Number>(robot: &Robot, kind: usize) -> Result<Leg<RollHip, N>
 /// # Errors
 /// What ik-core refuses, a roll-hip kind included, and why.
 pub fn yaw_leg<N: Number>(robot: &Robot, kind: usize) -> Result<Leg<YawHip, N>, Refused> {
-    Ok(KindInNumber::new(robot, kind, yaw_measures(&robot.kinds[kind])?)?.leg)
+    limited(robot, kind, yaw_measures(&robot.kinds[kind])?)
+}
+
+/// Without its servos, but with the joint ranges that suit them.
+pub(super) fn limited<H: Hip, N: Number>(
+    robot: &Robot,
+    kind: usize,
+    dimensions: Dimensions<H>,
+) -> Result<Leg<H, N>, Refused> {
+    let sheet = &robot.kinds[kind];
+    let limits = limits(sheet, dimensions.bend(), &curves(robot, kind)?).map_err(|error| Refused {
+        kind: sheet.name.clone(),
+        what: "range_deg".into(),
+        why: error.to_string(),
+    })?;
+    Leg::from_dimensions(dimensions, limits).map_err(|error| refused(sheet, error))
 }
 
 pub(super) fn roll_measures(sheet: &LegKind) -> Result<Dimensions<RollHip>, Refused> {

@@ -1,6 +1,7 @@
 //! A survey as text.
 
 use super::number::{count, foot, millimetres, significant};
+use crate::certify::{Certificate, Certified, Ended, NOT_COVERED, Proved};
 use crate::survey::{KindFindings, NumberFindings, Survey, Verdict};
 use comfy_table::presets::UTF8_HORIZONTAL_ONLY;
 use comfy_table::{CellAlignment, ContentArrangement, Table};
@@ -45,6 +46,9 @@ fn of_kind(survey: &Survey, kind: &KindFindings) -> String {
         survey.seed
     );
     let _ = writeln!(out, "{}", errors(kind));
+    if kind.numbers.iter().any(|number| number.certified.is_some()) {
+        out.push_str(&certified(kind));
+    }
     for number in kind.numbers.iter().filter(|number| number.firmware) {
         out.push_str(&places(kind, number));
     }
@@ -95,6 +99,48 @@ fn errors(kind: &KindFindings) -> Table {
         column.set_cell_alignment(CellAlignment::Right);
     }
     table
+}
+
+/// What no target of the work volume exceeds, mm, and how many times the largest found that is.
+fn certified(kind: &KindFindings) -> String {
+    let mut table = plain_table();
+    table.set_header([
+        "certified, mm: no target\nof the work volume exceeds",
+        "arithmetic\n",
+        "\ntimes found",
+        "together\n",
+        "\ntimes found",
+        "boxes\n",
+    ]);
+    let mut remarks = String::new();
+    for number in &kind.numbers {
+        match &number.certified {
+            Some(Certified::Bound(Certificate { arithmetic, together })) => {
+                let times = |proved: &Proved, found: f64| significant(proved.mm / found);
+                table.add_row([
+                    number.number.to_owned(),
+                    millimetres(arithmetic.mm),
+                    times(arithmetic, number.arithmetic.largest.mm),
+                    millimetres(together.mm),
+                    times(together, number.together.largest.mm),
+                    count(arithmetic.boxes + together.boxes),
+                ]);
+                for (what, proved) in [("arithmetic", arithmetic), ("together", together)] {
+                    if proved.ended != Ended::Narrow {
+                        let _ = writeln!(remarks, "  {}, {what}: {}", number.number, proved.ended.words());
+                    }
+                }
+            }
+            Some(Certified::Nothing { why }) => {
+                let _ = writeln!(remarks, "  {} is not certified: {why}", number.number);
+            }
+            None => {}
+        }
+    }
+    for column in table.column_iter_mut().skip(1) {
+        column.set_cell_alignment(CellAlignment::Right);
+    }
+    format!("{table}\n{remarks}  not covered: {NOT_COVERED}\n")
 }
 
 /// What of a number system is beyond, if anything; in brackets if the firmware does not use it.

@@ -3,6 +3,7 @@
 use super::measure::Judge;
 use super::tally::{Spread, Tally};
 use super::{Plan, Targets};
+use crate::certify::Certified;
 use crate::machine::{self, Counter, Machine};
 use crate::reference::Agreement;
 use crate::sheet::{Allowed, Robot};
@@ -124,7 +125,10 @@ pub struct NumberFindings {
     pub together: Errors,
     /// The largest joint error over the reached targets.
     pub joint: Option<JointError>,
-    /// Whether arithmetic is within what the sheet allows.
+    /// What no target of the work volume exceeds, if it was asked for.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub certified: Option<Certified>,
+    /// Whether arithmetic is within what the sheet allows: by what is certified if something is, else by the largest found.
     pub arithmetic_verdict: Verdict,
     /// Whether it is with the pulse.
     pub together_verdict: Verdict,
@@ -201,11 +205,7 @@ const SHARES: [f64; 15] = [0.0, 0.01, 0.05, 0.1, 0.2, 0.3, 0.4, 0.5, 0.6, 0.7, 0
 impl Survey {
     pub(super) fn of(robot: &Robot, plan: Plan, kinds: Vec<KindFindings>) -> Self {
         let counter = Counter::of(&robot.output).expect("the judge was made with it");
-        let within = kinds
-            .iter()
-            .flat_map(|kind| &kind.numbers)
-            .filter(|number| number.firmware)
-            .all(NumberFindings::within);
+        let verdict = verdict(&kinds);
         Self {
             toehold: env!("CARGO_PKG_VERSION"),
             robot: robot.clone(),
@@ -218,9 +218,15 @@ impl Survey {
                 frame_us: counter.frame_us(),
             },
             kinds,
-            verdict: Verdict::from_within(within),
+            verdict,
         }
     }
+}
+
+/// Whether every number system that the firmware uses is within what the sheet allows.
+pub(super) fn verdict(kinds: &[KindFindings]) -> Verdict {
+    let mut judged = kinds.iter().flat_map(|kind| &kind.numbers).filter(|number| number.firmware);
+    Verdict::from_within(judged.all(NumberFindings::within))
 }
 
 impl KindFindings {
@@ -284,6 +290,7 @@ impl NumberFindings {
                 joint: joints[largest.at.0],
                 foot_mm: largest.at.1,
             }),
+            certified: None,
             arithmetic_verdict: Verdict::from_within(arithmetic.largest.mm <= allowed.arithmetic_mm),
             together_verdict: Verdict::from_within(together.largest.mm <= allowed.with_pulse_mm),
             unreached_verdict: Verdict::from_within(outcomes.unreached_percent <= allowed.unreached_percent),
