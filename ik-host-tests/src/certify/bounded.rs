@@ -242,7 +242,7 @@ impl<T: Table> Number for Bounded<T> {
     }
     /// As the number system itself rounds them.
     fn range_from_turns(range: [f64; 2]) -> [Angle<T>; 2] {
-        let rounded = T::System::range_from_turns(range).map(|angle| T::System::turns(angle));
+        let rounded = T::System::range_from_turns(range).map(T::System::turns);
         let limit =
             |exact: f64, rounded: f64| Angle::constant(exact * TAU, ((rounded - exact) * TAU).abs() + 1e-15);
         [limit(range[0], rounded[0]), limit(range[1], rounded[1])]

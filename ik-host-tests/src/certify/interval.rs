@@ -1,7 +1,7 @@
 //! Intervals of f64 with outward rounding: whatever the ends of the operands stand for, the result holds it.
 //!
 //! Basic operations and roots are rounded to nearest by the processor, so that the next number outward holds the exact one.
-//! Sines and arctangents of the standard library are not promised to be; they are widened by [`FUNCTION`], and tested
+//! Sines and arctangents of the standard library are not promised to be; they are widened by `FUNCTION`, and tested
 //! against the multiprecision reference.
 
 use std::f64::consts::{FRAC_PI_2, PI, TAU};
