@@ -225,6 +225,24 @@ fn a_sheet_within_its_allowance_does_not_say_beyond() {
 }
 
 #[test]
+fn what_is_certified_is_told_and_judged() {
+    let call = ["constants", "orchard-walker", "--rust", "--targets", "2000"];
+    let found = text(&toehold(&call).stdout);
+    let certified = text(&toehold(&[&call[..], &["--certify"]].concat()).stdout);
+    assert!(
+        !found.contains("ertified") && certified.contains("--seed 1 --certify\n"),
+        "{found}\n{certified}"
+    );
+    // | kind | what | found | certified | allowed | verdict |
+    let row = certified.lines().find(|line| line.contains("| arithmetic |")).unwrap();
+    let mm = |cell: usize| -> f64 {
+        row.split('|').nth(cell).unwrap().trim().strip_suffix(" mm").unwrap().parse().unwrap()
+    };
+    assert!(mm(3) < mm(4) && mm(4) < mm(5), "{row}");
+    assert!(row.ends_with("| within |"), "{row}");
+}
+
+#[test]
 fn wrong_calls_and_impossible_constants_say_what_is_wrong() {
     let folder = tempfile::tempdir().unwrap();
     let sheet = fs::read_to_string(format!("{TESTS}/scarecrow.toml")).unwrap();

@@ -3,6 +3,7 @@
 use super::ending::{Ending, print};
 use super::robots::{self, Source};
 use super::survey::{bar, quoted};
+use crate::certify::{Certified, Effort};
 use crate::constants::{self, Origin, sha256};
 use crate::report;
 use crate::sheet::{NumberSystem, Robot};
@@ -37,6 +38,9 @@ pub(super) struct Call {
     /// Seed of the survey's random targets
     #[arg(long, value_name = "NUMBER", default_value_t = Plan::default().seed)]
     seed: u64,
+    /// Certify bounds as well, which are then judged and go into the header
+    #[arg(long)]
+    certify: bool,
 }
 
 const NOTE: &str = "\
@@ -95,7 +99,14 @@ impl Call {
 
     fn survey(&self, source: &Source, robot: &Robot) -> Result<Survey, Ending> {
         let progress = bar(&source.stem(), self.targets * robot.kinds.len() as u64);
-        let survey = survey(robot, Plan { targets: self.targets, seed: self.seed }, &progress);
+        let plan = Plan { targets: self.targets, seed: self.seed };
+        let survey = survey(robot, plan, &progress).and_then(|mut survey| {
+            if self.certify {
+                progress.set_message(format!("{}: certifying", source.stem()));
+                survey.certify(Effort::default())?;
+            }
+            Ok(survey)
+        });
         progress.finish_and_clear();
         survey.map_err(|error| Ending::WrongInput(format!("{}: {error}", source.shown())))
     }
@@ -106,9 +117,10 @@ impl Call {
             Source::File(path) => quoted(&path.display().to_string()),
             Source::Demo(name) => (*name).to_owned(),
         };
+        let certify = if self.certify { " --certify" } else { "" };
         let although = if self.although_beyond { " --although-beyond" } else { "" };
         format!(
-            "toehold constants {sheet} --rust --number {} --targets {} --seed {}{although}",
+            "toehold constants {sheet} --rust --number {} --targets {} --seed {}{certify}{although}",
             number.name(),
             self.targets,
             self.seed
@@ -127,8 +139,12 @@ fn beyond(survey: &Survey, number: NumberSystem) -> String {
                     words.push(format!("{:?}: {what} {found} {unit} of {allowed} {unit}", kind.kind));
                 }
             };
+            // What was judged: what is certified, if something is.
             let mm = report::millimetres;
-            let (arithmetic, together) = (found.arithmetic.largest.mm, found.together.largest.mm);
+            let (arithmetic, together) = match found.certified.as_ref().and_then(Certified::bound) {
+                Some(bound) => (bound.arithmetic.mm, bound.together.mm),
+                None => (found.arithmetic.largest.mm, found.together.largest.mm),
+            };
             add(found.arithmetic_verdict, "arithmetic", mm(arithmetic), allowed.arithmetic_mm, "mm");
             add(found.together_verdict, "with the pulse", mm(together), allowed.with_pulse_mm, "mm");
             let unreached = format!("{:.2}", found.outcomes.unreached_percent);

@@ -2,6 +2,7 @@
 
 use super::names::{Names, one_line};
 use super::{Origin, lengths};
+use crate::certify::{Certificate, Certified, NOT_COVERED};
 use crate::machine::{self, Counter, Refused, legs_of};
 use crate::report::millimetres;
 use crate::sheet::{
@@ -24,6 +25,8 @@ pub(super) struct View {
     targets: u64,
     seed: u64,
     found: Vec<Found>,
+    certified: bool,
+    not_covered: &'static str,
     beyond: bool,
     imports: String,
     output_type: &'static str,
@@ -38,6 +41,8 @@ struct Found {
     kind: String,
     what: &'static str,
     found: String,
+    /// None unless the survey certified.
+    certified: Option<String>,
     allowed: String,
     verdict: &'static str,
 }
@@ -104,6 +109,8 @@ pub(super) fn of(
         targets: survey.targets,
         seed: survey.seed,
         found: survey.kinds.iter().flat_map(|kind| found(robot, number, kind)).collect(),
+        certified: survey.kinds.iter().flat_map(|kind| &kind.numbers).any(|found| found.certified.is_some()),
+        not_covered: NOT_COVERED,
         beyond: survey.verdict == Verdict::Beyond,
         imports: imports(robot, number_type, output_type, &kinds),
         output_type,
@@ -154,10 +161,15 @@ fn found(robot: &Robot, number: NumberSystem, kind: &KindFindings) -> Vec<Found>
         .iter()
         .filter(|found| found.number == number.name())
         .flat_map(|found| {
-            let row = |what, found, allowed, verdict: Verdict| Found {
+            let bound = found.certified.as_ref().map(Certified::bound);
+            let certified = |mm: fn(&Certificate) -> f64| {
+                bound.map(|bound| bound.map_or_else(|| "nothing".into(), |bound| at_least(mm(bound))))
+            };
+            let row = |what, found, certified, allowed, verdict: Verdict| Found {
                 kind: format!("{:?}", kind.kind),
                 what,
                 found,
+                certified,
                 allowed,
                 verdict: verdict.word(),
             };
@@ -167,24 +179,36 @@ fn found(robot: &Robot, number: NumberSystem, kind: &KindFindings) -> Vec<Found>
                 row(
                     "arithmetic",
                     mm(arithmetic),
+                    certified(|bound| bound.arithmetic.mm),
                     format!("{} mm", allowed.arithmetic_mm),
                     found.arithmetic_verdict,
                 ),
                 row(
                     "with the pulse",
                     mm(together),
+                    certified(|bound| bound.together.mm),
                     format!("{} mm", allowed.with_pulse_mm),
                     found.together_verdict,
                 ),
                 row(
                     "work volume unreached",
                     format!("{:.2} %", found.outcomes.unreached_percent),
+                    None,
                     format!("{} %", allowed.unreached_percent),
                     found.unreached_verdict,
                 ),
             ]
         })
         .collect()
+}
+
+/// A certified bound in mm, two digits, rounded up: what is written must be certified too.
+fn at_least(mm: f64) -> String {
+    let rounded = format!("{mm:.1e}");
+    match rounded.parse::<f64>() {
+        Ok(shown) if shown >= mm => format!("{rounded} mm"),
+        _ => format!("{:.1e} mm", mm * 1.05),
+    }
 }
 
 /// The output with the divider that was found for it.
