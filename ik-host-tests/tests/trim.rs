@@ -102,6 +102,49 @@ fn play_is_told_from_a_misread_row() {
 }
 
 #[test]
+fn a_point_of_one_side_alone_lies_in_the_middle_of_the_play() {
+    let mut readings = read(&demo("orchard-hip.csv")).unwrap();
+    let with_both = fit(&readings, AS_READ).unwrap();
+    let place = readings
+        .iter()
+        .position(|row| row.pulse_us == 1500.0 && row.approach == Some(Approach::Down))
+        .unwrap();
+    readings[place].angle_deg += 11.5;
+    let found = fit(&readings, AS_READ).unwrap();
+    assert!(
+        found.rows[place].left_out && found.rows.iter().filter(|row| row.misread).count() == 1,
+        "{found:?}"
+    );
+    let at_1500 =
+        |fit: &ik_host_tests::trim::Fit| fit.points.iter().find(|[us, _]| *us == 1500.0).unwrap()[1];
+    assert!((at_1500(&found) - at_1500(&with_both)).abs() < 0.5, "{found:?}");
+}
+
+#[test]
+fn what_goes_into_the_sheet_is_what_is_allowed_and_json_stays_json() {
+    let folder = tempfile::tempdir().unwrap();
+    let mut rows = String::from("pulse_us,angle_deg,uncertainty_deg\n");
+    for i in 0..31 {
+        let us = 600.0 + 60.0 * f64::from(i);
+        let angle = 25.0 - 81.0 * (us - 1500.0) / 900.0 + 2.0 * (0.9 * f64::from(i)).sin();
+        rows += &format!("{us},{angle:.2},0.2\n");
+    }
+    fs::write(folder.path().join("many.csv"), rows).unwrap();
+    // Sixteen points of thirty-one leave the others off.
+    let call = ["trim", "many.csv", "--as", "measured", "--json", "--allow", "0.05", "--out", "servo.toml"];
+    let out = toehold(folder.path(), &call);
+    assert_eq!(out.status.code(), Some(1), "{}", String::from_utf8_lossy(&out.stderr));
+    let json: serde_json::Value = serde_json::from_slice(&out.stdout).unwrap();
+    assert!(json["largest_off_deg"].as_f64().unwrap() > 0.05);
+    assert!(!folder.path().join("servo.toml").exists());
+    // What is refused leaves nothing behind.
+    fs::write(folder.path().join("there.toml"), "").unwrap();
+    let call = ["trim", "many.csv", "--drawing", "new.svg", "--out", "there.toml"];
+    assert_eq!(toehold(folder.path(), &call).status.code(), Some(2));
+    assert!(!folder.path().join("new.svg").exists());
+}
+
+#[test]
 fn what_makes_no_servo_is_said() {
     let still: Vec<_> =
         (0..8).map(|i| reading(i, 1000.0 + 100.0 * i as f64, 20.0 + 0.1 * (i % 2) as f64)).collect();
@@ -118,7 +161,7 @@ fn what_makes_no_servo_is_said() {
     .unwrap();
     let out = toehold(folder.path(), &["trim", "still.csv"]);
     assert_eq!(out.status.code(), Some(1));
-    assert!(String::from_utf8_lossy(&out.stdout).contains("the angle does not change with the pulse"));
+    assert!(String::from_utf8_lossy(&out.stderr).contains("the angle does not change with the pulse"));
 }
 
 #[test]
@@ -140,6 +183,7 @@ fn every_wrong_row_is_named_with_its_line_field_and_value() {
     for (text, part) in [
         ("pulse,angle_deg\n1,2\n", "column \"pulse\" is not known"),
         ("pulse_us\n1500\n", "there is no column angle_deg"),
+        ("pulse_us,pulse_us,angle_deg\n1500,1500,0\n", "column pulse_us is there twice"),
         ("pulse_us,angle_deg\n1500,0\n1600,9\n", "2 readings at 2 pulses"),
     ] {
         fs::write(folder.path().join("wrong.csv"), text).unwrap();

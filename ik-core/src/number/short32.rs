@@ -29,7 +29,7 @@ use halves::{Halves, product, square, times, upper};
 /// | --- | --- |
 /// | length | `fixed::types::I16F16`, mm |
 /// | angle | `fixed::types::I0F32`, turns; ±180° saturates just inside |
-/// | its primitives | a turn within 8.4e-7 rad, a knee within 4.8e-7, sine and cosine within 1.1e-8 |
+/// | its primitives | a turn within 1.1e-6 rad, a knee within 4.8e-7, sine and cosine within 1.1e-8 |
 /// | largest joint error | 1.2e-6 rad on the demo legs, with knee from 0.1 to 2.6 rad and the foot clear of the hip's axis; nearer to an end see [`leg`](crate::leg); up to 9e-6 rad on legs whose offset is longer than their links |
 /// | largest foot error | 1e-6 of thigh and shank together on the demo legs, straight and folded ones included; up to 1.7e-6 where the offset is longer |
 /// | legs | reach from 1 mm to 6 683 mm |

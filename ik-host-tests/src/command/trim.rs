@@ -4,6 +4,7 @@ use super::ending::{Ending, print};
 use crate::report;
 use crate::trim::{self, Block, Fit, Wanted};
 use serde::Serialize;
+use std::io::Write as _;
 use std::path::PathBuf;
 
 /// Fits centre and gain to measured pulse and angle pairs, and says whether measured points would be worth it.
@@ -22,7 +23,8 @@ pub(super) struct Call {
     /// What the servo is to be in the sheet; without it, points if they are worth it
     #[arg(long = "as", value_name = "FORM", value_parser = ["straight", "measured"])]
     form: Option<String>,
-    /// The farthest that a fitted reading may be off what goes into the sheet, degrees; beyond it, exit code 1
+    /// The farthest that a fitted reading may be off what goes into the sheet, degrees; beyond it, exit code 1. Points that
+    /// were each read once are not off at all
     #[arg(long, value_name = "DEGREES", value_parser = positive)]
     allow: Option<f64>,
     /// Write the servo's lines into a new file
@@ -78,7 +80,7 @@ impl Call {
         let fit = match trim::fit(&readings, wanted) {
             Ok(fit) => fit,
             Err(error) => {
-                print(&format!("{source}: {error}\n"))?;
+                say(&format!("{source}: {error}"));
                 return Ok(Ending::Beyond);
             }
         };
@@ -87,47 +89,63 @@ impl Call {
             None => fit.points_are_worth_it,
         };
         let block = if measured { Block::measured(&fit) } else { Block::straight(&fit) };
-        let largest_off_deg = largest_off(&fit, measured);
+        let largest_off_deg = largest_off(&fit, &block);
         if self.json {
             print(&report::json(&Printed { fit: &fit, largest_off_deg, sheet_lines: block.lines() }))?;
         } else {
             print(&report::trimmed_text(&fit, &block, &source))?;
         }
-        let beyond = self.allow.is_some_and(|allow| largest_off_deg > allow);
-        if let (true, Some(allow)) = (beyond, self.allow) {
-            print(&format!(
-                "a reading is {largest_off_deg:.3} degrees off, {allow} are allowed: nothing is written\n"
-            ))?;
+        if let Some(allow) = self.allow.filter(|allow| largest_off_deg > *allow) {
+            say(&format!(
+                "{source}: a reading is {largest_off_deg:.3} degrees off, {allow} are allowed: nothing is written"
+            ));
             return Ok(Ending::Beyond);
         }
+        // Everything that can be refused is looked at before anything is written.
+        for path in [&self.drawing, &self.out].into_iter().flatten() {
+            if path.exists() {
+                let shown = path.display();
+                return Err(Ending::WrongInput(format!(
+                    "toehold: cannot write {shown}: it is there already; name a file that is not"
+                )));
+            }
+        }
+        let edited = match (&self.write, &self.leg_kind, &self.joint) {
+            (Some(path), Some(kind), Some(joint)) => {
+                let shown = path.display().to_string();
+                let text = std::fs::read_to_string(path)
+                    .map_err(|error| Ending::WrongInput(format!("{shown}: {error}")))?;
+                let edited =
+                    trim::edited_sheet(&shown, &text, [kind, joint], &block).map_err(Ending::WrongInput)?;
+                Some((path, edited, format!("written: leg_kind.{kind}.servo.{joint} in {shown}")))
+            }
+            _ => None,
+        };
         if let Some(path) = &self.drawing {
             report::write_new(path, &report::trim_drawing(&fit)).map_err(cannot)?;
         }
         if let Some(path) = &self.out {
             report::write_new(path, &block.lines()).map_err(cannot)?;
         }
-        if let (Some(path), Some(kind), Some(joint)) = (&self.write, &self.leg_kind, &self.joint) {
-            let shown = path.display().to_string();
-            let text = std::fs::read_to_string(path)
-                .map_err(|error| Ending::WrongInput(format!("{shown}: {error}")))?;
-            let edited =
-                trim::edited_sheet(&shown, &text, [kind, joint], &block).map_err(Ending::WrongInput)?;
+        if let Some((path, edited, said)) = edited {
             report::replace_file(path, &edited).map_err(cannot)?;
-            print(&format!("written: leg_kind.{kind}.servo.{joint} in {shown}\n"))?;
+            say(&said);
         }
         Ok(Ending::Within)
     }
+}
+
+/// What is said beside the text or the JSON: on standard error, so that the JSON stays JSON.
+fn say(text: &str) {
+    let _ = writeln!(std::io::stderr(), "{text}");
 }
 
 fn cannot(error: report::WriteError) -> Ending {
     Ending::WrongInput(format!("toehold: {error}"))
 }
 
-/// The farthest that a fitted reading is off the line; of measured points, off the mean at its pulse.
-fn largest_off(fit: &Fit, measured: bool) -> f64 {
-    let off = |row: &&trim::Row| match fit.points.iter().find(|[us, _]| measured && *us == row.pulse_us) {
-        Some([_, degrees]) => (row.angle_deg - degrees).abs(),
-        None => row.off_line_deg.abs(),
-    };
-    fit.rows.iter().filter(|row| !row.left_out).map(|row| off(&row)).fold(0.0, f64::max)
+/// The farthest that a fitted reading is off what goes into the sheet.
+fn largest_off(fit: &Fit, block: &Block) -> f64 {
+    let off = |row: &trim::Row| (row.angle_deg - block.angle_deg(row.pulse_us)).abs();
+    fit.rows.iter().filter(|row| !row.left_out).map(off).fold(0.0, f64::max)
 }

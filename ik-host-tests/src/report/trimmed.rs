@@ -54,7 +54,7 @@ pub fn trimmed_text(fit: &Fit, block: &Block, source: &str) -> String {
         Some(backlash) if backlash.is_real => {
             let _ = writeln!(
                 out,
-                "backlash: {:.2} ± {:.2} degrees between coming up and coming down; points are the mean of both",
+                "backlash: {:.2} ± {:.2} degrees between coming up and coming down: the foot is half of it off; points lie in the middle",
                 backlash.gap_deg, backlash.error_deg
             );
         }

@@ -50,6 +50,22 @@ impl Block {
         Self::Measured(chosen.into_iter().map(|point| point.map(rounded)).collect())
     }
 
+    /// The joint's angle at a pulse, degrees: straight from point to point, and beyond the ends as between the last two.
+    pub fn angle_deg(&self, us: f64) -> f64 {
+        match self {
+            Self::Straight { centre_us, joint_at_centre_deg, us_per_degree, turns_with } => {
+                let turned = (us - centre_us) / us_per_degree;
+                joint_at_centre_deg + if *turns_with { turned } else { -turned }
+            }
+            Self::Measured(points) => {
+                let after = points.iter().position(|[at, _]| *at >= us).unwrap_or(points.len());
+                let after = after.clamp(1, points.len().max(2) - 1);
+                let ([from_us, from], [to_us, to]) = (points[after - 1], points[after]);
+                from + (to - from) * (us - from_us) / (to_us - from_us)
+            }
+        }
+    }
+
     /// The keys and their values.
     fn keys(&self) -> Vec<(&'static str, Value)> {
         match self {

@@ -47,7 +47,7 @@ pub struct Fit {
 /// What a joint moves by when the servo comes from the other side.
 #[derive(Debug, Clone, Copy, PartialEq, Serialize)]
 pub struct Backlash {
-    /// The whole gap, degrees: angles read on the way up less those on the way down, along the servo's own way.
+    /// The whole gap, degrees, along the servo's own way: angles read on the way down less those on the way up.
     pub gap_deg: f64,
     /// Its standard error.
     pub error_deg: f64,
@@ -129,7 +129,7 @@ pub fn fit(readings: &[Reading], wanted: Wanted) -> Result<Fit, FitError> {
     let powers = curve_powers(readings, &kept);
     let curve = of_power(readings, &kept, powers, wanted.centre_us).unwrap_or_else(|| line.clone());
     let backlash = backlash(readings, &kept, powers, wanted.centre_us, slope.value > 0.0);
-    let points = points(readings, &kept);
+    let points = points(readings, &kept, backlash.filter(|backlash| backlash.is_real), slope.value > 0.0);
     turns_one_way(&points)?;
     let on = |regression: &Regression, us: f64| value_at(regression, us - wanted.centre_us);
     let bend_deg = points.iter().map(|[us, _]| (on(&curve, *us) - on(&line, *us)).abs()).fold(0.0, f64::max);
@@ -288,29 +288,27 @@ fn backlash(
     Some(Backlash { gap_deg, error_deg: gap.error, is_real: by_chance < BY_CHANCE })
 }
 
-/// Every pulse once, with the mean of its angles: of both approaches alike, where there are both.
-fn points(readings: &[Reading], rows: &[usize]) -> Vec<[f64; 2]> {
+/// Every pulse once, with the weighted mean of its angles; each is first moved by half of the gap, if there is one, to the
+/// middle between the approaches, for at some pulses there may be readings of one side alone.
+fn points(readings: &[Reading], rows: &[usize], gap: Option<Backlash>, turns_with: bool) -> Vec<[f64; 2]> {
+    let lag = gap.map_or(0.0, |gap| if turns_with { gap.gap_deg / 2.0 } else { -gap.gap_deg / 2.0 });
+    let in_the_middle = |reading: &Reading| match reading.approach {
+        Some(Approach::Up) => reading.angle_deg + lag,
+        Some(Approach::Down) => reading.angle_deg - lag,
+        None => reading.angle_deg,
+    };
     let mut pulses: Vec<f64> = rows.iter().map(|row| readings[*row].pulse_us).collect();
     pulses.sort_by(f64::total_cmp);
     pulses.dedup();
-    let mean = |us: f64, of: Option<Option<Approach>>| {
-        let angles: Vec<f64> = rows
-            .iter()
-            .map(|row| &readings[*row])
-            .filter(|reading| reading.pulse_us == us && of.is_none_or(|of| reading.approach == of))
-            .map(|reading| reading.angle_deg)
-            .collect();
-        (!angles.is_empty()).then(|| angles.iter().sum::<f64>() / angles.len() as f64)
-    };
     pulses
         .into_iter()
-        .filter_map(|us| {
-            let both = (mean(us, Some(Some(Approach::Up))), mean(us, Some(Some(Approach::Down))));
-            let angle = match both {
-                (Some(up), Some(down)) => Some((up + down) / 2.0),
-                _ => mean(us, None),
-            }?;
-            Some([us, angle])
+        .map(|us| {
+            let here = rows.iter().map(|row| &readings[*row]).filter(|reading| reading.pulse_us == us);
+            let (sum, weights) = here.fold((0.0, 0.0), |(sum, weights), reading| {
+                let weight = 1.0 / (reading.uncertainty_deg * reading.uncertainty_deg);
+                (sum + weight * in_the_middle(reading), weights + weight)
+            });
+            [us, sum / weights]
         })
         .collect()
 }

@@ -89,6 +89,9 @@ pub fn read(path: &Path) -> Result<Vec<Reading>, ReadingsError> {
     for head in heads.iter().filter(|head| !known.contains(head)) {
         complaints.push((1, format!("column {head:?} is not known; the columns are {}", known.join(", "))));
     }
+    for twice in known.iter().filter(|head| heads.iter().filter(|other| other == *head).count() > 1) {
+        complaints.push((1, format!("column {twice} is there twice; each column once would be right")));
+    }
     for needed in ["pulse_us", "angle_deg"] {
         if !heads.iter().any(|head| head == needed) {
             complaints
