@@ -138,19 +138,14 @@ struct KindInNumber<H: Hip, N: Number> {
 impl<H: Hip, N: Number> KindInNumber<H, N> {
     fn new(robot: &Robot, kind: usize, dimensions: Dimensions<H>) -> Result<Self, Refused> {
         let sheet = &robot.kinds[kind];
-        let refused = |what: String, why: String| Refused { kind: sheet.name.clone(), what, why };
-        let of_servo = |joint: usize, error: ik_core::ServoError| {
-            refused(format!("servo.{}", sheet.joint_names()[joint]), error.to_string())
-        };
-        let counter =
-            Counter::of(&robot.output).map_err(|error| refused("output".into(), error.to_string()))?;
+        let counter = Counter::of_kind(robot, kind)?;
         let curves = curves(robot, kind)?;
         let drives = curves
             .iter()
             .map(|curves| {
                 let channel = |joint: usize| {
                     Channel::from_curve(&curves[joint], counter.counting())
-                        .map_err(|error| of_servo(joint, error))
+                        .map_err(|error| of_servo(sheet, joint, error))
                 };
                 let channels = [channel(0)?, channel(1)?, channel(2)?];
                 Ok(match sheet.knee_drive {
@@ -160,8 +155,17 @@ impl<H: Hip, N: Number> KindInNumber<H, N> {
             })
             .collect::<Result<_, _>>()?;
         let bends_back = matches!(sheet.bend, Bend::Backward | Bend::Down);
-        let leg = leg::limited(robot, kind, dimensions)?;
+        let leg = leg::limited(sheet, dimensions, &curves)?;
         Ok(Self { leg, bends_back, drives, counter })
+    }
+}
+
+/// What is refused of a joint's servo.
+fn of_servo(sheet: &LegKind, joint: usize, why: impl fmt::Display) -> Refused {
+    Refused {
+        kind: sheet.name.clone(),
+        what: format!("servo.{}", sheet.joint_names()[joint]),
+        why: why.to_string(),
     }
 }
 
@@ -171,11 +175,8 @@ fn curves(robot: &Robot, kind: usize) -> Result<Vec<[Curve; 3]>, Refused> {
     trims(robot, kind)
         .map(|trims| {
             let curve = |joint: usize| {
-                servo::curve(&sheet.servos[joint], trims[joint]).map_err(|error| Refused {
-                    kind: sheet.name.clone(),
-                    what: format!("servo.{}", sheet.joint_names()[joint]),
-                    why: error.to_string(),
-                })
+                servo::curve(&sheet.servos[joint], trims[joint])
+                    .map_err(|error| of_servo(sheet, joint, error))
             };
             Ok([curve(0)?, curve(1)?, curve(2)?])
         })

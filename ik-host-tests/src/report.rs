@@ -70,7 +70,7 @@ pub fn write(
     fs::create_dir_all(folder).map_err(|cause| WriteError { path: folder.to_owned(), cause })?;
     let place = |ending: &str, text: String| {
         let path = folder.join(format!("{stem}.{ending}"));
-        replace(folder, &path, &text).map_err(|cause| WriteError { path: path.clone(), cause }).map(|()| path)
+        replace_file(&path, &text).map(|()| path)
     };
     Ok([
         place("json", json(&WithChips { survey, chips }))?,
@@ -90,10 +90,16 @@ pub fn chips_place(folder: &Path, stem: &str) -> PathBuf {
 pub fn write_chips(folder: &Path, stem: &str, chips: &Chips) -> Result<PathBuf, WriteError> {
     fs::create_dir_all(folder).map_err(|cause| WriteError { path: folder.to_owned(), cause })?;
     let path = chips_place(folder, stem);
-    match replace(folder, &path, &json(chips)) {
-        Ok(()) => Ok(path),
-        Err(cause) => Err(WriteError { path, cause }),
-    }
+    replace_file(&path, &json(chips)).map(|()| path)
+}
+
+/// Whether a file can be new: that it is not there yet.
+///
+/// # Errors
+/// If it is.
+pub fn must_be_new(path: &Path) -> Result<(), WriteError> {
+    let cause = || io::Error::other("it is there already; name a file that is not");
+    if path.exists() { Err(WriteError { path: path.to_owned(), cause: cause() }) } else { Ok(()) }
 }
 
 /// Writes a file that must not be there yet.
@@ -101,13 +107,10 @@ pub fn write_chips(folder: &Path, stem: &str, chips: &Chips) -> Result<PathBuf, 
 /// # Errors
 /// If it is, or cannot be written.
 pub fn write_new(path: &Path, text: &str) -> Result<(), WriteError> {
+    must_be_new(path)?;
     let failed = |cause| WriteError { path: path.to_owned(), cause };
-    let mut file = fs::File::create_new(path).map_err(|cause| {
-        failed(match cause.kind() {
-            io::ErrorKind::AlreadyExists => io::Error::other("it is there already; name a file that is not"),
-            _ => cause,
-        })
-    })?;
+    // One that came to be in between is not written over either.
+    let mut file = fs::File::create_new(path).map_err(failed)?;
     file.write_all(text.as_bytes()).map_err(failed)
 }
 

@@ -96,11 +96,7 @@ pub fn solve(robot: &Robot, leg: usize, foot_mm: [f64; 3], asked_on_body: bool) 
     let among = legs_of(robot, kind).position(|other| other == leg).unwrap_or(0);
     let judge = Judge::of(robot, kind)?;
     let finite = foot_mm.iter().all(|v| v.is_finite());
-    let counter = Counter::of(&robot.output).map_err(|error| Refused {
-        kind: sheet.name.clone(),
-        what: "output".into(),
-        why: error.to_string(),
-    })?;
+    let counter = Counter::of_kind(robot, kind)?;
     let answers = machine::in_every_number(robot, kind)?
         .iter()
         .map(|machine| {

@@ -329,9 +329,7 @@ impl Number for Fixed16 {
         if y < 0 {
             size = from_behind(size);
         }
-        // By the sign's mask: with a branch, all of the above would be there twice.
-        let sign = x >> 31;
-        I0F16::from_bits(((size ^ sign) - sign) as i16)
+        I0F16::from_bits(rhombus::signed(size, x) as i16)
     }
 
     #[inline(always)]

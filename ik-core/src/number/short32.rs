@@ -371,9 +371,7 @@ impl Number for Short32 {
         if y < 0 {
             size = from_behind(size);
         }
-        // By the sign's mask: with a branch, all of the above would be there twice.
-        let sign = x >> 31;
-        I0F32::from_bits((size ^ sign).wrapping_sub(sign))
+        I0F32::from_bits(rhombus::signed(size, x))
     }
 
     #[inline(always)]

@@ -62,7 +62,7 @@ pub fn of_legs(robot: &Robot, rounds: u32, seed: u64) -> Result<Vec<LegFound>, R
         for machine in machine::in_every_number(&free, number)? {
             let mut found = LegFound {
                 robot: robot.name.clone(),
-                shape: shape_word(leg.shape),
+                shape: leg.shape.word(),
                 number: machine.number(),
                 joint_rad: 0.0,
                 near_an_end_rad: 0.0,
@@ -79,14 +79,6 @@ pub fn of_legs(robot: &Robot, rounds: u32, seed: u64) -> Result<Vec<LegFound>, R
         }
     }
     Ok(all)
-}
-
-/// A shape in words.
-pub(super) const fn shape_word(shape: Shape) -> &'static str {
-    match shape {
-        Shape::Roll => "roll-hip",
-        Shape::Yaw => "yaw-hip",
-    }
 }
 
 /// A robot whose joints may go anywhere.

@@ -1,6 +1,6 @@
 //! What an answer is worth near the places where a leg is singular.
 
-use super::legs::{shape_word, with_free_joints};
+use super::legs::with_free_joints;
 use crate::machine::{self, Refused};
 use crate::reference::{self, Leg, Pose, Shape, Verdict, leg::distance};
 use crate::sheet::Robot;
@@ -68,7 +68,7 @@ pub fn near_singular_places(robot: &Robot, rounds: u32, seed: u64) -> Result<Vec
             for place in Place::ALL {
                 let none = [0.0; NEARNESS.len()];
                 let mut found = NearFound {
-                    shape: shape_word(leg.shape),
+                    shape: leg.shape.word(),
                     place,
                     number: machine.number(),
                     joint_rad: none,

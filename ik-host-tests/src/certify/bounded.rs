@@ -111,17 +111,7 @@ fn turned<T: Table>(from: [Product<T>; 2], to: [Coord<T>; 2], bounds: &Turning) 
         + angle_of(kernel / shortest);
     // Around the circle where the two halves meet, a small error may be a whole turn in number.
     let (exact, error) = if exact.size() + error >= PI { (Interval::CIRCLE, TAU) } else { (exact, error) };
-    Angle {
-        exact,
-        error,
-        along,
-        across,
-        displaced,
-        own: 0.0,
-        own_if_held: 0.0,
-        sort: Sort::Turn,
-        of: PhantomData,
-    }
+    Angle { exact, error, along, across, displaced, sort: Sort::Turn, ..Angle::constant(0.0, 0.0) }
 }
 
 /// A coordinate as a product that nothing is lost of.
@@ -143,14 +133,8 @@ impl<T: Table> Bounded<T> {
         let error = root_error(square.error, exact) + rounding;
         let computed = exact.high + root_error(square.error, exact);
         Coord {
-            exact,
-            error,
             square: square.error + rounding * (2.0 * computed + rounding),
-            displaced: 0.0,
-            alone: error,
-            alike: 0.0,
-            unit,
-            of: PhantomData,
+            ..Coord::new(exact, error, 0.0, unit)
         }
     }
 }
@@ -172,29 +156,10 @@ impl<T: Table> Number for Bounded<T> {
     const NAME: &'static str = T::BOUNDS.number;
     const NO_LENGTH: Length = Length(Interval::ZERO);
     const FARTHEST: Length = Length(Interval::point(f64::MAX));
-    const NO_COORD: Coord<T> = Coord {
-        exact: Interval::ZERO,
-        error: 0.0,
-        square: 0.0,
-        displaced: 0.0,
-        alone: 0.0,
-        alike: 0.0,
-        unit: 0.0,
-        of: PhantomData,
-    };
+    const NO_COORD: Coord<T> = Coord::new(Interval::ZERO, 0.0, 0.0, 0.0);
     const NO_SQUARE: Square<T> =
         Square { exact: Interval::ZERO, error: 0.0, constant: false, of: PhantomData };
-    const NO_ANGLE: Angle<T> = Angle {
-        exact: Interval::ZERO,
-        error: 0.0,
-        along: 0.0,
-        across: 0.0,
-        displaced: 0.0,
-        own: 0.0,
-        own_if_held: 0.0,
-        sort: Sort::Constant,
-        of: PhantomData,
-    };
+    const NO_ANGLE: Angle<T> = Angle::constant(0.0, 0.0);
     const LEAST_ANGLE: Angle<T> = Angle { exact: Interval::point(-PI), ..Self::NO_ANGLE };
     /// What a folded knee is counted from; its rounding belongs to the knee's.
     const MOST_ANGLE: Angle<T> = Angle { exact: Interval::point(PI), ..Self::NO_ANGLE };

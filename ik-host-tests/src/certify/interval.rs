@@ -45,7 +45,7 @@ impl Interval {
     }
 
     /// The largest size.
-    pub fn size(self) -> f64 {
+    pub const fn size(self) -> f64 {
         self.low.abs().max(self.high.abs())
     }
 

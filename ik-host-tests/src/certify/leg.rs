@@ -87,11 +87,7 @@ struct InNumber<H: Hip, T: Table> {
 
 fn solver<T: Table>(robot: &Robot, kind: usize) -> Result<Box<dyn Solver>, Refused> {
     let sheet: &LegKind = &robot.kinds[kind];
-    let counter = Counter::of(&robot.output).map_err(|error| Refused {
-        kind: sheet.name.clone(),
-        what: "output".into(),
-        why: error.to_string(),
-    })?;
+    let counter = Counter::of_kind(robot, kind)?;
     let (judged, pulses) = (machine::judged_leg(sheet), Pulses::of(robot, kind, &counter, T::BOUNDS));
     Ok(match sheet.hip {
         HipShape::Roll => {

@@ -107,7 +107,7 @@ pub struct Angle<T> {
 }
 
 impl<T> Coord<T> {
-    pub(super) fn new(exact: Interval, error: f64, displaced: f64, unit: f64) -> Self {
+    pub(super) const fn new(exact: Interval, error: f64, displaced: f64, unit: f64) -> Self {
         Self {
             exact,
             error,
@@ -138,7 +138,7 @@ impl<T> Angle<T> {
         self.sort == Sort::Constant
     }
 
-    pub(super) fn constant(exact: f64, error: f64) -> Self {
+    pub(super) const fn constant(exact: f64, error: f64) -> Self {
         let exact = Interval::point(exact);
         Self {
             exact,

@@ -2,12 +2,12 @@
 
 use super::ending::{Ending, print};
 use super::robots::{self, Source};
-use super::survey::{bar, quoted};
+use super::survey::{quoted, surveyed};
 use crate::certify::{Certified, Effort};
 use crate::constants::{self, Origin, sha256};
 use crate::report;
 use crate::sheet::{NumberSystem, Robot};
-use crate::survey::{Plan, Survey, Verdict, survey};
+use crate::survey::{Plan, Survey, Verdict};
 use std::io::Write as _;
 use std::path::PathBuf;
 
@@ -57,7 +57,8 @@ impl Call {
         let number = self.number_of(&robot);
         // The survey judges the number system that is written, whatever else the sheet's firmware uses.
         robot.firmware.numbers = vec![number];
-        let survey = self.survey(&source, &robot)?;
+        let plan = Plan { targets: self.targets, seed: self.seed };
+        let survey = surveyed(&source, &robot, plan, self.certify.then(Effort::default))?;
         if survey.verdict == Verdict::Beyond && !self.although_beyond {
             let message = format!(
                 "toehold: {}: beyond what the sheet allows in {}, so nothing was written: {}; `toehold survey` tells \
@@ -95,20 +96,6 @@ impl Call {
     fn number_of(&self, robot: &Robot) -> NumberSystem {
         let named = |name: &String| NumberSystem::ALL.into_iter().find(|number| number.name() == name);
         self.number.as_ref().and_then(named).unwrap_or(robot.firmware.numbers[0])
-    }
-
-    fn survey(&self, source: &Source, robot: &Robot) -> Result<Survey, Ending> {
-        let progress = bar(&source.stem(), self.targets * robot.kinds.len() as u64);
-        let plan = Plan { targets: self.targets, seed: self.seed };
-        let survey = survey(robot, plan, &progress).and_then(|mut survey| {
-            if self.certify {
-                progress.set_message(format!("{}: certifying", source.stem()));
-                survey.certify(Effort::default())?;
-            }
-            Ok(survey)
-        });
-        progress.finish_and_clear();
-        survey.map_err(|error| Ending::WrongInput(format!("{}: {error}", source.shown())))
     }
 
     /// The call that makes the same text, wherever it goes to.

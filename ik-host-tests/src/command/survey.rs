@@ -84,22 +84,8 @@ impl Call {
 
     fn one(&self, source: &Source, robot: &Robot) -> Result<Survey, Ending> {
         let plan = Plan { targets: self.targets, seed: self.seed };
-        let progress = bar(&source.stem(), self.targets * robot.kinds.len() as u64);
-        let survey = survey(robot, plan, &progress).and_then(|mut survey| {
-            if self.certify {
-                progress.set_message(format!("{}: certifying", source.stem()));
-                survey.certify(Effort {
-                    time: Duration::from_secs(self.certify_seconds),
-                    ..Effort::default()
-                })?;
-            }
-            Ok(survey)
-        });
-        progress.finish_and_clear();
-        survey.map_err(|error| match error {
-            SurveyError::Exceeded(_) => Ending::Failed(format!("{}: {error}", source.shown())),
-            _ => Ending::WrongInput(format!("{}: {error}", source.shown())),
-        })
+        let effort = Effort { time: Duration::from_secs(self.certify_seconds), ..Effort::default() };
+        surveyed(source, robot, plan, self.certify.then_some(effort))
     }
 
     fn write(&self, source: &Source, survey: &Survey, chips: Option<&Chips>) -> Result<(), Ending> {
@@ -154,8 +140,30 @@ pub(super) fn quoted(word: &str) -> String {
     if word.chars().all(plain) { word.to_owned() } else { format!("\"{}\"", word.replace('"', "\\\"")) }
 }
 
+/// Surveys a robot, and certifies it with that effort if there is one, behind a progress bar.
+pub(super) fn surveyed(
+    source: &Source,
+    robot: &Robot,
+    plan: Plan,
+    certify: Option<Effort>,
+) -> Result<Survey, Ending> {
+    let progress = bar(&source.stem(), plan.targets * robot.kinds.len() as u64);
+    let survey = survey(robot, plan, &progress).and_then(|mut survey| {
+        if let Some(effort) = certify {
+            progress.set_message(format!("{}: certifying", source.stem()));
+            survey.certify(effort)?;
+        }
+        Ok(survey)
+    });
+    progress.finish_and_clear();
+    survey.map_err(|error| match error {
+        SurveyError::Exceeded(_) => Ending::Failed(format!("{}: {error}", source.shown())),
+        _ => Ending::WrongInput(format!("{}: {error}", source.shown())),
+    })
+}
+
 /// A progress bar on a terminal; nothing elsewhere.
-pub(super) fn bar(what: &str, length: u64) -> ProgressBar {
+fn bar(what: &str, length: u64) -> ProgressBar {
     let style =
         ProgressStyle::with_template("{msg} {wide_bar} {human_pos} of {human_len} targets, {eta} left")
             .expect("a constant template");

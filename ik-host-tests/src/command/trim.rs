@@ -103,12 +103,7 @@ impl Call {
         }
         // Everything that can be refused is looked at before anything is written.
         for path in [&self.drawing, &self.out].into_iter().flatten() {
-            if path.exists() {
-                let shown = path.display();
-                return Err(Ending::WrongInput(format!(
-                    "toehold: cannot write {shown}: it is there already; name a file that is not"
-                )));
-            }
+            report::must_be_new(path).map_err(cannot)?;
         }
         let edited = match (&self.write, &self.leg_kind, &self.joint) {
             (Some(path), Some(kind), Some(joint)) => {

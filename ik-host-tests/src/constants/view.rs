@@ -213,11 +213,7 @@ fn at_least(mm: f64) -> String {
 
 /// The output with the divider that was found for it.
 fn output(robot: &Robot) -> Result<(&'static str, String), Refused> {
-    let counter = Counter::of(&robot.output).map_err(|error| Refused {
-        kind: robot.kinds[0].name.clone(),
-        what: "output".into(),
-        why: error.to_string(),
-    })?;
+    let counter = Counter::of_kind(robot, 0)?;
     Ok(match (counter, &robot.output) {
         (Counter::Timer(timer), Output::Timer { clock_hz, counter_bits, frame_hz, .. }) => {
             ("Timer", format!("Timer::new({clock_hz}, {}, {counter_bits}, {frame_hz:?})", timer.divider()))

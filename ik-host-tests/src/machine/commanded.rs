@@ -21,11 +21,7 @@ impl Commanded {
     /// What the output refuses.
     pub fn of(robot: &Robot, kind: usize) -> Result<Self, Refused> {
         let sheet = &robot.kinds[kind];
-        let counter = Counter::of(&robot.output).map_err(|error| Refused {
-            kind: sheet.name.clone(),
-            what: "output".into(),
-            why: error.to_string(),
-        })?;
+        let counter = Counter::of_kind(robot, kind)?;
         Ok(Self { kind: sheet.clone(), trims_us: trims(robot, kind).collect(), count_us: counter.count_us() })
     }
 

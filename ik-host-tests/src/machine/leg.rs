@@ -2,14 +2,15 @@
 
 use super::{Refused, bend, curves, limits};
 use crate::sheet::{LegKind, Robot};
-use ik_core::{Dimensions, GeometryError, Hip, Leg, Number, RollHip, YawHip};
+use ik_core::{Curve, Dimensions, GeometryError, Hip, Leg, Number, RollHip, YawHip};
 
 /// The roll-hip leg of a kind in a number system.
 ///
 /// # Errors
 /// What ik-core refuses, a yaw-hip kind included, and why.
 pub fn roll_leg<N: Number>(robot: &Robot, kind: usize) -> Result<Leg<RollHip, N>, Refused> {
-    limited(robot, kind, roll_measures(&robot.kinds[kind])?)
+    let sheet = &robot.kinds[kind];
+    limited(sheet, roll_measures(sheet)?, &curves(robot, kind)?)
 }
 
 /// The yaw-hip leg of a kind in a number system.
@@ -17,17 +18,17 @@ pub fn roll_leg<N: Number>(robot: &Robot, kind: usize) -> Result<Leg<RollHip, N>
 /// # Errors
 /// What ik-core refuses, a roll-hip kind included, and why.
 pub fn yaw_leg<N: Number>(robot: &Robot, kind: usize) -> Result<Leg<YawHip, N>, Refused> {
-    limited(robot, kind, yaw_measures(&robot.kinds[kind])?)
+    let sheet = &robot.kinds[kind];
+    limited(sheet, yaw_measures(sheet)?, &curves(robot, kind)?)
 }
 
 /// Without its servos, but with the joint ranges that suit them.
 pub(super) fn limited<H: Hip, N: Number>(
-    robot: &Robot,
-    kind: usize,
+    sheet: &LegKind,
     dimensions: Dimensions<H>,
+    curves: &[[Curve; 3]],
 ) -> Result<Leg<H, N>, Refused> {
-    let sheet = &robot.kinds[kind];
-    let limits = limits(sheet, dimensions.bend(), &curves(robot, kind)?).map_err(|error| Refused {
+    let limits = limits(sheet, dimensions.bend(), curves).map_err(|error| Refused {
         kind: sheet.name.clone(),
         what: "range_deg".into(),
         why: error.to_string(),

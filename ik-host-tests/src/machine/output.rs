@@ -1,6 +1,7 @@
 //! The output of a sheet as ik-core's.
 
-use crate::sheet;
+use super::Refused;
+use crate::sheet::{self, Robot};
 use ik_core::output::Output;
 use ik_core::{Counting, Expander, OutputError, Pulse, Timer};
 
@@ -29,6 +30,18 @@ impl Counter {
                 Expander::nearest(oscillator_hz, resolution_bits, frame_hz).map(Self::Expander)
             }
         }
+    }
+
+    /// The output of a robot, for a kind of leg.
+    ///
+    /// # Errors
+    /// What the hardware cannot do, as what is refused of that kind.
+    pub fn of_kind(robot: &Robot, kind: usize) -> Result<Self, Refused> {
+        Self::of(&robot.output).map_err(|error| Refused {
+            kind: robot.kinds[kind].name.clone(),
+            what: "output".into(),
+            why: error.to_string(),
+        })
     }
 
     fn inner(&self) -> &dyn Output {

@@ -1,6 +1,6 @@
 //! The servos' slews and first pulses of a sheet as ik-core's bounds.
 
-use super::{BENDS, Counter, Refused, servo};
+use super::{BENDS, Counter, Refused, of_servo, servo};
 use crate::sheet::Robot;
 use ik_core::frame::ServoBounds;
 use ik_core::{Channel, Fixed32, Pulse};
@@ -14,23 +14,20 @@ use ik_core::{Channel, Fixed32, Pulse};
 pub fn servo_bounds(robot: &Robot, leg: usize) -> Result<[Option<ServoBounds>; 3], Refused> {
     let mount = &robot.legs[leg];
     let kind = &robot.kinds[mount.kind];
-    let refused = |what: String, why: String| Refused { kind: kind.name.clone(), what, why };
-    let counting =
-        Counter::of(&robot.output).map_err(|error| refused("output".into(), error.to_string()))?.counting();
+    let counting = Counter::of_kind(robot, mount.kind)?.counting();
     let bounds = |joint: usize| {
         let (sheet, trim_us) = (&kind.servos[joint], mount.trim_us[joint]);
         let (Some(slew_us), Some(start_us)) = (sheet.slew_us_per_frame, sheet.start_us) else {
             return Ok(None);
         };
-        let of_servo = |why: String| refused(format!("servo.{}", kind.joint_names()[joint]), why);
         let [shortest, longest] = sheet.sent_us(trim_us);
         let start = Pulse::from_us((start_us + trim_us).max(shortest).min(longest));
-        let curve = servo::curve(sheet, trim_us).map_err(|error| of_servo(error.to_string()))?;
+        let curve = servo::curve(sheet, trim_us).map_err(|error| of_servo(kind, joint, error))?;
         let channel = Channel::<Fixed32, BENDS>::from_curve(&curve, counting)
-            .map_err(|error| of_servo(error.to_string()))?;
+            .map_err(|error| of_servo(kind, joint, error))?;
         ServoBounds::on_channel(&channel, counting, start, Pulse::from_us(slew_us))
             .map(Some)
-            .map_err(|error| of_servo(error.to_string()))
+            .map_err(|error| of_servo(kind, joint, error))
     };
     Ok([bounds(0)?, bounds(1)?, bounds(2)?])
 }

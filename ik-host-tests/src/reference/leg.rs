@@ -17,6 +17,16 @@ pub enum Shape {
     Yaw,
 }
 
+impl Shape {
+    /// In a word.
+    pub const fn word(self) -> &'static str {
+        match self {
+            Self::Roll => "roll-hip",
+            Self::Yaw => "yaw-hip",
+        }
+    }
+}
+
 /// To which side the knee bends as its flexion grows from zero.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub enum Bend {

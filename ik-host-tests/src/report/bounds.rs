@@ -1,10 +1,10 @@
 //! Bounds, stated and found, as text.
 
 use super::number::count;
-use super::text::plain_table;
+use super::text::{align_right, plain_table};
 use crate::bounds::{Judged, LegBound, NEARNESS, Place, Verdict};
 use crate::sheet::NumberSystem;
-use comfy_table::{CellAlignment, Table};
+use comfy_table::Table;
 use std::fmt::Write as _;
 
 /// What was found of every primitive and leg, and what is stated, as text for a terminal.
@@ -70,8 +70,6 @@ pub fn bounds_text(judged: &Judged) -> String {
 fn table<const COLUMNS: usize>(heads: [&str; COLUMNS]) -> Table {
     let mut table = plain_table();
     table.set_header(heads);
-    for column in table.column_iter_mut().skip(2) {
-        column.set_cell_alignment(CellAlignment::Right);
-    }
+    align_right(&mut table, 2..);
     table
 }

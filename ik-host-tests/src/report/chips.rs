@@ -1,9 +1,10 @@
 //! What the legs cost on the chips, as text.
 
 use super::number::{count, significant};
+use super::text::align_right;
 use crate::chips::{Chips, Found, KindOnChips, Measured, Row, Times};
 use comfy_table::presets::NOTHING;
-use comfy_table::{CellAlignment, ContentArrangement, Table};
+use comfy_table::{ContentArrangement, Table};
 use std::fmt::Write as _;
 
 /// What the legs of a robot cost on the chips, as text for a terminal.
@@ -83,9 +84,7 @@ fn table(chips: &Chips, kind: &KindOnChips) -> Table {
     for row in &kind.rows {
         table.add_row(cells(row));
     }
-    for column in table.column_iter_mut().skip(2).take(11) {
-        column.set_cell_alignment(CellAlignment::Right);
-    }
+    align_right(&mut table, 2..13);
     table
 }
 

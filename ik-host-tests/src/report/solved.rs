@@ -1,8 +1,9 @@
 //! One solved target as text.
 
 use super::number::{foot, millimetres};
+use super::text::align_right;
 use crate::solve::{Answer, PoseAnswer, Solved};
-use comfy_table::{CellAlignment, Table};
+use comfy_table::Table;
 use std::fmt::Write as _;
 
 /// One solved target as text for a terminal.
@@ -75,9 +76,7 @@ fn table(solved: &Solved) -> Table {
     row(&mut table, solved, "pulse error, mm".into(), |pose| pose.pulse_mm.map_or("-".into(), millimetres));
     row(&mut table, solved, "off by, as it says, mm".into(), |pose| millimetres(pose.off_by_mm));
     row(&mut table, solved, "foot off as commanded, mm".into(), |pose| millimetres(pose.foot_off_mm));
-    for column in table.column_iter_mut().skip(1) {
-        column.set_cell_alignment(CellAlignment::Right);
-    }
+    align_right(&mut table, 1..);
     table
 }
 

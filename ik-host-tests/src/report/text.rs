@@ -6,6 +6,7 @@ use crate::survey::{KindFindings, NumberFindings, Survey, Verdict};
 use comfy_table::presets::UTF8_HORIZONTAL_ONLY;
 use comfy_table::{CellAlignment, ContentArrangement, Table};
 use std::fmt::Write as _;
+use std::ops::RangeBounds;
 
 /// A survey as text for a terminal.
 pub fn text(survey: &Survey, source: &str) -> String {
@@ -62,6 +63,15 @@ fn of_kind(survey: &Survey, kind: &KindFindings) -> String {
     out
 }
 
+/// Numbers stand at the right of their columns.
+pub(super) fn align_right(table: &mut Table, columns: impl RangeBounds<usize>) {
+    for (number, column) in table.column_iter_mut().enumerate() {
+        if columns.contains(&number) {
+            column.set_cell_alignment(CellAlignment::Right);
+        }
+    }
+}
+
 /// A table with lines between the rows only, as wide as it wants to be.
 pub(super) fn plain_table() -> Table {
     let mut table = Table::new();
@@ -95,9 +105,7 @@ fn errors(kind: &KindFindings) -> Table {
         row.push(verdict(number));
         table.add_row(row);
     }
-    for column in table.column_iter_mut().skip(1).take(10) {
-        column.set_cell_alignment(CellAlignment::Right);
-    }
+    align_right(&mut table, 1..11);
     table
 }
 
@@ -137,9 +145,7 @@ fn certified(kind: &KindFindings) -> String {
             None => {}
         }
     }
-    for column in table.column_iter_mut().skip(1) {
-        column.set_cell_alignment(CellAlignment::Right);
-    }
+    align_right(&mut table, 1..);
     format!("{table}\n{remarks}  not covered: {NOT_COVERED}\n")
 }
 

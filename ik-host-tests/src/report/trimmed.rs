@@ -1,8 +1,7 @@
 //! A servo's fit as text.
 
-use super::text::plain_table;
+use super::text::{align_right, plain_table};
 use crate::trim::{Block, Fit};
-use comfy_table::CellAlignment;
 use std::fmt::Write as _;
 
 /// What readings say of a servo, as text for a terminal, with the lines for a sheet.
@@ -24,9 +23,7 @@ pub fn trimmed_text(fit: &Fit, block: &Block, source: &str) -> String {
     );
     let mut table = plain_table();
     table.set_header(["line", "pulse, us", "angle, deg", "off the line", "off the others' curve", ""]);
-    for column in table.column_iter_mut().take(5) {
-        column.set_cell_alignment(CellAlignment::Right);
-    }
+    align_right(&mut table, ..5);
     for row in &fit.rows {
         let said = match (row.misread, row.left_out) {
             (true, true) => "looks misread: left out",

@@ -242,10 +242,7 @@ impl KindFindings {
         let sheet = &robot.kinds[kind];
         Self {
             kind: sheet.name.clone(),
-            shape: match judge.leg().shape {
-                crate::reference::Shape::Roll => "roll-hip",
-                crate::reference::Shape::Yaw => "yaw-hip",
-            },
+            shape: judge.leg().shape.word(),
             joints: sheet.joint_names(),
             legs: machine::legs_of(robot, kind).map(|leg| robot.legs[leg].name.clone()).collect(),
             targets: Edges {

@@ -118,8 +118,9 @@ const CURVE_POWERS: usize = 3;
 /// If they make no servo.
 pub fn fit(readings: &[Reading], wanted: Wanted) -> Result<Fit, FitError> {
     let all: Vec<usize> = (0..readings.len()).collect();
-    let misread = if wanted.keep_all { Vec::new() } else { misread_rows(readings) };
-    let kept: Vec<usize> = all.iter().copied().filter(|row| !misread.contains(row)).collect();
+    let misread = misread_rows(readings);
+    let is_left_out = |row: &usize| !wanted.keep_all && misread.contains(row);
+    let kept: Vec<usize> = all.iter().copied().filter(|row| !is_left_out(row)).collect();
     let line = of_power(readings, &kept, 1, wanted.centre_us).ok_or(FitError::TooFew)?;
     let (at_centre, slope) = (line.terms[0], line.terms[1]);
     let is_a_gain = slope.value != 0.0 && slope.value.abs() > 4.0 * slope.error;
@@ -135,7 +136,6 @@ pub fn fit(readings: &[Reading], wanted: Wanted) -> Result<Fit, FitError> {
     let bend_deg = points.iter().map(|[us, _]| (on(&curve, *us) - on(&line, *us)).abs()).fold(0.0, f64::max);
     let bend_by_chance = by_chance(&line, &curve);
     let typical = kept.iter().map(|row| readings[*row].uncertainty_deg).sum::<f64>() / kept.len() as f64;
-    let worst = if wanted.keep_all { misread_rows(readings) } else { misread.clone() };
     let rows = all
         .iter()
         .map(|row| {
@@ -149,8 +149,8 @@ pub fn fit(readings: &[Reading], wanted: Wanted) -> Result<Fit, FitError> {
                 angle_deg: reading.angle_deg,
                 off_line_deg: reading.angle_deg - on(&line, reading.pulse_us),
                 off_curve_deg: reading.angle_deg - predicted,
-                misread: worst.contains(row),
-                left_out: misread.contains(row),
+                misread: misread.contains(row),
+                left_out: is_left_out(row),
             }
         })
         .collect();

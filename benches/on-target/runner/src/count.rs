@@ -146,21 +146,6 @@ mod tests {
         }
     }
 
-    fn expected() -> Expected {
-        Expected {
-            name: "some-roll",
-            what: "some",
-            hip: "roll",
-            ours: false,
-            to: To::Joints,
-            targets: 2,
-            line: "some-roll 2 77".into(),
-            largest_foot_error_mm: 0.5,
-            largest_foot_error: 0.0025,
-            largest_joint_error_rad: 0.01,
-        }
-    }
-
     fn run() -> Run {
         Run {
             log: vec!["some-roll 2 77".into()],
@@ -171,7 +156,7 @@ mod tests {
     #[test]
     fn the_call_is_subtracted() {
         let call = CallAlone { instructions: 4, cycles: [10, 14], flash: 9000 };
-        let cost = cost(&expected(), &run().windows, 9500, call);
+        let cost = cost(&Expected::of_two_targets(), &run().windows, 9500, call);
         assert_eq!(cost.instructions, Spread { least: 100.0, mean: 103.0, most: 106.0 });
         assert_eq!(cost.cycles, [145.0, 156.0]);
         assert_eq!((cost.flash, cost.stack), (500, 40));
@@ -180,19 +165,22 @@ mod tests {
 
     #[test]
     fn a_sound_run_passes() {
-        assert!(check(&expected(), &run()).is_ok());
+        assert!(check(&Expected::of_two_targets(), &run()).is_ok());
     }
 
     #[test]
     fn another_answer_than_the_pcs_is_noticed() {
         let other = Run { log: vec!["some-roll 2 78".into()], ..run() };
-        let complaint = check(&expected(), &other).expect_err("it differs").to_string();
+        let complaint = check(&Expected::of_two_targets(), &other).expect_err("it differs").to_string();
         assert!(complaint.contains("some-roll 2 78") && complaint.contains("some-roll 2 77"), "{complaint}");
     }
 
     #[test]
     fn a_run_that_logged_nothing_is_noticed() {
-        assert!(matches!(check(&expected(), &Run { log: vec![], ..run() }), Err(Trouble::Differs { .. })));
+        assert!(matches!(
+            check(&Expected::of_two_targets(), &Run { log: vec![], ..run() }),
+            Err(Trouble::Differs { .. })
+        ));
     }
 
     #[test]
@@ -200,7 +188,7 @@ mod tests {
         let mut short = run();
         short.windows.pop();
         assert!(matches!(
-            check(&expected(), &short),
+            check(&Expected::of_two_targets(), &short),
             Err(Trouble::WindowsMissing { windows: 1, targets: 2, .. })
         ));
     }
@@ -208,10 +196,10 @@ mod tests {
     #[test]
     fn two_counts_that_differ_are_noticed() {
         let windows = run().windows;
-        assert!(compare(&expected(), &windows, &[104, 110]).is_ok());
+        assert!(compare(&Expected::of_two_targets(), &windows, &[104, 110]).is_ok());
         for (again, at) in [(&[104, 111][..], 1), (&[104], 1), (&[104, 110, 1], 2), (&[], 0)] {
             assert!(matches!(
-                compare(&expected(), &windows, again),
+                compare(&Expected::of_two_targets(), &windows, again),
                 Err(Trouble::CountsDiffer { window, .. }) if window == at
             ));
         }
@@ -221,7 +209,7 @@ mod tests {
     fn an_instruction_without_a_price_is_noticed() {
         let mut odd = run();
         odd.windows[1].unknown_at = Some(0x814);
-        let complaint = check(&expected(), &odd).expect_err("it has no price").to_string();
+        let complaint = check(&Expected::of_two_targets(), &odd).expect_err("it has no price").to_string();
         assert!(complaint.contains("0x814"), "{complaint}");
     }
 }

@@ -23,6 +23,25 @@ pub struct Expected {
     pub largest_joint_error_rad: f64,
 }
 
+#[cfg(test)]
+impl Expected {
+    /// A contender with two targets, for tests.
+    pub fn of_two_targets() -> Self {
+        Self {
+            name: "some-roll",
+            what: "some",
+            hip: "roll",
+            ours: false,
+            to: To::Joints,
+            targets: 2,
+            line: "some-roll 2 77".into(),
+            largest_foot_error_mm: 0.5,
+            largest_foot_error: 0.0025,
+            largest_joint_error_rad: 0.01,
+        }
+    }
+}
+
 /// All contenders, in the order of the table.
 pub fn all() -> Vec<Expected> {
     let mut collector = Collector(Vec::new());

@@ -39,29 +39,16 @@ pub fn compare(expected: &Expected, run: &Run) -> Result<u64, Trouble> {
 
 #[cfg(test)]
 mod tests {
-    use contenders::To;
     use reckoning::Window;
 
     use super::*;
 
     fn run(counts: [u64; 2], windows: [u64; 2]) -> Result<u64, Trouble> {
-        let expected = Expected {
-            name: "some-roll",
-            what: "some",
-            hip: "roll",
-            ours: true,
-            to: To::Joints,
-            targets: 2,
-            line: String::new(),
-            largest_foot_error_mm: 0.0,
-            largest_foot_error: 0.0,
-            largest_joint_error_rad: 0.0,
-        };
         let log =
             counts.iter().map(|count| format!("counter {count}")).chain(["some-roll 2 7".into()]).collect();
         let windows =
             windows.iter().map(|&instructions| Window { instructions, ..Window::default() }).collect();
-        compare(&expected, &Run { log, windows })
+        compare(&Expected::of_two_targets(), &Run { log, windows })
     }
 
     #[test]

@@ -49,26 +49,13 @@ pub fn compare(
 
 #[cfg(test)]
 mod tests {
-    use contenders::To;
 
     use super::*;
 
     fn compared(ticks: [u64; 2], windows: [u64; 2]) -> Result<[f64; 2], Trouble> {
-        let expected = Expected {
-            name: "some-roll",
-            what: "some",
-            hip: "roll",
-            ours: true,
-            to: To::Joints,
-            targets: 2,
-            line: String::new(),
-            largest_foot_error_mm: 0.0,
-            largest_foot_error: 0.0,
-            largest_joint_error_rad: 0.0,
-        };
         let log = ticks.iter().map(|ticks| format!("ticks {ticks} 64")).collect();
         let windows = windows.map(|instructions| Window { instructions, ..Window::default() });
-        compare(&expected, &windows, &Run { log, windows: vec![] }, 40.0)
+        compare(&Expected::of_two_targets(), &windows, &Run { log, windows: vec![] }, 40.0)
     }
 
     #[test]
